@@ -1,0 +1,219 @@
+/**
+ * What the app needs of the edges. Capture, store, exchange and worker satisfy these; main.tsx plugs them in;
+ * tests plug in fakes. No edge imports another edge.
+ */
+import type { AnalysisSettings } from '../core/model/analysis.ts';
+import type { AnalysisResult } from '../core/model/pictures.ts';
+import type { Outcome } from '../core/model/outcome.ts';
+import type { Problem } from '../core/model/problem.ts';
+import type { InterruptionCode, Recording } from '../core/model/recording.ts';
+import type {
+  EditFact,
+  Entity,
+  EntityKind,
+  Fact,
+  FieldValue,
+  PhoneCheck,
+  ReadingFact,
+  ResultFact,
+} from '../core/model/fact.ts';
+
+// ---------------------------------------------------------------- worker
+export interface AnalysisPort {
+  /** Copies the recording to a worker. Aborting ends the worker (a busy loop cannot be interrupted) within 100 ms. */
+  analyse(
+    recording: Recording,
+    settings: AnalysisSettings,
+    signal?: AbortSignal,
+  ): Promise<Outcome<AnalysisResult>>;
+}
+
+// ---------------------------------------------------------------- capture
+export type CaptureProblem =
+  | 'no-sensor'
+  | 'not-allowed'
+  | 'insecure-page'
+  | 'blocked-by-policy'
+  | 'sensor-error'
+  | 'busy-elsewhere'
+  | 'slow-sensor';
+
+/** Live figures for drawing; views on preallocated memory, valid until the next call. */
+export interface LiveWindow {
+  readonly sampleCount: number;
+  readonly elapsedS: number;
+  /** Most recent seconds, gravity not removed: time and one array per axis, `length` valid entries. */
+  readonly timeS: Float64Array;
+  readonly accelerationMps2: readonly Float32Array[];
+  readonly length: number;
+  readonly rateHz: number;
+  /** Rms about the running mean of the last second, m/s². */
+  readonly levelMps2: number;
+  readonly stepMps2: number;
+  readonly tapCount: number;
+  readonly settled: boolean;
+  readonly clipped: boolean;
+  readonly hint?: 'tap-harder' | 'too-strong' | 'wait-to-settle' | 'keep-still';
+}
+
+export type SessionState =
+  | { readonly phase: 'idle' }
+  | { readonly phase: 'asking' }
+  | { readonly phase: 'refused'; readonly problem: CaptureProblem }
+  | { readonly phase: 'checking'; readonly secondsLeftS: number }
+  | { readonly phase: 'settling'; readonly settled: boolean; readonly startBy: StartBy }
+  | {
+      readonly phase: 'recording';
+      readonly durationS: number;
+      readonly secondsLeftS: number;
+      readonly tapCount: number;
+      readonly flags: readonly InterruptionCode[];
+    }
+  | { readonly phase: 'done'; readonly recording: Recording; readonly journalId: string }
+  | {
+      readonly phase: 'cut';
+      readonly reason: InterruptionCode;
+      readonly recording: Recording | undefined;
+      readonly journalId: string;
+    };
+
+export type StartBy = 'hand' | 'timer' | 'first-tap';
+
+export interface SessionOptions {
+  readonly durationS: number;
+  readonly startBy: StartBy;
+  readonly timerS?: number;
+  /** Rig query, e.g. "?rig=handrail&step=0.1"; absent: the real sensor. */
+  readonly practice?: string;
+}
+
+export interface CapturePort {
+  /** Whether this browser could have a sensor at all, without asking. */
+  readonly support: 'likely' | 'none' | 'insecure-page';
+  readonly state: SessionState;
+  subscribe(listener: (state: SessionState) => void): () => void;
+  /** Must be called synchronously inside a tap: it asks for permission before any await. */
+  open(options: SessionOptions): Promise<void>;
+  /** 10 s at rest; only between recordings. */
+  check(): Promise<Outcome<PhoneCheck>>;
+  start(): void;
+  /** Ends early and keeps what there is. */
+  finish(): void;
+  cancel(): void;
+  live(): LiveWindow | undefined;
+}
+
+// ---------------------------------------------------------------- store
+export interface ReadingSummary {
+  readonly id: string;
+  readonly recordedAt: string;
+  readonly procedure: ReadingFact['procedure'];
+  readonly practice: boolean;
+  readonly label?: string;
+  readonly site?: string;
+  readonly asset?: string;
+  readonly spot?: string;
+  readonly round?: string;
+  /** Strongest mode or tone, for the list. */
+  readonly frequencyHz?: number;
+  readonly frequencySdHz?: number;
+  readonly dampingRatio?: number;
+  readonly dampingRatioSd?: number;
+  readonly trust: ReadingFact['analysis']['trust'];
+  readonly trashed: boolean;
+}
+
+export interface ReadingFilter {
+  readonly text?: string;
+  readonly procedure?: ReadingFact['procedure'];
+  readonly spot?: string;
+  readonly asset?: string;
+  readonly site?: string;
+  readonly round?: string;
+  readonly trashed?: boolean;
+}
+
+export interface OpenedReading {
+  readonly reading: ReadingFact;
+  readonly recording: Recording;
+  readonly results: readonly ResultFact[];
+  readonly entity: Entity;
+}
+
+export type StoreProblem = 'quota' | 'blocked' | 'closed' | 'newer-database' | 'damaged' | 'unavailable';
+
+export interface RecoveredJournal {
+  readonly journalId: string;
+  readonly startedAt: string;
+  readonly sampleCount: number;
+  readonly durationS: number;
+}
+
+export interface StorePort {
+  /** One strict transaction: fact, raw samples, summary, label edit if any; and the journal dropped. */
+  saveReading(
+    draft: Omit<ReadingFact, '_id' | 'rawSha256' | 'rawBytes' | 'v' | 'kind'>,
+    recording: Recording,
+    options?: { readonly label?: string; readonly journalId?: string },
+  ): Promise<ReadingFact>;
+  saveResult(draft: Omit<ResultFact, '_id' | 'v' | 'kind'>): Promise<ResultFact>;
+  /** Newest first. */
+  listReadings(filter?: ReadingFilter): Promise<readonly ReadingSummary[]>;
+  openReading(id: string): Promise<OpenedReading | undefined>;
+
+  edit(entity: string, set: Readonly<Record<string, FieldValue>>): Promise<EditFact>;
+  newEntity(kind: EntityKind, fields: Readonly<Record<string, FieldValue>>): Promise<Entity>;
+  entity(id: string): Promise<Entity | undefined>;
+  entities(kind: EntityKind): Promise<readonly Entity[]>;
+  history(entity: string): Promise<readonly EditFact[]>;
+  erase(id: string): Promise<void>;
+
+  savePhoto(entity: string, jpeg: Uint8Array, widthPx: number, heightPx: number): Promise<string>;
+  photos(entity: string): Promise<readonly { readonly id: string; readonly jpeg: Uint8Array }[]>;
+
+  /** Facts as they are, for packets, back-up and the team store. */
+  facts(): AsyncIterable<Fact>;
+  /** Put if absent: same id and revision is a no-op; same id, other revision is reported and the first kept. */
+  putFacts(
+    facts: readonly { readonly fact: Fact; readonly raw?: Uint8Array }[],
+  ): Promise<{ readonly added: number; readonly known: number; readonly damaged: readonly string[] }>;
+  rawOf(readingOrPhotoId: string): Promise<Uint8Array | undefined>;
+  /** Whatever changed since a sequence number, for pushing; and small named values (settings, check-points). */
+  changesSince(
+    sequence: number,
+    limit: number,
+  ): Promise<{ readonly ids: readonly string[]; readonly last: number }>;
+  getSetting(key: string): Promise<FieldValue | undefined>;
+  putSetting(key: string, value: FieldValue): Promise<void>;
+
+  recoverable(): Promise<readonly RecoveredJournal[]>;
+  recover(journalId: string): Promise<Recording>;
+  dropJournal(journalId: string): Promise<void>;
+
+  persistence(): Promise<'granted' | 'refused' | 'unknown'>;
+  askPersistence(): Promise<'granted' | 'refused' | 'unknown'>;
+  usageBytes(): Promise<number | undefined>;
+  readonly device: string;
+  onChange(listener: (what: 'facts' | 'blocking' | 'closed') => void): () => void;
+}
+
+/** Where capture puts samples while it records; the store satisfies it. At most 2 s are lost in a crash. */
+export interface JournalPort {
+  begin(meta: Pick<Recording, 'startedAt' | 'sensor' | 'axes'>): Promise<string>;
+  append(
+    journalId: string,
+    sequence: number,
+    timeS: Float64Array,
+    accelerationMps2: readonly Float32Array[],
+  ): Promise<void>;
+  /** A gap, a flag: kept with the journal. */
+  flag(journalId: string, code: InterruptionCode): Promise<void>;
+}
+
+// ---------------------------------------------------------------- exchange
+export interface ImportPreview {
+  readonly newCount: number;
+  readonly knownCount: number;
+  readonly refused: readonly { readonly name: string; readonly problem: Problem }[];
+  take(): Promise<{ readonly added: number }>;
+}
