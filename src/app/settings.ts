@@ -1,0 +1,75 @@
+/** What the person set on this phone, kept in the store as one value; unknown or broken parts fall back to defaults. */
+import { PROCEDURES, type Procedure } from '../core/model/analysis.ts';
+import type { Circumstances, FieldValue } from '../core/model/fact.ts';
+import { live, type Live } from './live-state.ts';
+import type { StorePort } from './ports.ts';
+
+export const THEMES = ['auto', 'light', 'dark', 'sunlight'] as const;
+export type Theme = (typeof THEMES)[number];
+
+export interface Settings {
+  readonly theme: Theme;
+  readonly frequencyUnit: 'Hz' | 'rpm';
+  readonly accelerationUnit: 'mps2' | 'g';
+  readonly lastProcedure: Procedure;
+  readonly mounting: Circumstances['mounting'];
+  readonly phoneMassKg: number | null;
+  readonly round: string | null;
+  /** Codes of the cautions the person has confirmed. */
+  readonly cautionsSeen: readonly string[];
+  readonly offline: 'on' | 'off';
+}
+
+export const DEFAULT_SETTINGS: Settings = {
+  theme: 'auto',
+  frequencyUnit: 'Hz',
+  accelerationUnit: 'mps2',
+  lastProcedure: 'tap',
+  mounting: 'laid',
+  phoneMassKg: null,
+  round: null,
+  cautionsSeen: [],
+  offline: 'on',
+};
+
+export interface SettingsHolder extends Live<Settings> {
+  change(part: Partial<Settings>): void;
+}
+
+const KEY = 'settings';
+
+/** Loads the kept settings; later changes are written as they are made. */
+export async function openSettings(
+  store: Pick<StorePort, 'getSetting' | 'putSetting'>,
+  onFailure: (error: unknown) => void,
+): Promise<SettingsHolder> {
+  const state = live(parseSettings(await store.getSetting(KEY)));
+  return {
+    ...state,
+    change(part) {
+      state.set({ ...state.get(), ...part });
+      store.putSetting(KEY, { ...state.get() } as unknown as FieldValue).catch(onFailure);
+    },
+  };
+}
+
+/** Unknown data to settings: each field by itself, so that one broken field costs only itself. */
+export function parseSettings(kept: unknown): Settings {
+  const given = typeof kept === 'object' && kept !== null ? (kept as Record<string, unknown>) : {};
+  const word = <K extends keyof Settings>(key: K, words: readonly Settings[K][]): Settings[K] =>
+    words.find((item) => item === given[key]) ?? DEFAULT_SETTINGS[key];
+  const mass = given.phoneMassKg;
+  return {
+    theme: word('theme', THEMES),
+    frequencyUnit: word('frequencyUnit', ['Hz', 'rpm']),
+    accelerationUnit: word('accelerationUnit', ['mps2', 'g']),
+    lastProcedure: word('lastProcedure', PROCEDURES),
+    mounting: word('mounting', ['laid', 'strapped', 'putty', 'clamp', 'magnet', 'unknown']),
+    phoneMassKg: typeof mass === 'number' && mass > 0 && mass < 2 ? mass : null,
+    round: typeof given.round === 'string' ? given.round : null,
+    cautionsSeen: Array.isArray(given.cautionsSeen)
+      ? given.cautionsSeen.filter((code): code is string => typeof code === 'string')
+      : [],
+    offline: word('offline', ['on', 'off']),
+  };
+}
