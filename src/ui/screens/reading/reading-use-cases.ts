@@ -1,10 +1,10 @@
-import type { Analysis, AnalysisSettings } from '../core/model/analysis.ts';
-import type { EditFact, Entity, FieldValue, ReadingFact, ResultFact } from '../core/model/fact.ts';
-import type { Judgement } from '../core/model/judgement.ts';
-import type { Outcome } from '../core/model/outcome.ts';
-import type { AnalysisResult } from '../core/model/pictures.ts';
-import type { Recording } from '../core/model/recording.ts';
-import type { Source } from '../core/model/source.ts';
+import type { Analysis, AnalysisSettings } from '../../../core/model/analysis.ts';
+import type { EditFact, Entity, FieldValue, ReadingFact, ResultFact } from '../../../core/model/fact.ts';
+import type { Judgement } from '../../../core/model/judgement.ts';
+import type { Outcome } from '../../../core/model/outcome.ts';
+import type { AnalysisResult } from '../../../core/model/pictures.ts';
+import type { Recording } from '../../../core/model/recording.ts';
+import type { Source } from '../../../core/model/source.ts';
 
 export interface NamedSource {
   readonly id: string;
