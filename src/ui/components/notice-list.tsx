@@ -1,0 +1,61 @@
+import { useEffect } from 'preact/hooks';
+import type { Notice } from '../../app/notices.ts';
+import styles from './notice-list.module.css';
+
+/** Long enough to read and to reach an undo with a glove; hovering or focusing keeps it. */
+const STAY_MS = 8000;
+
+/** Messages above the foot of the screen: polite ones wait for a pause in speech, failures do not. */
+export function NoticeList(props: {
+  readonly notices: readonly Notice[];
+  readonly closeLabel: string;
+  readonly onDismiss: (id: number) => void;
+}) {
+  const says = (tone: Notice['tone']) =>
+    props.notices
+      .filter((notice) => notice.tone === tone)
+      .map((notice) => <Item key={notice.id} notice={notice} {...props} />);
+  return (
+    <div class={`${styles.list} no-print`}>
+      <div role="status" aria-live="polite">
+        {says('plain')}
+      </div>
+      <div role="alert" aria-live="assertive">
+        {says('failure')}
+      </div>
+    </div>
+  );
+}
+
+function Item(props: {
+  readonly notice: Notice;
+  readonly closeLabel: string;
+  readonly onDismiss: (id: number) => void;
+}) {
+  const { notice } = props;
+  const isLasting = notice.tone === 'failure';
+  useEffect(() => {
+    if (isLasting) return undefined;
+    const timer = setTimeout(() => props.onDismiss(notice.id), STAY_MS);
+    return () => clearTimeout(timer);
+  }, [notice.id]);
+  return (
+    <div class={styles.notice}>
+      <span>{notice.text}</span>
+      {notice.action && (
+        <button
+          type="button"
+          onClick={() => {
+            notice.action?.run();
+            props.onDismiss(notice.id);
+          }}
+        >
+          {notice.action.label}
+        </button>
+      )}
+      <button type="button" onClick={() => props.onDismiss(notice.id)}>
+        {props.closeLabel}
+      </button>
+    </div>
+  );
+}
