@@ -1,0 +1,4 @@
+/** `npm run bench -- accuracy|speed [options]`; without a word: speed, then accuracy. */
+const word = process.argv[2];
+if (word !== 'accuracy') await import('./speed.bench.ts');
+if (word !== 'speed') await import('./accuracy.bench.ts');
