@@ -1,0 +1,58 @@
+/** What the person may set. Every default with its origin. */
+export interface Thresholds {
+  /** Coincident within this of 1, or within the half-power band where that is wider. */
+  readonly coincidentRatio: number;
+  /** Apart at or below this ratio, and at or above the other. */
+  readonly apartBelowRatio: number;
+  readonly apartAboveRatio: number;
+  /** Relative half-width (95 %) for holding a mode found at rest against a running machine. */
+  readonly stoppedRunningRatio: number;
+  /** Amplification from which a coincidence with people or a machine calls for a specialist. */
+  readonly specialistAmplification: number;
+  /** Amplification that the damping way out aims at. */
+  readonly wantedAmplification: number;
+  /** Transmissibility that the isolation way out aims at. */
+  readonly wantedTransmissibility: number;
+}
+
+export const DEFAULT_THRESHOLDS: Thresholds = {
+  /** Common practice, no source: what a speed, a load or a season moves by itself. */
+  coincidentRatio: 0.05,
+  /** DIN 4024-1 (machine foundations; from memory, .8): a steady force is amplified 2.8 times at most at damping 1 %. */
+  apartBelowRatio: 0.8,
+  /** DIN 4024-1 as above; the same 1.25 makes a support rigid in ISO 20816-3. */
+  apartAboveRatio: 1.25,
+  /** Common practice, no source: bearing film, preload, temperature and fill move a machine's mode by a few per cent. */
+  stoppedRunningRatio: 0.05,
+  /** Common practice, no source: five times the static effect is past what tidy operation hides. */
+  specialistAmplification: 5,
+  /** As above: below it the pair is a nuisance at most. */
+  wantedAmplification: 5,
+  /** Mounts at a third of the forcing frequency, undamped: 1/8 (derived). */
+  wantedTransmissibility: 0.125,
+};
+
+/**
+ * Defaults with what the person set.
+ * @throws RangeError when a threshold makes no sense, naming it
+ */
+export function thresholdsWith(own: Partial<Thresholds> = {}): Thresholds {
+  const all = { ...DEFAULT_THRESHOLDS, ...own };
+  const bounds: Readonly<Record<keyof Thresholds, readonly [number, number]>> = {
+    coincidentRatio: [0, 0.2],
+    apartBelowRatio: [0.3, 0.95],
+    apartAboveRatio: [1.05, 3],
+    stoppedRunningRatio: [0, 0.3],
+    specialistAmplification: [1, 100],
+    wantedAmplification: [1, 100],
+    wantedTransmissibility: [0.01, 0.9],
+  };
+  for (const key of Object.keys(bounds) as (keyof Thresholds)[]) {
+    const [low, high] = bounds[key];
+    if (!(all[key] >= low && all[key] <= high))
+      throw new RangeError(`${key} must be ${low} to ${high}, got ${all[key]}`);
+  }
+  if (all.coincidentRatio > 1 - all.apartBelowRatio || all.coincidentRatio > all.apartAboveRatio - 1)
+    throw new RangeError(`coincidentRatio ${all.coincidentRatio} reaches into apart`);
+  return all;
+}
