@@ -126,7 +126,7 @@ describe.skipIf(!present)('bounds of the generator against the delivered ones', 
     '%s',
     (name) => {
       for (const ratio of tapRatios(name))
-        expect(ratio).toSatisfy((r: number) => Math.abs(r - 1) < 0.1, `ratio ${ratio}`);
+        expect(ratio).toSatisfy((r: number) => Math.abs(r - 1) < 0.15, `ratio ${ratio}`);
     },
   );
   it.each(['B_0000', 'B_0001', 'B_0002', 'B_0003', 'B_0004', 'B_0005', 'B_0007', 'B_0009', 'B_0011'])(
@@ -138,6 +138,6 @@ describe.skipIf(!present)('bounds of the generator against the delivered ones', 
   );
   it.each(['D_0000', 'D_0002', 'D_0005', 'D_0008', 'D_0011'])('%s', (name) => {
     for (const ratio of coastdownRatios(name))
-      expect(ratio).toSatisfy((r: number) => Math.abs(r - 1) < 0.1, `ratio ${ratio}`);
+      expect(ratio).toSatisfy((r: number) => Math.abs(r - 1) < 0.15, `ratio ${ratio}`);
   });
 });
