@@ -124,12 +124,14 @@ export interface ReadingSummary {
 }
 
 export interface ReadingFilter {
+  /** Words that must all occur in label, date, procedure or the names of round, site, asset and spot. */
   readonly text?: string;
   readonly procedure?: ReadingFact['procedure'];
   readonly spot?: string;
   readonly asset?: string;
   readonly site?: string;
   readonly round?: string;
+  /** Absent: only readings that are not in the trash; true: only those that are. */
   readonly trashed?: boolean;
 }
 
@@ -168,6 +170,10 @@ export interface StorePort {
   history(entity: string): Promise<readonly EditFact[]>;
   erase(id: string): Promise<void>;
 
+  /** Scaled down and drawn anew: place and camera marks in the file are gone. Rejects with `damaged` when it is no picture. */
+  preparePhoto(
+    file: Blob,
+  ): Promise<{ readonly jpeg: Uint8Array; readonly widthPx: number; readonly heightPx: number }>;
   savePhoto(entity: string, jpeg: Uint8Array, widthPx: number, heightPx: number): Promise<string>;
   photos(entity: string): Promise<readonly { readonly id: string; readonly jpeg: Uint8Array }[]>;
 
@@ -177,7 +183,12 @@ export interface StorePort {
   putFacts(
     facts: readonly { readonly fact: Fact; readonly raw?: Uint8Array }[],
   ): Promise<{ readonly added: number; readonly known: number; readonly damaged: readonly string[] }>;
+  /** Raw v1 of a reading, unpacked, or the jpeg of a photo. */
   rawOf(readingOrPhotoId: string): Promise<Uint8Array | undefined>;
+  /** The same as it lies in the store (a reading's is gzip, made once): what the team store gets. */
+  storedRawOf(readingOrPhotoId: string): Promise<Uint8Array | undefined>;
+  /** One fact as it is, with its revision. */
+  fact(id: string): Promise<{ readonly fact: Fact; readonly revision: string } | undefined>;
   /** Whatever changed since a sequence number, for pushing; and small named values (settings, check-points). */
   changesSince(
     sequence: number,
@@ -194,7 +205,21 @@ export interface StorePort {
   askPersistence(): Promise<'granted' | 'refused' | 'unknown'>;
   usageBytes(): Promise<number | undefined>;
   readonly device: string;
+  /**
+   * `facts`: something changed, here or in another tab; `blocking`: a newer version waits in another tab, the recording
+   * goes on; `closed`: the store was left to that tab, reload.
+   */
   onChange(listener: (what: 'facts' | 'blocking' | 'closed') => void): () => void;
+
+  /** The last 200 errors of this phone, oldest first; nothing leaves it unless the person copies it. */
+  noteError(message: string, detail?: string): void;
+  errorLog(): Promise<readonly LoggedError[]>;
+}
+
+export interface LoggedError {
+  readonly at: string;
+  readonly message: string;
+  readonly detail: string;
 }
 
 /** Where capture puts samples while it records; the store satisfies it. At most 2 s are lost in a crash. */

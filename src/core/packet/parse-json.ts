@@ -26,14 +26,16 @@ export function isHarmless(value: unknown, depth = 0): boolean {
   if (value === null || typeof value === 'string' || typeof value === 'boolean') return true;
   if (Array.isArray(value)) return value.every((item) => isHarmless(item, depth + 1));
   if (!isPlainObject(value)) return false;
-  return Object.entries(value).every(([key, item]) => !FORBIDDEN_KEYS.has(key) && isHarmless(item, depth + 1));
+  return Object.entries(value).every(
+    ([key, item]) => !FORBIDDEN_KEYS.has(key) && isHarmless(item, depth + 1),
+  );
 }
 
 /** Strict UTF-8 decoding (RFC 3629) without the DOM's TextDecoder; undefined where malformed. */
 export function utf8Text(bytes: Uint8Array): string | undefined {
   const parts: string[] = [];
   let codes: number[] = [];
-  for (let i = 0; i < bytes.length; ) {
+  for (let i = 0; i < bytes.length;) {
     const [code, length] = codePointAt(bytes, i);
     if (code < 0) return undefined;
     codes.push(code);
@@ -53,7 +55,8 @@ const SMALLEST = [0, 0, 0x80, 0x800, 0x10000] as const;
 function codePointAt(bytes: Uint8Array, at: number): readonly [number, number] {
   const first = bytes[at]!;
   if (first < 0x80) return [first, 1];
-  const length = first >= 0xf0 && first < 0xf5 ? 4 : first >= 0xe0 && first < 0xf0 ? 3 : first >= 0xc2 ? 2 : 0;
+  const length =
+    first >= 0xf0 && first < 0xf5 ? 4 : first >= 0xe0 && first < 0xf0 ? 3 : first >= 0xc2 ? 2 : 0;
   if (length === 0 || first >= 0xf5 || at + length > bytes.length) return MALFORMED;
   let code = first & (0xff >> (length + 1));
   for (let i = 1; i < length; i += 1) {

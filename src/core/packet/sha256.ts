@@ -3,14 +3,15 @@
  * crypto.subtle. About 100 MB/s; the store hands large raw samples to the browser's own.
  */
 export function sha256Hex(bytes: Uint8Array): string {
-  const state = Uint32Array.from(START);
+  const { start, round } = constants();
+  const state = Uint32Array.from(start);
   const schedule = new Uint32Array(64);
   const whole = bytes.length - (bytes.length % 64);
   const view = new DataView(bytes.buffer, bytes.byteOffset, bytes.byteLength);
-  for (let offset = 0; offset < whole; offset += 64) compress(state, schedule, view, offset);
+  for (let offset = 0; offset < whole; offset += 64) compress(state, schedule, round, view, offset);
   const tail = paddedTail(bytes, whole);
   const tailView = new DataView(tail.buffer);
-  for (let offset = 0; offset < tail.length; offset += 64) compress(state, schedule, tailView, offset);
+  for (let offset = 0; offset < tail.length; offset += 64) compress(state, schedule, round, tailView, offset);
   return [...state].map((word) => word.toString(16).padStart(8, '0')).join('');
 }
 
@@ -56,7 +57,13 @@ function paddedTail(bytes: Uint8Array, from: number): Uint8Array {
 
 const rotated = (word: number, by: number): number => (word >>> by) | (word << (32 - by));
 
-function compress(state: Uint32Array, w: Uint32Array, view: DataView, offset: number): void {
+function compress(
+  state: Uint32Array,
+  w: Uint32Array,
+  round: Uint32Array,
+  view: DataView,
+  offset: number,
+): void {
   for (let i = 0; i < 16; i += 1) w[i] = view.getUint32(offset + 4 * i);
   for (let i = 16; i < 64; i += 1) {
     const a = w[i - 15]!;
@@ -77,7 +84,7 @@ function compress(state: Uint32Array, w: Uint32Array, view: DataView, offset: nu
   ];
   for (let i = 0; i < 64; i += 1) {
     const s1 = rotated(e, 6) ^ rotated(e, 11) ^ rotated(e, 25);
-    const t1 = (h + s1 + ((e & f) ^ (~e & g)) + ROUND[i]! + w[i]!) | 0;
+    const t1 = (h + s1 + ((e & f) ^ (~e & g)) + round[i]! + w[i]!) | 0;
     const s0 = rotated(a, 2) ^ rotated(a, 13) ^ rotated(a, 22);
     const t2 = (s0 + ((a & b) ^ (a & c) ^ (b & c))) | 0;
     h = g;
@@ -117,5 +124,18 @@ function rootFraction(prime: number, degree: 2n | 3n): number {
   return Number(low & 0xffffffffn);
 }
 
-const START = firstPrimes(8).map((prime) => rootFraction(prime, 2n));
-const ROUND = Uint32Array.from(firstPrimes(64).map((prime) => rootFraction(prime, 3n)));
+interface Constants {
+  readonly start: Uint32Array;
+  readonly round: Uint32Array;
+}
+
+let known: Constants | undefined;
+
+/** Worked out at first use, not when the app starts. */
+function constants(): Constants {
+  known ??= {
+    start: Uint32Array.from(firstPrimes(8), (prime) => rootFraction(prime, 2n)),
+    round: Uint32Array.from(firstPrimes(64), (prime) => rootFraction(prime, 3n)),
+  };
+  return known;
+}

@@ -1,0 +1,137 @@
+import type { DBSchema, IDBPDatabase, IDBPTransaction, StoreNames } from 'idb';
+import type { ReadingSummary } from '../app/ports.ts';
+import type { EditFact, Fact, FieldValue } from '../core/model/fact.ts';
+import type { AxisName, InterruptionCode, SensorDescription } from '../core/model/recording.ts';
+import { summaryOf } from './reading-summary.ts';
+import { knownFact } from './fact-row.ts';
+
+/*
+ * The database and its history. A migration is data: what it creates, and what it fills from what is there. A published
+ * one never changes; a new one is added at the end (recipe in DEVELOPERS.md). All run in one version-change transaction:
+ * after a kill the old state or the new one is there, nothing between.
+ */
+
+export interface FactRow {
+  readonly id: string;
+  readonly kind: string;
+  /** Entity of an edit or photo, reading of a result, target of an erasure. */
+  readonly about?: string;
+  readonly revision: string;
+  readonly fact: Fact;
+}
+
+/** Bytes of a reading's raw samples (gzip) or of a photo (jpeg). ArrayBuffer: some browsers lose Blobs. */
+export interface RawRow {
+  readonly id: string;
+  readonly bytes: ArrayBuffer;
+}
+
+export interface JournalRow {
+  readonly id: string;
+  readonly startedAt: string;
+  readonly sensor: SensorDescription;
+  readonly axes: readonly AxisName[];
+  readonly flags: readonly InterruptionCode[];
+}
+
+export interface ChunkRow {
+  readonly journal: string;
+  readonly sequence: number;
+  readonly timeS: Float64Array;
+  readonly accelerationMps2: readonly Float32Array[];
+}
+
+export interface ErrorRow {
+  readonly at: string;
+  readonly message: string;
+  readonly detail: string;
+}
+
+export interface ThrumbookSchema extends DBSchema {
+  facts: { key: string; value: FactRow; indexes: { kind: string; about: string } };
+  raw: { key: string; value: RawRow };
+  /** Arrival order of facts: key is the sequence number. */
+  log: { key: number; value: { readonly id: string } };
+  journals: { key: string; value: JournalRow };
+  chunks: { key: [string, number]; value: ChunkRow };
+  settings: { key: string; value: FieldValue };
+  summaries: { key: string; value: ReadingSummary };
+  errors: { key: number; value: ErrorRow };
+}
+
+export type Database = IDBPDatabase<ThrumbookSchema>;
+type Upgrade = IDBPTransaction<ThrumbookSchema, StoreNames<ThrumbookSchema>[], 'versionchange'>;
+
+interface NewStore {
+  readonly name: StoreNames<ThrumbookSchema>;
+  readonly keyPath?: string | string[];
+  readonly autoIncrement?: true;
+  readonly indexes?: Readonly<Record<string, string>>;
+}
+
+export interface Migration {
+  readonly to: number;
+  readonly why: string;
+  readonly create: readonly NewStore[];
+  readonly fill?: (upgrade: Upgrade) => Promise<void>;
+}
+
+export const MIGRATIONS: readonly Migration[] = [
+  {
+    to: 1,
+    why: 'facts with their raw bytes, arrival order, journal of a recording, settings',
+    create: [
+      { name: 'facts', keyPath: 'id', indexes: { kind: 'kind', about: 'about' } },
+      { name: 'raw', keyPath: 'id' },
+      { name: 'log', autoIncrement: true },
+      { name: 'journals', keyPath: 'id' },
+      { name: 'chunks', keyPath: ['journal', 'sequence'] },
+      { name: 'settings' },
+    ],
+  },
+  {
+    to: 2,
+    why: 'summaries, so that 10,000 readings list without opening them; a log of errors',
+    create: [
+      { name: 'summaries', keyPath: 'id' },
+      { name: 'errors', autoIncrement: true },
+    ],
+    fill: fillSummaries,
+  },
+];
+
+export const DATABASE_VERSION = MIGRATIONS.at(-1)!.to;
+
+/** Bring a database from `oldVersion` to the newest. Awaits nothing but the database itself. */
+export async function migrate(
+  database: Database,
+  oldVersion: number,
+  upgrade: Upgrade,
+  migrations: readonly Migration[] = MIGRATIONS,
+): Promise<void> {
+  for (const migration of migrations.filter(({ to }) => to > oldVersion)) {
+    for (const store of migration.create) createStore(database, store);
+    await migration.fill?.(upgrade);
+  }
+}
+
+function createStore(database: Database, { name, keyPath, autoIncrement, indexes = {} }: NewStore): void {
+  const store = database.createObjectStore(name, {
+    ...(keyPath === undefined ? {} : { keyPath }),
+    ...(autoIncrement === undefined ? {} : { autoIncrement }),
+  });
+  for (const [index, path] of Object.entries(indexes)) store.createIndex(index as never, path);
+}
+
+async function fillSummaries(upgrade: Upgrade): Promise<void> {
+  const facts = upgrade.objectStore('facts');
+  const summaries = upgrade.objectStore('summaries');
+  const ids = await facts.index('kind').getAllKeys('reading');
+  for (const id of ids) {
+    const reading = knownFact(await facts.get(id), 'reading');
+    if (reading === undefined) continue;
+    const about = await facts.index('about').getAll(id);
+    const edits = about.map((row) => knownFact(row, 'edit')).filter((edit) => edit !== undefined);
+    await summaries.put(summaryOf(reading, edits as readonly EditFact[]));
+  }
+}
