@@ -1,0 +1,85 @@
+/** Which rows of a recording are samples of the motion: leading dummy rows and repeated readings are not. */
+import type { Recording } from '../model/recording.ts';
+import { median } from './sample-counter.ts';
+
+/** An equal neighbour after less than this share of the median interval is one reading delivered twice (measured: 2.4 of 4.9 ms). */
+export const SHORT_INTERVAL_SHARE = 0.7;
+/** Up to this share of equal readings two rows apart, equal neighbours are told from chance. Our choice. */
+const CHANCE_LIMIT_SHARE = 0.05;
+/** Equal neighbours beyond three times chance and this share: the sensor is polled (18 % measured in browsers). */
+const POLLED_SHARE = 0.02;
+/** Up to this chance every equal neighbour after a short interval is a repeat; above, only when most short intervals show one. */
+const NO_CHANCE_SHARE = 0.005;
+const MOST_SHORT_SHARE = 0.5;
+
+export interface Screening {
+  /** Indexes of the rows kept, increasing. */
+  readonly kept: Int32Array;
+  readonly repeatCount: number;
+  readonly leadingZeroCount: number;
+  /** True when equal neighbours come at any interval: a poll of a sensor that runs on its own clock (sample and hold). */
+  readonly isPolled: boolean;
+}
+
+/** Keeps finite rows whose stamps do not run backwards; drops leading zero rows and repeats. */
+export function screenSamples(recording: Pick<Recording, 'timeS' | 'accelerationMps2'>): Screening {
+  const { timeS, accelerationMps2 } = recording;
+  const leadingZeroCount = leadingZeros(accelerationMps2, timeS.length);
+  const rows: number[] = [];
+  let latest = -Infinity;
+  for (let i = leadingZeroCount; i < timeS.length; i++) {
+    const t = timeS[i] as number;
+    if (!(t >= latest) || !accelerationMps2.every((axis) => Number.isFinite(axis[i]))) continue;
+    latest = t;
+    rows.push(i);
+  }
+  const equal = (a: number, b: number): boolean => accelerationMps2.every((axis) => axis[a] === axis[b]);
+  const chance = equalShare(rows, 2, equal);
+  const isPolled = chance < CHANCE_LIMIT_SHARE && equalShare(rows, 1, equal) > POLLED_SHARE + 3 * chance;
+  const limitS = SHORT_INTERVAL_SHARE * medianInterval(rows, timeS);
+  const isShort = (r: number): boolean =>
+    (timeS[rows[r] as number] as number) - (timeS[rows[r - 1] as number] as number) < limitS;
+  const dropsShort =
+    chance < NO_CHANCE_SHARE ||
+    (chance < CHANCE_LIMIT_SHARE && equalShare(rows, 1, equal, isShort) > MOST_SHORT_SHARE);
+  const kept: number[] = [];
+  for (let r = 0; r < rows.length; r++) {
+    const i = rows[r] as number;
+    const before = rows[r - 1];
+    const isRepeat = before !== undefined && equal(i, before) && (isPolled || (dropsShort && isShort(r)));
+    if (!isRepeat) kept.push(i);
+  }
+  return { kept: Int32Array.from(kept), repeatCount: rows.length - kept.length, leadingZeroCount, isPolled };
+}
+
+/** Rows at the start in which every axis is exactly zero: placeholders some loggers write before the first reading. */
+function leadingZeros(accelerationMps2: readonly Float32Array[], n: number): number {
+  let i = 0;
+  while (i < n && accelerationMps2.every((axis) => axis[i] === 0)) i++;
+  return i < n ? i : 0;
+}
+
+function equalShare(
+  rows: readonly number[],
+  lag: number,
+  equal: (a: number, b: number) => boolean,
+  among: (r: number) => boolean = () => true,
+): number {
+  let same = 0;
+  let seen = 0;
+  for (let r = lag; r < rows.length; r++) {
+    if (!among(r)) continue;
+    seen++;
+    if (equal(rows[r] as number, rows[r - lag] as number)) same++;
+  }
+  return seen ? same / seen : 0;
+}
+
+function medianInterval(rows: readonly number[], timeS: Float64Array): number {
+  if (rows.length < 2) return 0;
+  const intervals: number[] = [];
+  const stride = Math.max(1, Math.floor(rows.length / 4000));
+  for (let r = 1; r < rows.length; r += stride)
+    intervals.push((timeS[rows[r] as number] as number) - (timeS[rows[r - 1] as number] as number));
+  return median(intervals);
+}
