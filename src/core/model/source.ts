@@ -146,6 +146,12 @@ export interface Forcing {
   readonly cycleCount?: number;
   /** True when the speed can be chosen within the range (variable-speed drive). */
   readonly adjustable?: boolean;
+  /** Vortex shedding: what a critical wind speed and a Scruton number need. */
+  readonly wind?: {
+    readonly widthM: number;
+    readonly strouhalRatio: Interval;
+    readonly massPerLengthKgPerM?: number;
+  };
   /** Where its numbers come from, e.g. a standard or the nameplate. */
   readonly origin: string;
   /** False below .9 certainty: show "check against the standard". */

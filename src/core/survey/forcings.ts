@@ -176,6 +176,13 @@ function windDrafts(source: WindSource): Draft[] {
         (strouhal.range[1] * speed[1]) / source.widthM,
       ],
       toleranceRatio: source.toleranceRatio ?? 0,
+      wind: {
+        widthM: source.widthM,
+        strouhalRatio: strouhal.range,
+        ...(source.massPerLengthKgPerM === undefined
+          ? {}
+          : { massPerLengthKgPerM: source.massPerLengthKgPerM }),
+      },
       origin: strouhal.origin,
       certain: strouhal.certain,
       amplificationKind: 'force',
