@@ -26,7 +26,7 @@ export interface LadderSize {
 const RAIL_GAP_TEXTS = 3.2;
 const LANE_TEXTS = 0.85;
 const LABEL_SHARE = 0.36;
-const LABEL_SHARE_WITHOUT_MODES = 0.5;
+const LABEL_SHARE_WITHOUT_MODES = 0.46;
 
 export const ladderColumns = (
   content: LadderContent,
@@ -36,7 +36,7 @@ export const ladderColumns = (
 ): LadderColumns => {
   const { widthPx, textPx } = size;
   const labels = [...content.forcings.map((f) => f.label), ...content.tones.map((t) => t.label)];
-  const hasLeft = content.modes.length > 0 || content.seenHz !== undefined;
+  const hasLeft = content.modes.length > 0;
   const roomPx = widthPx * (hasLeft ? LABEL_SHARE : LABEL_SHARE_WITHOUT_MODES);
   const widestPx = Math.max(0, ...labels.map((label) => measure(label, textPx)));
   const labelRoomPx = Math.min(widestPx + 2, roomPx);

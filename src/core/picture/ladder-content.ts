@@ -10,6 +10,8 @@ export interface LadderMode {
   /** Two short lines: its frequency, its damping. */
   readonly title: string;
   readonly detail: string;
+  /** True where its own frequency is only one of several it may have: drawn dashed, without a profile. */
+  readonly isUnsure?: boolean;
   /** Other frequencies that it may truly have (folding). */
   readonly candidatesHz?: readonly number[];
   /** Where it was before a change that is being tried. */
@@ -51,7 +53,12 @@ export interface LadderContent {
     readonly blindBelow: string;
     /** Said on the side of the modes when there is none. */
     readonly noMode: string;
-    readonly image: string;
+    /** Heads of the two sides, and the unit between the rails. */
+    readonly structure: string;
+    readonly sources: string;
+    readonly unit: string;
+    /** What the scale below the modes measures. */
+    readonly amplification: string;
   };
 }
 

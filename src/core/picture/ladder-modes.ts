@@ -79,7 +79,10 @@ const boxBetween = (
 };
 
 const profilePath = (left: Left, modes: readonly LadderMode[]): string => {
-  const points = resonanceProfile(modes, left.axis.rangeHz);
+  const points = resonanceProfile(
+    modes.filter((mode) => !mode.isUnsure),
+    left.axis.rangeHz,
+  );
   if (points.length === 0) return '';
   const rail = at(left.columns.leftRailPx);
   const line = points.map(
@@ -101,7 +104,9 @@ const drawnMode = (left: Left, mode: LadderMode): Omit<DrawnMode, 'label'> => {
     bands: modeBandHz(mode).map((hz) => boxBetween(left, hz, columns.leftRailPx, columns.rightRailPx)),
     coincidentZone: boxBetween(left, zones.coincidentHz, columns.leftRailPx, endPx),
     closeZone: boxBetween(left, zones.closeHz, columns.leftRailPx, endPx),
-    ghosts: (mode.candidatesHz ?? []).filter(inView).map((f) => ({ yPx: hzToY(axis, f), tipPx })),
+    ghosts: [...(mode.isUnsure ? [mode.frequencyHz] : []), ...(mode.candidatesHz ?? [])]
+      .filter(inView)
+      .map((f) => ({ yPx: hzToY(axis, f), tipPx })),
     ...(mode.beforeHz !== undefined && inView(mode.beforeHz)
       ? { beforeYPx: hzToY(axis, mode.beforeHz) }
       : {}),

@@ -20,6 +20,7 @@ export interface LadderPicture {
   readonly size: LadderSize;
   readonly axis: LogAxis;
   readonly columns: LadderColumns;
+  readonly words: LadderContent['words'];
   readonly ticks: readonly AxisTick[];
   readonly left: LadderLeft;
   readonly right: LadderRight;
@@ -31,8 +32,8 @@ export const ladderPicture = (content: LadderContent, view: LadderView): LadderP
   if (!(textPx > 0) || widthPx < 12 * textPx || heightPx < 12 * textPx)
     throw new RangeError(`ladderPicture: ${widthPx} by ${heightPx} px has no room for text of ${textPx} px`);
   const size: LadderSize = { widthPx, heightPx, textPx };
-  const topPx = textPx * 0.9;
-  const bottomPx = heightPx - textPx * 1.9;
+  const topPx = textPx * 2;
+  const bottomPx = heightPx - textPx * 2.9;
   const wholeHz = ladderRangeHz(content);
   const axis = logAxis(view.rangeHz ?? wholeHz, topPx, bottomPx);
   const lanes = forcingLanes(content, logAxis(wholeHz, topPx, bottomPx));
@@ -41,6 +42,7 @@ export const ladderPicture = (content: LadderContent, view: LadderView): LadderP
     size,
     axis,
     columns,
+    words: content.words,
     ticks: logTicks(axis, textPx * 1.45, shownPerHz),
     left: ladderLeft(axis, columns, size, content, measure),
     right: ladderRight(axis, columns, size, content, lanes, measure),

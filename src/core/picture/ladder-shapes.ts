@@ -129,16 +129,18 @@ const forcingShapes = (forcing: DrawnForcing, dim: boolean): SvgShape[] => {
   ];
 };
 
+const toneEnd = (xPx: number, yPx: number, kind: string): SvgShape => ({
+  element: 'circle',
+  kind: `ladder-tone-end ${kind}`,
+  attributes: { cx: at(xPx), cy: at(yPx), r: 3.2 },
+});
+
 const toneShapes = (tone: DrawnTone, picture: LadderPicture, dim: boolean): SvgShape[] => {
   const { leftRailPx, rightRailPx } = picture.columns;
   const dimmed = dim ? ' is-dim' : '';
   return [
     path(`ladder-tone${dimmed}`, `M${at(leftRailPx)} ${at(tone.yPx)}H${at(rightRailPx)}`),
-    {
-      element: 'circle',
-      kind: `ladder-tone-end${dimmed}`,
-      attributes: { cx: at(rightRailPx), cy: at(tone.yPx), r: 3.2 },
-    },
+    toneEnd(rightRailPx, tone.yPx, dimmed),
   ];
 };
 
@@ -163,17 +165,34 @@ const zoneShapes = (picture: LadderPicture, selected: ReadonlySet<string>): SvgS
     rect(`ladder-zone${isDim(selected, mode.id) ? ' is-dim' : ''}`, mode.coincidentZone),
   ]);
 
-const amplificationShapes = ({ left, size, axis }: LadderPicture): SvgShape[] =>
-  left.amplificationTicks.map((tick, i) =>
-    text(
-      'ladder-scale',
-      tick.label,
-      tick.xPx,
-      axis.bottomPx + size.textPx * 1.3,
-      size.textPx * 0.84,
-      i === 0 ? 'end' : i === left.amplificationTicks.length - 1 ? 'start' : 'middle',
+const amplificationShapes = ({ left, size, axis, words }: LadderPicture): SvgShape[] => {
+  if (left.amplificationTicks.length === 0) return [];
+  const sizePx = size.textPx * 0.84;
+  return [
+    ...left.amplificationTicks.map((tick, i) =>
+      text(
+        'ladder-scale',
+        tick.label,
+        tick.xPx,
+        axis.bottomPx + size.textPx * 1.3,
+        sizePx,
+        i === 0 ? 'end' : i === left.amplificationTicks.length - 1 ? 'start' : 'middle',
+      ),
     ),
-  );
+    text('ladder-scale', words.amplification, 6, axis.bottomPx + size.textPx * 2.5, sizePx),
+  ];
+};
+
+const headShapes = ({ words, columns, size, axis, left }: LadderPicture): SvgShape[] => {
+  const yPx = size.textPx;
+  const middle = (columns.leftRailPx + columns.rightRailPx) / 2;
+  const hasLeft = left.modes.length > 0 || left.notes.length > 0 || left.blind.length > 0;
+  return [
+    ...(hasLeft ? [text('ladder-head', words.structure, 6, yPx, size.textPx * 0.92)] : []),
+    text('ladder-head', words.sources, columns.lanesPx, yPx, size.textPx * 0.92),
+    text('ladder-head', words.unit, middle, axis.bottomPx + size.textPx * 1.3, size.textPx * 0.92, 'middle'),
+  ];
+};
 
 /** Everything to draw, from back to front. `selected`: ids of modes, forcings and tones to stand out; empty for none. */
 export const ladderShapes = (
@@ -181,21 +200,10 @@ export const ladderShapes = (
   selected: ReadonlySet<string> = new Set(),
 ): SvgShape[] => {
   const { left, right, size, columns } = picture;
-  const plates = left.modes.flatMap(({ label }) =>
-    label
-      ? [
-          plate(
-            label.xPx,
-            label.yPx - size.textPx * MODE_LINE_TEXTS,
-            label.widthPx,
-            size.textPx * MODE_LINE_TEXTS * 2 + 2,
-          ),
-        ]
-      : [],
-  );
   const labelKind = (id: string): string =>
     selected.has(id) ? 'is-picked' : isDim(selected, id) ? 'is-dim' : '';
   return [
+    ...headShapes(picture),
     ...left.blind.map((box) => path('ladder-hatch', hatchPath(box, HATCH_PX))),
     rect('ladder-between', {
       xPx: columns.leftRailPx,
@@ -212,20 +220,26 @@ export const ladderShapes = (
       ),
     ),
     ...left.modes.flatMap((mode) => mode.bands.map((box) => rect('ladder-band', box))),
-    ...plates,
     ...left.modes.flatMap((mode) => ghostShapes(mode, columns.leftRailPx)),
     ...railShapes(picture),
     ...right.forcings.flatMap((f) => forcingShapes(f, isDim(selected, f.id))),
-    ...right.images.map((image) =>
-      path('ladder-image', `M${at(columns.rightRailPx + 1)} ${at(image.yPx)}l6 -3.5v7z`),
-    ),
+    ...right.images
+      .filter(({ id }) => selected.has(id))
+      .map((image) => path('ladder-image', `M${at(columns.rightRailPx + 1)} ${at(image.yPx)}l6 -3.5v7z`)),
     ...right.tones.flatMap((tone) => toneShapes(tone, picture, isDim(selected, tone.id))),
     ...left.modes.flatMap((mode) => modeLabelShapes(mode, size.textPx, isDim(selected, mode.id))),
     ...left.notes.flatMap((note) => noteShapes(note, size.textPx)),
     ...right.forcings.flatMap((f) =>
       f.label ? labelShapes(picture, f.label, f.verdict, labelKind(f.id)) : [],
     ),
-    ...right.tones.flatMap((t) => (t.label ? labelShapes(picture, t.label, undefined, labelKind(t.id)) : [])),
+    ...right.tones.flatMap((t): SvgShape[] =>
+      t.label
+        ? [
+            ...labelShapes(picture, t.label, undefined, labelKind(t.id)),
+            toneEnd(columns.markPx + columns.markSizePx / 2, t.label.yPx, labelKind(t.id)),
+          ]
+        : [],
+    ),
     ...amplificationShapes(picture),
   ];
 };
