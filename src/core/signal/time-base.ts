@@ -1,6 +1,6 @@
 import type { AnalysisSettings, TimingFacts } from '../model/analysis.ts';
 import { clockLine } from './clock-line.ts';
-import { slopeProfile, type SlopeProfile } from './jitter-slope.ts';
+import { likelihoodAt, slopeProfile } from './jitter-slope.ts';
 import { countSamples } from './sample-counter.ts';
 import { slowPart } from './drift.ts';
 import { averagedDensity } from './spectrum.ts';
@@ -150,23 +150,6 @@ function refinedShare(total: Float64Array, best: number): number {
   const reach = Math.max(SNAP_SHARE, Math.min(2 * SNAP_SHARE, 3 * sd));
   if (share > 1 - reach) return 1;
   return share < reach ? 0 : share;
-}
-
-/** Cubic interpolation (Catmull & Rom 1974) of a profile; its smallest value outside the range tried. */
-export function likelihoodAt(profile: SlopeProfile, slopeHz: number): number {
-  const { slopesHz, logLikelihood } = profile;
-  const stepHz = (slopesHz[1] as number) - (slopesHz[0] as number);
-  const at = (slopeHz - (slopesHz[0] as number)) / stepHz;
-  const i = Math.floor(at);
-  if (i < 1 || i > slopesHz.length - 3) return Math.min(...logLikelihood);
-  const s = at - i;
-  const [p, q, r, t] = [0, 1, 2, 3].map((j) => logLikelihood[i - 1 + j] as number) as [
-    number,
-    number,
-    number,
-    number,
-  ];
-  return q + 0.5 * s * (r - p + s * (2 * p - 5 * q + 4 * r - t + s * (3 * (q - r) + t - p)));
 }
 
 interface Line {
