@@ -123,5 +123,10 @@ function axisCandidate(column: NamedColumn): AxisCandidate | undefined {
   if (letter === undefined && !isAcceleration) return undefined;
   const isFused = stemWords.some((word) => FUSED_WORD.test(word));
   const rank = (isAcceleration ? 4 : 2) + (isFused ? 0 : 1);
-  return { ...column, axis: letter ?? 'x', stem: `${stemWords.join(' ')}:${letter ? 'axis' : 'single'}`, rank };
+  return {
+    ...column,
+    axis: letter ?? 'x',
+    stem: `${stemWords.join(' ')}:${letter ? 'axis' : 'single'}`,
+    rank,
+  };
 }

@@ -140,6 +140,7 @@ function scanUnusual(cell: string, sign: DecimalSign): number {
   const trimmed = cell.trim();
   const match = /^[+-]?(?:\d+([.,])?\d*|([.,])\d+)(?:e[+-]?\d{1,3})?$/i.exec(trimmed);
   const found = match?.[1] ?? match?.[2];
-  if (!match || (found !== undefined && sign.code !== 0 && found.charCodeAt(0) !== sign.code)) return Number.NaN;
+  if (!match || (found !== undefined && sign.code !== 0 && found.charCodeAt(0) !== sign.code))
+    return Number.NaN;
   return Number(trimmed.replace(',', '.'));
 }

@@ -66,8 +66,7 @@ function civilFromDays(days: number): string {
       Math.floor(dayOfEra / 146_096)) /
       365,
   );
-  const dayOfYear =
-    dayOfEra - (365 * yearOfEra + Math.floor(yearOfEra / 4) - Math.floor(yearOfEra / 100));
+  const dayOfYear = dayOfEra - (365 * yearOfEra + Math.floor(yearOfEra / 4) - Math.floor(yearOfEra / 100));
   const monthFromMarch = Math.floor((5 * dayOfYear + 2) / 153);
   const month = monthFromMarch < 10 ? monthFromMarch + 3 : monthFromMarch - 9;
   const year = yearOfEra + era * 400 + (month <= 2 ? 1 : 0);

@@ -61,8 +61,7 @@ function readSamples(
   unit: AccelerationUnit | undefined,
 ): Outcome<Samples> {
   const roomCount = countLines(text, line.bodyStart);
-  if (roomCount > MAX_SAMPLES)
-    return failure('too-large', { sampleCount: roomCount, maxCount: MAX_SAMPLES });
+  if (roomCount > MAX_SAMPLES) return failure('too-large', { sampleCount: roomCount, maxCount: MAX_SAMPLES });
   const axes = line.header.axes.map((column) => ({
     columnIndex: column.columnIndex,
     factor: MPS2_PER_UNIT[unit ?? column.unit ?? 'mps2'],
@@ -78,9 +77,12 @@ function readSamples(
   for (let at = line.bodyStart; at < text.length; at = row.next, rowNumber += row.lineEndCount) {
     scanCsvRow(text, at, line.delimiter, row);
     if (isBlank(text, row)) continue;
-    if (hasSurplus(row, line.columnCount)) return badRow(text, row, rowNumber, line.columnCount, 'surplus-cell');
+    if (hasSurplus(row, line.columnCount))
+      return badRow(text, row, rowNumber, line.columnCount, 'surplus-cell');
     if (count === 0) iso = isoClock(cellText(text, row, timeIndex));
-    const stamp = iso ? isoSeconds(cellText(text, row, timeIndex), iso) : decimalCell(text, row, timeIndex, sign);
+    const stamp = iso
+      ? isoSeconds(cellText(text, row, timeIndex), iso)
+      : decimalCell(text, row, timeIndex, sign);
     if (!Number.isFinite(stamp)) return badRow(text, row, rowNumber, timeIndex, 'not-a-time');
     if (count > 0 && stamp < stamps[count - 1]!) return failure('time-not-increasing', { row: rowNumber });
     stamps[count] = stamp;
