@@ -123,6 +123,10 @@ export interface Levels {
   readonly verticalPeakMps2?: number;
   readonly horizontalPeakMps2?: number;
   readonly largestAxisVelocityPeakMps?: number;
+  /** Larger of the two horizontal axes (DIN 4150-3, top floor). */
+  readonly horizontalVelocityPeakMps?: number;
+  /** Vertical: square root of 2 times the largest running rms over 2 s (AISC design guide 11, 2nd ed.). */
+  readonly equivalentSinePeakMps2?: number;
   /** True when folded or undecided tones were left out of velocity and displacement. */
   readonly leftOutTones: boolean;
 }
