@@ -9,13 +9,11 @@ import styles from './ladder.module.css';
 import { measureLike } from './measure-text.ts';
 import { SvgShapes } from './svg-shapes.tsx';
 import { useLadderZoom } from './use-ladder-zoom.ts';
+import { ZoomTools, type ZoomWords } from './zoom-tools.tsx';
 
-export interface LadderWords {
+export interface LadderWords extends ZoomWords {
   readonly name: string;
   readonly keys: string;
-  readonly closer: string;
-  readonly wider: string;
-  readonly whole: string;
 }
 
 export interface LadderProps {
@@ -61,6 +59,7 @@ export function Ladder(props: LadderProps) {
   const measure = useMemo(() => (frame.current ? measureLike(frame.current) : undefined), [size]);
   const wholeHz = useMemo(() => ladderRangeHz(content), [content]);
   const zoom = useLadderZoom(frame, wholeHz, () => drawn.current?.axis);
+  const isZoomed = zoom.rangeHz !== undefined;
 
   const picture = useMemo(() => {
     if (!size) return undefined;
@@ -109,7 +108,7 @@ export function Ladder(props: LadderProps) {
   };
 
   const still = (
-    <div ref={frame} class={`${styles.frame} ${zoom.isZoomed ? styles.zoomed : ''}`}>
+    <div ref={frame} class={`${styles.frame} ${isZoomed ? styles.zoomed : ''}`}>
       {picture ? (
         <svg
           class={`${styles.ladder} ladder-drawing`}
@@ -139,32 +138,13 @@ export function Ladder(props: LadderProps) {
       >
         {still}
       </div>
-      <div class={`${styles.tools} no-print`}>
-        <button type="button" class={styles.tool} aria-label={words.closer} onClick={() => zoom.zoom(true)}>
-          <svg viewBox="0 0 16 16" aria-hidden="true">
-            <path d="M8 2.5v11M2.5 8h11" />
-          </svg>
-        </button>
-        <button
-          type="button"
-          class={styles.tool}
-          aria-label={words.wider}
-          disabled={!zoom.isZoomed}
-          onClick={() => zoom.zoom(false)}
-        >
-          <svg viewBox="0 0 16 16" aria-hidden="true">
-            <path d="M2.5 8h11" />
-          </svg>
-        </button>
-        <button
-          type="button"
-          class={`${styles.tool} ${styles.worded}`}
-          disabled={!zoom.isZoomed}
-          onClick={() => zoom.whole()}
-        >
-          {words.whole}
-        </button>
-      </div>
+      <ZoomTools
+        words={words}
+        of={words.name}
+        isZoomed={isZoomed}
+        onZoom={(closer) => zoom.zoom(closer)}
+        onWhole={() => zoom.whole()}
+      />
     </div>
   );
 }

@@ -1,0 +1,39 @@
+import styles from './data-table.module.css';
+
+export interface TableContent {
+  readonly summary: string;
+  readonly head: readonly string[];
+  readonly rows: readonly (readonly string[])[];
+}
+
+/** The numbers of a picture, folded away until asked for; the first cell of a row names it. */
+export function DataTable({ summary, head, rows }: TableContent) {
+  return (
+    <details>
+      <summary>{summary}</summary>
+      <div class={styles.scroll} tabIndex={0} role="region" aria-label={summary}>
+        <table class={styles.table}>
+          <thead>
+            <tr>
+              {head.map((cell) => (
+                <th key={cell} scope="col">
+                  {cell}
+                </th>
+              ))}
+            </tr>
+          </thead>
+          <tbody>
+            {rows.map((row, index) => (
+              <tr key={index}>
+                <th scope="row">{row[0]}</th>
+                {row.slice(1).map((cell, column) => (
+                  <td key={column}>{cell}</td>
+                ))}
+              </tr>
+            ))}
+          </tbody>
+        </table>
+      </div>
+    </details>
+  );
+}

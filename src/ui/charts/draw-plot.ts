@@ -1,0 +1,236 @@
+/** The only file that imports uPlot; loaded when the first plot is shown. */
+import uPlot from 'uplot';
+import 'uplot/dist/uPlot.min.css';
+import type { Interval } from '../../core/model/interval.ts';
+import { attachGestures } from './attach-gestures.ts';
+import type { PlotPalette } from './plot-palette.ts';
+import type { PlotSeries, PlotSpec } from './plot-spec.ts';
+
+export interface DrawnPlot {
+  range(): Interval;
+  setRange(range: Interval): void;
+  zoom(factor: number): void;
+  resize(widthPx: number): void;
+  /** Moves the cursor to a sample; undefined takes it away. */
+  pointAt(index: number | undefined): void;
+  pointed(): number | undefined;
+  destroy(): void;
+}
+
+export interface PlotEvents {
+  /** The cursor stands on a sample, or on none. */
+  readonly onPoint: (index: number | undefined) => void;
+  readonly onRange: (range: Interval) => void;
+}
+
+/** Closest view: this share of the whole, or of a decade on a logarithmic axis. */
+const CLOSEST_SHARE = 0.004;
+const DOT_PX = 3.5;
+const DASHES: Readonly<Record<PlotSeries['kind'], number[] | undefined>> = {
+  line: undefined,
+  dots: undefined,
+  dashes: [6, 4],
+  dotted: [1.5, 3],
+};
+
+const seriesOptions = (series: PlotSeries, palette: PlotPalette): uPlot.Series => {
+  const stroke = palette.colour(series.colour);
+  const dash = DASHES[series.kind];
+  return {
+    label: series.label,
+    stroke,
+    width: series.kind === 'dots' ? 0 : 1.5,
+    ...(dash ? { dash } : {}),
+    points: series.kind === 'dots' ? { show: true, size: DOT_PX, fill: stroke, width: 0 } : { show: false },
+    ...(series.kind === 'dots' ? { paths: () => null } : {}),
+  };
+};
+
+const axisOptions = (label: string, side: number, palette: PlotPalette): uPlot.Axis => ({
+  label,
+  side,
+  stroke: palette.colour('--text-quiet'),
+  font: palette.font,
+  labelFont: palette.font,
+  labelSize: palette.textPx * 1.7,
+  labelGap: 0,
+  size: side === 3 ? palette.textPx * 3.6 : palette.textPx * 2.2,
+  gap: 4,
+  space: side === 3 ? palette.textPx * 3 : palette.textPx * 4.5,
+  grid: { stroke: palette.colour('--chart-grid'), width: 1 },
+  ticks: { stroke: palette.colour('--edge-strong'), width: 1, size: 5 },
+  ...(side === 3 ? { values: (_: uPlot, splits: number[]) => splits.map(tickText) } : {}),
+});
+
+const tickText = (value: number | null): string =>
+  value === null
+    ? ''
+    : value !== 0 && Math.abs(value) < 1e-3
+      ? value.toExponential(0)
+      : String(+value.toPrecision(4));
+
+/** A logarithmic axis cannot show zero: values at or below the floor lie on it. */
+const floored = (values: ArrayLike<number>, floor: number | undefined): number[] =>
+  Array.from(values, (value) => (floor === undefined ? value : Math.max(floor, value)));
+
+const hatched = (plot: uPlot, [from, to]: Interval, colour: string) => {
+  const { ctx, bbox } = plot;
+  const left = Math.max(bbox.left, plot.valToPos(from, 'x', true));
+  const right = Math.min(bbox.left + bbox.width, plot.valToPos(to, 'x', true));
+  if (right - left < 1) return;
+  const step = 7 * devicePixelRatio;
+  ctx.save();
+  ctx.beginPath();
+  ctx.rect(left, bbox.top, right - left, bbox.height);
+  ctx.clip();
+  ctx.strokeStyle = colour;
+  ctx.lineWidth = devicePixelRatio;
+  ctx.globalAlpha = 0.5;
+  ctx.beginPath();
+  for (let x = left - bbox.height; x < right; x += step) {
+    ctx.moveTo(x, bbox.top + bbox.height);
+    ctx.lineTo(x + bbox.height, bbox.top);
+  }
+  ctx.stroke();
+  ctx.restore();
+};
+
+const marked = (plot: uPlot, spec: PlotSpec, palette: PlotPalette) => {
+  const { ctx, bbox } = plot;
+  const px = devicePixelRatio;
+  const line = palette.textPx * px * 1.25;
+  const paper = palette.colour('--surface');
+  ctx.save();
+  ctx.font = palette.font.replace(/^[\d.]+px/, `${palette.textPx * px}px`);
+  ctx.textBaseline = 'top';
+  const taken: number[] = [];
+  for (const mark of spec.marks) {
+    const x = plot.valToPos(mark.at, 'x', true);
+    if (x < bbox.left || x > bbox.left + bbox.width) continue;
+    ctx.strokeStyle = palette.colour(mark.colour);
+    ctx.lineWidth = 1.2 * px;
+    ctx.setLineDash(mark.isDashed ? [4 * px, 3 * px] : []);
+    ctx.beginPath();
+    ctx.moveTo(x, bbox.top);
+    ctx.lineTo(x, bbox.top + bbox.height);
+    ctx.stroke();
+    if (mark.label === '') continue;
+    const width = ctx.measureText(mark.label).width;
+    const isRight = x + width + 6 * px < bbox.left + bbox.width;
+    const start = isRight ? x + 4 * px : x - width - 4 * px;
+    // labels that would cover another go one row down
+    let row = 0;
+    while (taken[row] !== undefined && start < taken[row]! && row < 4) row += 1;
+    taken[row] = start + width + 6 * px;
+    ctx.fillStyle = paper;
+    ctx.globalAlpha = 0.85;
+    ctx.fillRect(start - 2 * px, bbox.top + row * line, width + 4 * px, line);
+    ctx.globalAlpha = 1;
+    ctx.fillStyle = palette.colour('--text');
+    ctx.fillText(mark.label, start, bbox.top + row * line + 2 * px);
+  }
+  ctx.restore();
+};
+
+const forward = (value: number, isLog: boolean | undefined) => (isLog ? Math.log10(value) : value);
+const backward = (value: number, isLog: boolean | undefined) => (isLog ? 10 ** value : value);
+
+/** The range that results when `range` is scaled about a value and moved, never outside the whole. */
+export function movedRange(
+  range: Interval,
+  whole: Interval,
+  change: { readonly factor?: number; readonly about?: number; readonly shift?: number },
+  isLog?: boolean,
+): Interval {
+  const [low, high] = range.map((value) => forward(value, isLog)) as [number, number];
+  const [lowest, highest] = whole.map((value) => forward(value, isLog)) as [number, number];
+  const about = change.about === undefined ? (low + high) / 2 : forward(change.about, isLog);
+  const smallest = (highest - lowest) * CLOSEST_SHARE;
+  const width = Math.min(highest - lowest, Math.max(smallest, (high - low) / (change.factor ?? 1)));
+  const share = (about - low) / (high - low);
+  const wanted = about - share * width + (change.shift ?? 0) * width;
+  const start = Math.min(highest - width, Math.max(lowest, wanted));
+  return [backward(start, isLog), backward(start + width, isLog)];
+}
+
+/** Draws a plot into an element; the element keeps its height. */
+export function drawPlot(
+  host: HTMLElement,
+  spec: PlotSpec,
+  palette: PlotPalette,
+  size: { readonly widthPx: number; readonly heightPx: number },
+  events: PlotEvents,
+): DrawnPlot {
+  let range: Interval = spec.wholeX;
+  const data = [
+    Array.from(spec.x),
+    ...spec.series.map((series) => floored(series.values, spec.isLogY ? spec.floorY : undefined)),
+  ] as uPlot.AlignedData;
+  const plot = new uPlot(
+    {
+      width: size.widthPx,
+      height: size.heightPx,
+      padding: [palette.textPx * 0.6, palette.textPx * 0.9, 0, 0],
+      legend: { show: false },
+      cursor: {
+        drag: { x: false, y: false },
+        y: false,
+        points: { size: 7, width: 1.5 },
+      },
+      scales: {
+        x: { time: false, distr: spec.isLogX ? 3 : 1, range: () => [range[0], range[1]] },
+        y: {
+          distr: spec.isLogY ? 3 : 1,
+          ...(spec.rangeY ? { range: [spec.rangeY[0], spec.rangeY[1]] as uPlot.Range.MinMax } : {}),
+        },
+      },
+      axes: [axisOptions(spec.xLabel, 2, palette), axisOptions(spec.yLabel, 3, palette)],
+      series: [{}, ...spec.series.map((series) => seriesOptions(series, palette))],
+      hooks: {
+        drawAxes: [
+          (self) => spec.shades.forEach((shade) => hatched(self, shade, palette.colour('--chart-hatch'))),
+        ],
+        draw: [(self) => marked(self, spec, palette)],
+        setCursor: [(self) => events.onPoint(self.cursor.idx ?? undefined)],
+      },
+    },
+    data,
+    host,
+  );
+  const setRange = (next: Interval) => {
+    range = next;
+    plot.setScale('x', { min: next[0], max: next[1] });
+    events.onRange(next);
+  };
+  const isZoomed = () =>
+    forward(range[1], spec.isLogX) - forward(range[0], spec.isLogX) <
+    (forward(spec.wholeX[1], spec.isLogX) - forward(spec.wholeX[0], spec.isLogX)) * 0.999;
+  const detach = attachGestures(host, {
+    along: 'x',
+    isZoomed,
+    zoomAt: (factor, clientX) => {
+      const about = plot.posToVal(clientX - plot.over.getBoundingClientRect().left, 'x');
+      setRange(movedRange(range, spec.wholeX, { factor, about }, spec.isLogX));
+    },
+    panBy: (pixels) =>
+      setRange(movedRange(range, spec.wholeX, { shift: -pixels / plot.over.clientWidth }, spec.isLogX)),
+    began: () => undefined,
+    dragged: () => undefined,
+  });
+  return {
+    range: () => range,
+    setRange,
+    zoom: (factor) => setRange(movedRange(range, spec.wholeX, { factor }, spec.isLogX)),
+    resize: (widthPx) => plot.setSize({ width: widthPx, height: size.heightPx }),
+    pointAt: (index) => {
+      const value = index === undefined ? undefined : plot.data[0][index];
+      const left = value === undefined ? -10 : plot.valToPos(value, 'x');
+      plot.setCursor({ left, top: value === undefined ? -10 : plot.over.clientHeight / 2 });
+    },
+    pointed: () => plot.cursor.idx ?? undefined,
+    destroy: () => {
+      detach();
+      plot.destroy();
+    },
+  };
+}
