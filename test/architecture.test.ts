@@ -120,6 +120,7 @@ const WITHOUT_UNIT = new Set([
   'limit',
   'factor',
   'sideEffects',
+  'mountsNear',
   'facts',
   'bound',
   'amplificationAfter',
