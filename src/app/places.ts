@@ -1,18 +1,7 @@
 /** Sites, assets and spots: where readings belong, and what can be told of a spot from its visits. */
 import type { Entity, EntityKind, FieldValue } from '../core/model/fact.ts';
+import { SPOT_KINDS, type Place, type SpotKind } from '../core/model/place.ts';
 import type { ReadingSummary, StorePort } from './ports.ts';
-
-export const SPOT_KINDS = [
-  'handrail',
-  'stair',
-  'floor',
-  'footbridge',
-  'machine-base',
-  'fan-frame',
-  'pipe',
-  'other',
-] as const;
-export type SpotKind = (typeof SPOT_KINDS)[number];
 
 export interface Spot {
   readonly id: string;
@@ -42,18 +31,20 @@ export interface PlaceTree {
   readonly looseSpots: readonly Spot[];
 }
 
-/** Names and ids of where a spot is. */
-export interface Place {
+export interface PlaceIds {
   readonly spot?: string;
   readonly asset?: string;
   readonly site?: string;
-  readonly names: { readonly spot?: string; readonly asset?: string; readonly site?: string };
-  readonly kind?: SpotKind;
+}
+/** Ids and names of where a spot is, and what it is. */
+export interface Whereabouts extends PlaceIds {
+  readonly names: PlaceIds;
+  readonly place?: Place;
 }
 
 export interface Places {
   tree(): Promise<PlaceTree>;
-  placeOf(ids: { readonly spot?: string; readonly asset?: string; readonly site?: string }): Promise<Place>;
+  whereabouts(ids: PlaceIds): Promise<Whereabouts>;
   /** Readings of one spot, oldest first, trashed ones left out. */
   visits(spot: string): Promise<readonly ReadingSummary[]>;
   addSite(name: string): Promise<string>;
@@ -66,12 +57,25 @@ export const textField = (entity: Entity | undefined, key: string): string | und
   return typeof value === 'string' && value !== '' ? value : undefined;
 };
 
+/** What the criteria need to know of a spot, as far as it was entered. */
+export const placeOf = (spot: Entity): Place => {
+  const { machine, building, floorUse } = spot.fields as unknown as Partial<Place>;
+  return {
+    kind: spotKindOf(spot.fields.kind),
+    ...(machine ? { machine } : {}),
+    ...(building ? { building } : {}),
+    ...(floorUse ? { floorUse } : {}),
+  };
+};
+
 export const spotKindOf = (value: unknown): SpotKind => SPOT_KINDS.find((kind) => kind === value) ?? 'other';
 
 export function createPlaces(store: StorePort): Places {
   const kept = async (kind: EntityKind) => (await store.entities(kind)).filter((entity) => !entity.trashed);
   const create = async (kind: EntityKind, fields: Record<string, FieldValue | undefined>) => {
-    const given = Object.entries(fields).filter((entry): entry is [string, FieldValue] => entry[1] !== undefined);
+    const given = Object.entries(fields).filter(
+      (entry): entry is [string, FieldValue] => entry[1] !== undefined,
+    );
     return (await store.newEntity(kind, Object.fromEntries(given))).id;
   };
   return {
@@ -79,7 +83,7 @@ export function createPlaces(store: StorePort): Places {
       const [sites, assets, spots] = await Promise.all([kept('site'), kept('asset'), kept('spot')]);
       return placeTree(sites, assets, spots);
     },
-    placeOf: (ids) => placeOf(store, ids),
+    whereabouts: (ids) => whereabouts(store, ids),
     async visits(spot) {
       const found = await store.listReadings({ spot, trashed: false });
       return [...found].sort((a, b) => a.recordedAt.localeCompare(b.recordedAt));
@@ -90,10 +94,7 @@ export function createPlaces(store: StorePort): Places {
   };
 }
 
-async function placeOf(
-  store: Pick<StorePort, 'entity'>,
-  ids: { readonly spot?: string; readonly asset?: string; readonly site?: string },
-): Promise<Place> {
+async function whereabouts(store: Pick<StorePort, 'entity'>, ids: PlaceIds): Promise<Whereabouts> {
   const spot = ids.spot ? await store.entity(ids.spot) : undefined;
   const assetId = ids.asset ?? textField(spot, 'asset');
   const asset = assetId ? await store.entity(assetId) : undefined;
@@ -103,7 +104,7 @@ async function placeOf(
     ...(ids.spot ? { spot: ids.spot } : {}),
     ...(assetId ? { asset: assetId } : {}),
     ...(siteId ? { site: siteId } : {}),
-    ...(spot ? { kind: spotKindOf(spot.fields.kind) } : {}),
+    ...(spot ? { place: placeOf(spot) } : {}),
     names: {
       ...nameEntry('spot', spot),
       ...nameEntry('asset', asset),

@@ -7,7 +7,9 @@ export const ROUND_PAUSE_MS = 4 * 60 * 60 * 1000;
 
 export interface Rounds {
   /** Readings of the round that goes on, newest first; empty when none does. */
-  current(now: Date): Promise<{ readonly id: string | undefined; readonly readings: readonly ReadingSummary[] }>;
+  current(
+    now: Date,
+  ): Promise<{ readonly id: string | undefined; readonly readings: readonly ReadingSummary[] }>;
   /** The round that a reading taken now belongs to; begins one when needed. */
   forNewReading(now: Date, site?: string): Promise<string>;
   end(): void;
@@ -27,7 +29,10 @@ export function createRounds(store: StorePort, settings: SettingsHolder): Rounds
     async forNewReading(now, site) {
       const round = await running(now);
       if (round.id) return round.id;
-      const begun = await store.newEntity('round', { startedAt: now.toISOString(), ...(site ? { site } : {}) });
+      const begun = await store.newEntity('round', {
+        startedAt: now.toISOString(),
+        ...(site ? { site } : {}),
+      });
       settings.change({ round: begun.id });
       return begun.id;
     },

@@ -59,11 +59,7 @@ export function parseRoute(hash: string): Route {
   return plainRoute(screen, first, asked) ?? { screen: 'lost', hash };
 }
 
-function plainRoute(
-  screen: string,
-  first: string | undefined,
-  asked: URLSearchParams,
-): Route | undefined {
+function plainRoute(screen: string, first: string | undefined, asked: URLSearchParams): Route | undefined {
   switch (screen) {
     case 'readings':
       return asked.has('trash') ? { screen, trashed: true } : { screen };

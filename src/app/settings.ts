@@ -1,6 +1,7 @@
 /** What the person set on this phone, kept in the store as one value; unknown or broken parts fall back to defaults. */
 import { PROCEDURES, type Procedure } from '../core/model/analysis.ts';
 import type { Circumstances, FieldValue } from '../core/model/fact.ts';
+import { SPOT_KINDS, type SpotKind } from '../core/model/place.ts';
 import { live, type Live } from './live-state.ts';
 import type { StorePort } from './ports.ts';
 
@@ -15,7 +16,9 @@ export interface Settings {
   readonly mounting: Circumstances['mounting'];
   readonly phoneMassKg: number | null;
   readonly round: string | null;
-  /** Codes of the cautions the person has confirmed. */
+  /** Null until the first kind was chosen: then Take begins with the pictures. */
+  readonly lastSpotKind: SpotKind | null;
+  /** Cautions the person has confirmed, with the day. */
   readonly cautionsSeen: readonly string[];
   readonly offline: 'on' | 'off';
 }
@@ -28,6 +31,7 @@ export const DEFAULT_SETTINGS: Settings = {
   mounting: 'laid',
   phoneMassKg: null,
   round: null,
+  lastSpotKind: null,
   cautionsSeen: [],
   offline: 'on',
 };
@@ -66,6 +70,7 @@ export function parseSettings(kept: unknown): Settings {
     lastProcedure: word('lastProcedure', PROCEDURES),
     mounting: word('mounting', ['laid', 'strapped', 'putty', 'clamp', 'magnet', 'unknown']),
     phoneMassKg: typeof mass === 'number' && mass > 0 && mass < 2 ? mass : null,
+    lastSpotKind: SPOT_KINDS.find((kind) => kind === given.lastSpotKind) ?? null,
     round: typeof given.round === 'string' ? given.round : null,
     cautionsSeen: Array.isArray(given.cautionsSeen)
       ? given.cautionsSeen.filter((code): code is string => typeof code === 'string')

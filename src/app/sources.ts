@@ -16,14 +16,40 @@ export interface Sources {
   /** Those of the asset, those of the site, and those that belong nowhere. */
   validFor(place: { readonly asset?: string; readonly site?: string }): Promise<readonly KnownSource[]>;
   open(id: string): Promise<KnownSource | undefined>;
-  save(source: Source, place: { readonly asset?: string; readonly site?: string }, id?: string): Promise<string>;
+  save(
+    source: Source,
+    place: { readonly asset?: string; readonly site?: string },
+    id?: string,
+  ): Promise<string>;
 }
 
 /** Every field that any kind of source may have: a changed kind clears the fields of the former. */
 const SOURCE_FIELDS = [
-  'name', 'kind', 'knownBy', 'toleranceRatio', 'speedRpm', 'bladeCount', 'orders', 'cylinders', 'twoStroke',
-  'variableSpeed', 'pulleyDiameterM', 'beltLengthM', 'supplyHz', 'poles', 'activity', 'paceHz', 'peopleCount',
-  'widthM', 'speedMps', 'shape', 'depthM', 'strouhalRatio', 'massPerLengthKgPerM', 'traffic', 'frequencyHz',
+  'name',
+  'kind',
+  'knownBy',
+  'toleranceRatio',
+  'speedRpm',
+  'bladeCount',
+  'orders',
+  'cylinders',
+  'twoStroke',
+  'variableSpeed',
+  'pulleyDiameterM',
+  'beltLengthM',
+  'supplyHz',
+  'poles',
+  'activity',
+  'paceHz',
+  'peopleCount',
+  'widthM',
+  'speedMps',
+  'shape',
+  'depthM',
+  'strouhalRatio',
+  'massPerLengthKgPerM',
+  'traffic',
+  'frequencyHz',
   'harmonics',
 ] as const;
 

@@ -139,7 +139,7 @@ async function readingDraft(
   const { environment, store } = parts;
   const now = environment.now();
   const isFile = recording.sensor.source === 'file';
-  const { spot, asset, site } = plan.place;
+  const { spot, asset, site } = plan.where;
   const round = isFile ? undefined : await parts.rounds.forNewReading(now, site);
   const check = await store.getSetting('check');
   const procedure: Procedure = analysis.procedure;

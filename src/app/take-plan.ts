@@ -1,12 +1,13 @@
 /** What is about to be recorded: procedure, place and circumstances, with defaults that spare the person every form. */
 import type { Procedure } from '../core/model/analysis.ts';
 import type { Circumstances } from '../core/model/fact.ts';
-import type { Place, SpotKind } from './places.ts';
+import type { SpotKind } from '../core/model/place.ts';
+import type { Whereabouts } from './places.ts';
 import type { SessionOptions, StartBy } from './ports.ts';
 
 export interface TakePlan {
   readonly procedure: Procedure;
-  readonly place: Place;
+  readonly where: Whereabouts;
   readonly spotKind: SpotKind;
   readonly circumstances: Circumstances;
   readonly durationS: number;
@@ -44,13 +45,16 @@ const SURFACES: Readonly<Record<SpotKind, Circumstances['surface']>> = {
   stair: 'floor',
   floor: 'floor',
   footbridge: 'floor',
+  'bearing-housing': 'plate',
   'machine-base': 'plate',
   'fan-frame': 'plate',
   pipe: 'tube',
+  foundation: 'floor',
+  'top-floor': 'floor',
   other: 'unknown',
 };
 
-const MACHINES: readonly SpotKind[] = ['machine-base', 'fan-frame', 'pipe'];
+const MACHINES: readonly SpotKind[] = ['bearing-housing', 'machine-base', 'fan-frame', 'pipe'];
 
 /** Circumstances that follow from procedure and kind of spot; the person corrects what differs. */
 export function usualCircumstances(
@@ -64,22 +68,35 @@ export function usualCircumstances(
     mounting,
     surface: SURFACES[spotKind],
     excitation:
-      procedure === 'tap' ? (floorLike ? 'heel-drop' : 'knuckle') : procedure === 'ambient' ? 'ambient' : 'machine',
-    machineState: procedure === 'running' ? 'running' : procedure === 'coastdown' ? 'slowing' : isMachine ? 'off' : 'none',
+      procedure === 'tap'
+        ? floorLike
+          ? 'heel-drop'
+          : 'knuckle'
+        : procedure === 'ambient'
+          ? 'ambient'
+          : 'machine',
+    machineState:
+      procedure === 'running'
+        ? 'running'
+        : procedure === 'coastdown'
+          ? 'slowing'
+          : isMachine
+            ? 'off'
+            : 'none',
     peopleOnIt: 'unknown',
   };
 }
 
 export function planTake(
   procedure: Procedure,
-  place: Place,
+  where: Whereabouts,
   mounting: Circumstances['mounting'],
   practice?: string,
 ): TakePlan {
-  const spotKind = place.kind ?? 'other';
+  const spotKind = where.place?.kind ?? 'other';
   return {
     procedure,
-    place,
+    where,
     spotKind,
     circumstances: usualCircumstances(procedure, spotKind, mounting),
     durationS: DURATIONS_S[procedure],
@@ -89,7 +106,10 @@ export function planTake(
 }
 
 /** Another procedure or kind of spot: what follows from it follows, what the person chose stays. */
-export function replan(plan: TakePlan, change: { readonly procedure?: Procedure; readonly spotKind?: SpotKind }): TakePlan {
+export function replan(
+  plan: TakePlan,
+  change: { readonly procedure?: Procedure; readonly spotKind?: SpotKind },
+): TakePlan {
   const procedure = change.procedure ?? plan.procedure;
   const spotKind = change.spotKind ?? plan.spotKind;
   const usual = usualCircumstances(procedure, spotKind, plan.circumstances.mounting);

@@ -28,8 +28,13 @@ function Frame(props: Common & { readonly id: string; readonly children: Compone
 }
 
 const described = (id: string, props: Common) => {
-  const ids = [props.note ? `${id}-note` : '', props.problem ? `${id}-problem` : ''].filter(Boolean).join(' ');
-  return { ...(ids ? { 'aria-describedby': ids } : {}), ...(props.problem ? { 'aria-invalid': true } : {}) };
+  const ids = [props.note ? `${id}-note` : '', props.problem ? `${id}-problem` : '']
+    .filter(Boolean)
+    .join(' ');
+  return {
+    ...(ids ? { 'aria-describedby': ids } : {}),
+    ...(props.problem ? { 'aria-invalid': 'true' as const } : {}),
+  };
 };
 
 export function TextField(

@@ -3,7 +3,13 @@ import { ArrowOn } from './icons.tsx';
 import styles from './rows.module.css';
 
 /** A list of things to open, one below the other, each a full-width target. */
-export const Rows = ({ children, label }: { readonly children: ComponentChildren; readonly label?: string }) => (
+export const Rows = ({
+  children,
+  label,
+}: {
+  readonly children: ComponentChildren;
+  readonly label?: string;
+}) => (
   <ul class={styles.rows} {...(label ? { 'aria-label': label } : {})}>
     {children}
   </ul>
@@ -16,7 +22,11 @@ export function Row(props: {
   readonly end?: ComponentChildren;
   readonly isCurrent?: boolean;
   /** A check box that selects the row instead of opening it. */
-  readonly select?: { readonly checked: boolean; readonly label: string; readonly onChange: (on: boolean) => void };
+  readonly select?: {
+    readonly checked: boolean;
+    readonly label: string;
+    readonly onChange: (on: boolean) => void;
+  };
 }) {
   return (
     <li class={styles.row}>
@@ -30,7 +40,11 @@ export function Row(props: {
           />
         </label>
       )}
-      <a href={props.href} class={styles.link} {...(props.isCurrent ? { 'aria-current': 'page' as const } : {})}>
+      <a
+        href={props.href}
+        class={styles.link}
+        {...(props.isCurrent ? { 'aria-current': 'page' as const } : {})}
+      >
         <span class={styles.words}>
           <span class={styles.title}>{props.title}</span>
           {props.note && <span class="note">{props.note}</span>}

@@ -1,0 +1,163 @@
+/** The app without a screen: ports in, use cases out. Screens call these and nothing else; main.tsx plugs in the edges, tests plug in fakes. */
+import type { Procedure } from '../core/model/analysis.ts';
+import { parseSource } from '../core/survey/parse-sources.ts';
+import type { Outcome } from '../core/model/outcome.ts';
+import type { Problem } from '../core/model/problem.ts';
+import type { Recording } from '../core/model/recording.ts';
+import { screenText } from '../text/screens.ts';
+import type { Navigation } from './navigation.ts';
+import { createNotices, type Notices } from './notices.ts';
+import { createPlaces, type PlaceIds, type Places } from './places.ts';
+import type { AnalysisPort, CapturePort, StorePort } from './ports.ts';
+import { createReadings, type Readings } from './readings.ts';
+import { createRounds, type Rounds } from './rounds.ts';
+import { openSettings, type SettingsHolder } from './settings.ts';
+import { createSources, type Sources } from './sources.ts';
+import { createTakeFlow, type TakeFlow } from './take-flow.ts';
+import { planTake, replan } from './take-plan.ts';
+import type { UpdatePort } from './update-port.ts';
+
+export interface About {
+  readonly version: string;
+  readonly commit: string;
+  readonly analysisVersion: number;
+}
+
+export interface App {
+  readonly about: About;
+  readonly settings: SettingsHolder;
+  readonly notices: Notices;
+  readonly navigation: Navigation;
+  readonly readings: Readings;
+  readonly places: Places;
+  readonly sources: Sources;
+  readonly rounds: Rounds;
+  readonly take: Take;
+  /** Kept on this phone, shown under This phone; nothing leaves it. */
+  noteError(error: unknown): void;
+  today(): string;
+  readonly update: UpdatePort;
+  readonly store: StorePort;
+  readonly capture: CapturePort;
+}
+
+export interface Take extends TakeFlow {
+  /** Opens the Take screen for a spot, or for none. */
+  prepare(where: PlaceIds, procedure?: Procedure): Promise<void>;
+  /** Same spot, same procedure. */
+  again(reading: PlaceIds & { readonly procedure: Procedure }): void;
+  /** Another spot, the same procedure. */
+  next(reading: { readonly procedure: Procedure }): void;
+  openFile(file: File): Promise<void>;
+  /** From now on the simulated phone; its readings are marked for good. */
+  usePractice(): void;
+  /** Back to the real sensor. */
+  leavePractice(): void;
+}
+
+export interface AppParts {
+  readonly about: About;
+  readonly navigation: Navigation;
+  readonly capture: CapturePort;
+  readonly analysis: AnalysisPort;
+  readonly store: StorePort;
+  readonly update: UpdatePort;
+  readonly readRecording: (file: File) => Promise<Outcome<Recording>>;
+  /** Packets dropped or picked anywhere go to the Hand over screen. */
+  readonly receivePacket: (file: File) => void;
+  readonly problemSentence: (problem: Problem) => string;
+  readonly environment: {
+    now(): Date;
+    readonly timeZone: string;
+    readonly userAgent: string;
+    /** Query of the practice rig when the address asks for it. */
+    readonly practice?: string;
+  };
+}
+
+/** The rig when the address does not describe another. */
+const DEFAULT_RIG = '?rig=handrail';
+
+const localDay = (now: Date) =>
+  [now.getFullYear(), now.getMonth() + 1, now.getDate()]
+    .map((part) => String(part).padStart(2, '0'))
+    .join('-');
+
+export async function createApp(parts: AppParts): Promise<App> {
+  const { store, navigation, environment, about } = parts;
+  const noteError = (error: unknown) =>
+    store.noteError(
+      error instanceof Error ? error.message : String(error),
+      error instanceof Error ? error.stack : undefined,
+    );
+  const settings = await openSettings(store, noteError);
+  const notices = createNotices();
+  const places = createPlaces(store);
+  const rounds = createRounds(store, settings);
+  const sources = createSources(store, (given) => {
+    const parsed = parseSource(given);
+    return parsed.ok ? parsed.value : undefined;
+  });
+  const readings = createReadings(store, parts.analysis, places, notices, screenText.readings);
+  const { lastProcedure, mounting } = settings.get();
+  const flow = createTakeFlow({
+    ...parts,
+    rounds,
+    about: { version: about.version, commit: about.commit },
+    plan: planTake(lastProcedure, { names: {} }, mounting, environment.practice),
+    onKept: (reading) => {
+      if (reading.sensor.source !== 'file')
+        settings.change({ lastProcedure: reading.procedure, mounting: reading.circumstances.mounting });
+      void store.askPersistence();
+      navigation.replace({ screen: 'reading', id: reading._id });
+    },
+  });
+  const take: Take = {
+    ...flow,
+    async prepare(where, procedure) {
+      const now = settings.get();
+      flow.reset();
+      const practice = flow.plan.get().practice ?? environment.practice;
+      const known = await places.whereabouts(where);
+      const plan = planTake(procedure ?? now.lastProcedure, known, now.mounting, practice);
+      const kind = known.place ? {} : { spotKind: now.lastSpotKind ?? 'other' };
+      flow.plan.set(replan(plan, kind));
+    },
+    again: ({ spot, procedure }) => navigation.go({ screen: 'take', procedure, ...(spot ? { spot } : {}) }),
+    next: ({ procedure }) => navigation.go({ screen: 'take', procedure }),
+    usePractice: () => flow.plan.set({ ...flow.plan.get(), practice: environment.practice ?? DEFAULT_RIG }),
+    leavePractice() {
+      const { practice: _, ...plan } = flow.plan.get();
+      flow.plan.set(plan);
+    },
+    openFile: (file) => openFile(parts, flow, notices, file),
+  };
+  return {
+    about,
+    settings,
+    notices,
+    navigation,
+    readings,
+    places,
+    sources,
+    rounds,
+    take,
+    noteError,
+    today: () => localDay(environment.now()),
+    update: parts.update,
+    store,
+    capture: parts.capture,
+  };
+}
+
+/** A recording becomes a reading; a packet goes to its screen; anything else is refused with row and reason. */
+async function openFile(parts: AppParts, flow: TakeFlow, notices: Notices, file: File): Promise<void> {
+  if (/\.zip$/i.test(file.name)) return parts.receivePacket(file);
+  const recording = await parts.readRecording(file);
+  if (!recording.ok) {
+    notices.show(`${file.name}: ${parts.problemSentence(recording.problem)}`, { tone: 'failure' });
+    return;
+  }
+  parts.navigation.go({ screen: 'take' });
+  await flow.takeFile(recording.value, file.name);
+}

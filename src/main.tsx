@@ -1,0 +1,63 @@
+/** Composition root: the only place that knows every edge. */
+import { render } from 'preact';
+import { createApp, type App } from './app/app.ts';
+import { createNavigation } from './app/navigation.ts';
+import { createOfflineUpdates } from './app/offline-updates.ts';
+import { createCapture } from './capture/create-capture.ts';
+import { ANALYSIS_VERSION } from './core/model/analysis.ts';
+import { openStore } from './store/open-store.ts';
+import { problemSentence } from './text/problems.ts';
+import { screenText } from './text/screens.ts';
+import { Root } from './ui/root.tsx';
+import { StartFailed } from './ui/start-failed.tsx';
+import './ui/styles/index.css';
+import { applyRememberedTheme } from './ui/theme.ts';
+import { createAnalysisClient } from './worker/client.ts';
+
+applyRememberedTheme();
+const root = document.getElementById('app');
+if (root) assemble(root).catch((error: unknown) => render(<StartFailed error={error} />, root));
+
+async function assemble(place: HTMLElement): Promise<void> {
+  const store = await openStore({
+    onBlocked: () => render(<StartFailed error={{ code: 'blocked' }} />, place),
+  });
+  const isOff = (await store.getSetting('offline')) === 'off';
+  const navigation = createNavigation(window);
+  const practice = new URLSearchParams(location.search).has('rig') ? location.search : undefined;
+  let app: App | undefined;
+  const update = createOfflineUpdates({
+    container: navigator.serviceWorker,
+    locks: navigator.locks,
+    reload: () => location.reload(),
+    isOff,
+    onError: (error) => app?.noteError(error),
+  });
+  app = await createApp({
+    about: { version: __APP_VERSION__, commit: __APP_COMMIT__, analysisVersion: ANALYSIS_VERSION },
+    navigation,
+    capture: createCapture({ journal: store }),
+    analysis: createAnalysisClient(),
+    store,
+    update,
+    readRecording: async (file) => {
+      const { readCsv } = await import('./core/packet/read-csv.ts');
+      return readCsv(await file.text(), { name: file.name });
+    },
+    receivePacket: () => navigation.go({ screen: 'hand-over' }),
+    problemSentence,
+    environment: {
+      now: () => new Date(),
+      timeZone: Intl.DateTimeFormat().resolvedOptions().timeZone,
+      userAgent: navigator.userAgent,
+      ...(practice ? { practice } : {}),
+    },
+  });
+  const made = app;
+  addEventListener('error', (event) => made.noteError(event.error ?? event.message));
+  addEventListener('unhandledrejection', (event) => made.noteError(event.reason));
+  store.onChange((what) => {
+    if (what === 'closed') made.notices.show(screenText.storeClosed, { tone: 'failure' });
+  });
+  render(<Root app={made} />, place);
+}

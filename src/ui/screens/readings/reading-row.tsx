@@ -1,0 +1,67 @@
+import type { App } from '../../../app/app.ts';
+import type { ReadingSummary } from '../../../app/ports.ts';
+import { formatDamping, formatFrequency } from '../../../text/quantity.ts';
+import { screenText } from '../../../text/screens.ts';
+import { Row } from '../../components/rows.tsx';
+import { useLive } from '../../use-live.ts';
+import { useLoaded } from '../../use-loaded.ts';
+import { dayAndTime } from '../../day-and-time.ts';
+
+/** One reading in a list: where, what it rings at, when; practice is said in words. */
+export function ReadingRow(props: {
+  readonly app: App;
+  readonly reading: ReadingSummary;
+  readonly isCurrent?: boolean;
+  readonly select?: { readonly checked: boolean; readonly onChange: (on: boolean) => void };
+}) {
+  const { app, reading } = props;
+  const { frequencyUnit } = useLive(app.settings);
+  const name = useReadingName(app, reading);
+  const unit = frequencyUnit === 'rpm' ? 'r/min' : 'Hz';
+  const note = [
+    dayAndTime(reading.recordedAt),
+    screenText.procedures[reading.procedure].verb,
+    ...(reading.practice ? [screenText.common.practice] : []),
+  ].join(' · ');
+  return (
+    <Row
+      href={app.navigation.href({ screen: 'reading', id: reading.id })}
+      title={name}
+      note={note}
+      {...(props.isCurrent ? { isCurrent: true } : {})}
+      end={
+        reading.frequencyHz === undefined ? (
+          <span class="note">{screenText.readings.noFrequency}</span>
+        ) : (
+          <>
+            <strong>{formatFrequency(reading.frequencyHz, reading.frequencySdHz, unit)}</strong>
+            {reading.dampingRatio !== undefined && (
+              <span class="note" style={{ display: 'block' }}>
+                {formatDamping(reading.dampingRatio, reading.dampingRatioSd)}
+              </span>
+            )}
+          </>
+        )
+      }
+      {...(props.select ? { select: { ...props.select, label: screenText.readings.selectOne(name) } } : {})}
+    />
+  );
+}
+
+function useReadingName(app: App, reading: ReadingSummary): string {
+  const where = useLoaded(
+    app.store,
+    () =>
+      app.places.whereabouts({
+        ...pick('spot', reading),
+        ...pick('asset', reading),
+        ...pick('site', reading),
+      }),
+    [reading.spot, reading.asset, reading.site],
+  );
+  const place = [where?.names.asset, where?.names.spot].filter(Boolean).join(' · ') || where?.names.site;
+  return reading.label ?? (place || screenText.common.unnamed);
+}
+
+const pick = (key: 'spot' | 'asset' | 'site', reading: ReadingSummary) =>
+  reading[key] === undefined ? {} : { [key]: reading[key] };

@@ -1,0 +1,140 @@
+/** Start: take a reading, this round, what came last. */
+import type { App } from '../../../app/app.ts';
+import type { RecoveredJournal } from '../../../app/ports.ts';
+import { screenText } from '../../../text/screens.ts';
+import { BottomBar } from '../../components/bottom-bar.tsx';
+import { Button } from '../../components/button.tsx';
+import { FileButton } from '../../components/file-button.tsx';
+import { IconStart } from '../../components/icons.tsx';
+import { Page } from '../../components/page.tsx';
+import { RingDownFigure } from '../../components/ring-down-figure.tsx';
+import { Rows } from '../../components/rows.tsx';
+import { dayAndTime } from '../../day-and-time.ts';
+import { useLive } from '../../use-live.ts';
+import { useLoaded } from '../../use-loaded.ts';
+import { ReadingRow } from '../readings/reading-row.tsx';
+import { UpdateNote } from './update-note.tsx';
+
+const text = screenText.start;
+
+/** As many as a glance takes in; the rest is one tap away. */
+const RECENT_COUNT = 6;
+
+export function StartScreen({ app }: { readonly app: App }) {
+  const loaded = useLoaded(
+    app.store,
+    async () => ({
+      round: await app.rounds.current(new Date()),
+      recent: (await app.readings.list()).slice(0, RECENT_COUNT),
+      cut: await app.store.recoverable(),
+    }),
+    [],
+  );
+  const isNew = loaded?.recent.length === 0;
+  const inRound = loaded?.round.readings ?? [];
+  const roundIds = new Set(inRound.map((reading) => reading.id));
+  const earlier = (loaded?.recent ?? []).filter((reading) => !roundIds.has(reading.id));
+  return (
+    <Page title={isNew || !loaded ? text.lead : screenText.appName} quietFocus>
+      <UpdateNote app={app} />
+      {loaded?.cut.map((journal) => (
+        <CutRecording key={journal.journalId} app={app} journal={journal} />
+      ))}
+      {isNew && <Welcome />}
+      {inRound.length > 0 && (
+        <section class="stack">
+          <div class="row row-apart">
+            <h2>
+              {text.round} <span class="quiet">{text.roundNote(inRound.length)}</span>
+            </h2>
+            <Button kind="quiet" onClick={() => app.rounds.end()}>
+              {text.endRound}
+            </Button>
+          </div>
+          <Rows label={text.round}>
+            {inRound.map((reading) => (
+              <ReadingRow key={reading.id} app={app} reading={reading} />
+            ))}
+          </Rows>
+        </section>
+      )}
+      {earlier.length > 0 && (
+        <section class="stack">
+          <h2>{text.recent}</h2>
+          <Rows label={text.recent}>
+            {earlier.map((reading) => (
+              <ReadingRow key={reading.id} app={app} reading={reading} />
+            ))}
+          </Rows>
+        </section>
+      )}
+      <div class="row">
+        {loaded && !isNew && <a href={app.navigation.href({ screen: 'readings' })}>{text.all}</a>}
+        <FileButton kind="quiet" label={text.openFile} onFile={(file) => void app.take.openFile(file)} />
+        <a href={app.navigation.href({ screen: 'pace' })}>{text.pace}</a>
+      </div>
+      <BottomBar>
+        <TakeButton app={app} />
+      </BottomBar>
+    </Page>
+  );
+}
+
+function TakeButton({ app }: { readonly app: App }) {
+  const { practice } = useLive(app.take.plan);
+  const mayHaveSensor = app.capture.support !== 'none';
+  const take = () => app.navigation.go({ screen: 'take' });
+  return (
+    <>
+      {!practice && !mayHaveSensor && (
+        <Button
+          onClick={() => {
+            app.take.usePractice();
+            take();
+          }}
+        >
+          {text.practice}
+        </Button>
+      )}
+      <Button kind="main" onClick={take}>
+        <IconStart />
+        {text.take}
+      </Button>
+    </>
+  );
+}
+
+function Welcome() {
+  return (
+    <section class="stack">
+      <RingDownFigure />
+      <ol class="stack stack-tight">
+        {text.steps.map((step, index) => (
+          <li key={step}>
+            <strong>{index + 1}.</strong> {step}
+          </li>
+        ))}
+      </ol>
+      <p class="quiet">{text.emptyNote}</p>
+    </section>
+  );
+}
+
+function CutRecording({ app, journal }: { readonly app: App; readonly journal: RecoveredJournal }) {
+  const recover = () => {
+    app.navigation.go({ screen: 'take' });
+    void app.take.recover(journal);
+  };
+  return (
+    <section class="stack" role="status">
+      <h2>{text.recoverTitle}</h2>
+      <p>{text.recoverNote(Math.round(journal.durationS), dayAndTime(journal.startedAt))}</p>
+      <div class="row">
+        <Button onClick={recover}>{text.recover}</Button>
+        <Button kind="quiet" onClick={() => void app.store.dropJournal(journal.journalId)}>
+          {text.dropRecovered}
+        </Button>
+      </div>
+    </section>
+  );
+}

@@ -1,0 +1,67 @@
+/** Take a reading: one step at a time, each saying the one thing to do. */
+import { useEffect } from 'preact/hooks';
+import type { App } from '../../../app/app.ts';
+import type { Route } from '../../../app/route.ts';
+import { screenText } from '../../../text/screens.ts';
+import { Button } from '../../components/button.tsx';
+import { BottomBar } from '../../components/bottom-bar.tsx';
+import { Page } from '../../components/page.tsx';
+import { ProgressLine } from '../../components/progress-line.tsx';
+import { useLive } from '../../use-live.ts';
+import { CaptureStep } from './capture-step.tsx';
+import { CutStep, FailedStep, RefusedStep, UnsavedStep } from './trouble-steps.tsx';
+import { PrepareStep } from './prepare-step.tsx';
+
+const text = screenText.take;
+
+export function TakeScreen({
+  app,
+  route,
+}: {
+  readonly app: App;
+  readonly route: Route & { screen: 'take' };
+}) {
+  const state = useLive(app.take.state);
+  useEffect(() => {
+    // A file that is being worked out came here with its own recording: nothing to prepare.
+    if (state.phase === 'analysing') return;
+    void app.take.prepare(route.spot ? { spot: route.spot } : {}, route.procedure);
+  }, [route.spot, route.procedure]);
+  useEffect(
+    () => () => {
+      if (app.take.state.get().phase === 'capture') app.take.cancel();
+    },
+    [],
+  );
+  const leave = () => {
+    app.take.cancel();
+    app.navigation.back({ screen: 'start' });
+  };
+  switch (state.phase) {
+    case 'capture':
+      return state.session.phase === 'refused' ? (
+        <RefusedStep key="refused" app={app} problem={state.session.problem} onLeave={leave} />
+      ) : (
+        <CaptureStep key="capture" app={app} session={state.session} onLeave={leave} />
+      );
+    case 'cut':
+      return <CutStep key="cut" app={app} cut={state} onLeave={leave} />;
+    case 'failed':
+      return <FailedStep key="failed" app={app} problem={state.problem} onLeave={leave} />;
+    case 'unsaved':
+      return <UnsavedStep key="unsaved" detail={state.detail} onRetry={state.retry} />;
+    case 'analysing':
+    case 'kept':
+      return (
+        <Page key="analysing" title={text.analysing}>
+          <p class="quiet">{text.analysingNote}</p>
+          <ProgressLine label={text.analysing} />
+          <BottomBar>
+            <Button onClick={leave}>{screenText.common.cancel}</Button>
+          </BottomBar>
+        </Page>
+      );
+    case 'prepare':
+      return <PrepareStep key="prepare" app={app} onLeave={leave} />;
+  }
+}
