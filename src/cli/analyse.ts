@@ -4,18 +4,15 @@ import type { Analysis } from '../core/model/analysis.ts';
 import type { Separation } from '../core/model/judgement.ts';
 import type { Outcome } from '../core/model/outcome.ts';
 import type { Problem } from '../core/model/problem.ts';
-import type { Source } from '../core/model/source.ts';
 import { readCsv } from '../core/packet/read-csv.ts';
-import { judge } from '../core/survey/judge.ts';
-import { problemSentence } from '../text/problems.ts';
 import { ANALYSE_USAGE, parseAnalyseArguments, type AnalyseArguments } from './analyse-arguments.ts';
-import { readSourcesFile } from './read-sources-file.ts';
 import { readTextFile } from './read-text-file.ts';
 
 const ALL_ANALYSED = 0;
 const WRONG_USE = 2;
 const SOME_NOT_ANALYSED = 3;
 
+type Judging = (analysis: Analysis) => readonly Separation[];
 type JudgedAnalysis = Analysis & { readonly separations: readonly Separation[] };
 
 async function main(args: readonly string[]): Promise<number> {
@@ -28,24 +25,34 @@ async function main(args: readonly string[]): Promise<number> {
     process.stderr.write(`${parsed}\n\n${ANALYSE_USAGE}\n`);
     return WRONG_USE;
   }
-  const sources = await readSourcesFile(parsed.sourcesPath);
-  if (!sources.ok) {
-    process.stderr.write(`${parsed.sourcesPath}: ${problemSentence(sources.problem)}\n`);
+  const judging = await judgingBy(parsed.sourcesPath);
+  if (typeof judging === 'string') {
+    process.stderr.write(`${judging}\n`);
     return WRONG_USE;
   }
   let status = ALL_ANALYSED;
   for (const file of parsed.files) {
-    const outcome = await analyseFile(file, parsed, sources.value);
+    const outcome = await analyseFile(file, parsed, judging);
     if (!outcome.ok) status = SOME_NOT_ANALYSED;
     await printLine(file, outcome);
   }
   return status;
 }
 
+/** The survey is loaded only when there are sources: it would double the time to the first line. */
+async function judgingBy(sourcesPath: string | undefined): Promise<Judging | string> {
+  if (sourcesPath === undefined) return () => [];
+  const { readSourcesFile } = await import('./read-sources-file.ts');
+  const sources = await readSourcesFile(sourcesPath);
+  if (!sources.ok) return `${sourcesPath}: ${(await problemRecord(sources.problem))['message']}`;
+  const { judge } = await import('../core/survey/judge.ts');
+  return (analysis) => judge(analysis, sources.value).separations;
+}
+
 async function analyseFile(
   file: string,
   { unit, settings }: AnalyseArguments,
-  sources: readonly Source[],
+  judging: Judging,
 ): Promise<Outcome<JudgedAnalysis>> {
   const text = await readTextFile(file);
   if (!text.ok) return text;
@@ -54,19 +61,20 @@ async function analyseFile(
   const result = analyse(recording.value, settings);
   if (!result.ok) return result;
   const { analysis } = result.value;
-  return { ok: true, value: { ...analysis, separations: judge(analysis, sources).separations } };
+  return { ok: true, value: { ...analysis, separations: judging(analysis) } };
 }
 
 async function printLine(file: string, outcome: Outcome<JudgedAnalysis>): Promise<void> {
   const line = outcome.ok
     ? { file, analysis: outcome.value }
-    : { file, problem: problemRecord(outcome.problem) };
+    : { file, problem: await problemRecord(outcome.problem) };
   if (!process.stdout.write(`${JSON.stringify(line)}\n`)) {
     await new Promise((resolve) => process.stdout.once('drain', resolve));
   }
 }
 
-function problemRecord(problem: Problem): Record<string, string | number> {
+async function problemRecord(problem: Problem): Promise<Record<string, string | number>> {
+  const { problemSentence } = await import('../text/problems.ts');
   return { ...problem.facts, code: problem.code, message: problemSentence(problem) };
 }
 
