@@ -1,0 +1,69 @@
+import { ANALYSIS_VERSION } from './model/analysis.ts';
+import type { Analysis, AnalysisSettings, Procedure } from './model/analysis.ts';
+import { failure, success } from './model/outcome.ts';
+import type { Outcome } from './model/outcome.ts';
+import type { AnalysisResult } from './model/pictures.ts';
+import type { Recording } from './model/recording.ts';
+import type { ProcedureAnswer } from './modes/procedure-answer.ts';
+import { tapProcedure } from './modes/tap/tap-procedure.ts';
+import { roundedForKeeping } from './modes/rounded-for-keeping.ts';
+import { conditionRecording } from './signal/condition-recording.ts';
+import type { ConditionedSignal } from './signal/condition-recording.ts';
+import { amplitudeSpectrum } from './signal/spectrum.ts';
+import { combineTrust } from './survey/trust.ts';
+
+type ProcedureFunction = (signal: ConditionedSignal, settings: AnalysisSettings) => Outcome<ProcedureAnswer>;
+
+/**
+ * The chain: recording, conditioned signal, modes and tones, analysis. Pure: the same recording and settings give the
+ * same numbers anywhere.
+ * @returns a problem of the closed list when the recording cannot be answered
+ */
+export function analyse(recording: Recording, settings: AnalysisSettings): Outcome<AnalysisResult> {
+  const conditioned = conditionRecording(recording, settings.timing);
+  if (!conditioned.ok) return conditioned;
+  const signal = conditioned.value;
+  const procedure: Procedure = settings.procedure === 'auto' ? 'tap' : settings.procedure;
+  const answer = PROCEDURES[procedure](signal, settings);
+  if (!answer.ok) return answer;
+  return success(resultOf(signal, settings, procedure, answer.value));
+}
+
+const PROCEDURES: Readonly<Record<Procedure, ProcedureFunction>> = {
+  tap: tapProcedure,
+  running: () => failure('no-tone'),
+  ambient: () => failure('no-mode'),
+  coastdown: () => failure('no-pass'),
+};
+
+function resultOf(
+  signal: ConditionedSignal,
+  settings: AnalysisSettings,
+  procedure: Procedure,
+  answer: ProcedureAnswer,
+): AnalysisResult {
+  const { modes, tones, broadPeaks, tapTimesS, doubts, ringDowns, pass, coastdown } = answer;
+  const analysis: Analysis = {
+    version: ANALYSIS_VERSION,
+    procedure,
+    procedureFrom: settings.procedure === 'auto' ? 'data' : 'person',
+    settings,
+    recording: signal.facts,
+    modes,
+    tones,
+    broadPeaks,
+    ...(coastdown === undefined ? {} : { coastdown }),
+    tapTimesS,
+    doubts,
+    trust: combineTrust(doubts, modes),
+  };
+  return {
+    analysis: roundedForKeeping(analysis),
+    pictures: {
+      trace: { timeS: signal.timeS, accelerationMps2: signal.accelerationMps2 },
+      spectrum: amplitudeSpectrum(signal.grid),
+      ringDowns,
+      ...(pass === undefined ? {} : { pass }),
+    },
+  };
+}

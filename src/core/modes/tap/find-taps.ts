@@ -1,0 +1,141 @@
+import { linearColumnCount } from './decay-model.ts';
+import type { Component, DecaySignal, Segment } from './decay-model.ts';
+import { scanSplits } from './split-scan.ts';
+
+/** One free decay: fitted from `start` to `end`; its tap began at sample `onset` (absent: it runs from before). */
+export interface FreeDecay extends Segment {
+  readonly onset: number | undefined;
+}
+
+/** Fall of the summed squares that a contact sample must bring, beyond one per axis, to be left out. Our own choice. */
+const CONTACT_SAMPLE_PRICE = 8;
+
+export interface TapSearch {
+  /** Longest contact left out, s. */
+  readonly contactS: number;
+  /** Least fall of the weighted squares that makes a tap. */
+  readonly threshold: number;
+  /** Least share of the strongest tap's fall. */
+  readonly relativeThreshold: number;
+}
+
+interface Split {
+  readonly gain: number;
+  readonly onset: number;
+  readonly start: number;
+}
+
+/**
+ * Taps as jumps of the modes' own state: generalised likelihood ratio of one free decay against two with a contact
+ * between them (Willsky & Jones 1976), at every sample, split after split, then every border once more.
+ * @param components modes and tones known so far: the better they are, the sharper the test
+ */
+export function findTaps(
+  signal: DecaySignal,
+  components: readonly Component[],
+  axisWeights: readonly number[],
+  search: TapSearch,
+): FreeDecay[] {
+  const whole: FreeDecay = { start: 0, end: signal.timeS.length, onset: undefined };
+  const splits: { decay: FreeDecay; split: Split | undefined }[] = [
+    { decay: whole, split: bestSplit(signal, whole, components, axisWeights, search) },
+  ];
+  let strongest = 0;
+  for (let count = 0; count < TAP_LIMIT; count++) {
+    const at = indexOfLargest(splits.map((s) => s.split?.gain ?? 0));
+    const { decay, split } = splits[at]!;
+    if (split === undefined || split.gain < Math.max(search.threshold, search.relativeThreshold * strongest))
+      break;
+    strongest = Math.max(strongest, split.gain);
+    const parts: FreeDecay[] = [
+      { ...decay, end: split.onset },
+      { start: split.start, end: decay.end, onset: split.onset },
+    ];
+    splits.splice(
+      at,
+      1,
+      ...parts.map((part) => ({
+        decay: part,
+        split: bestSplit(signal, part, components, axisWeights, search),
+      })),
+    );
+  }
+  return refineBorders(
+    signal,
+    splits.map((s) => s.decay),
+    components,
+    axisWeights,
+    search,
+  );
+}
+
+/** What precedes the first tap is silence or handling: no decay to learn from, unless it is all there is. */
+export function used(decays: readonly FreeDecay[]): readonly FreeDecay[] {
+  const tapped = decays.filter((d) => d.onset !== undefined);
+  return tapped.length > 0 ? tapped : decays;
+}
+
+/** More than this many taps is not a tap test. */
+const TAP_LIMIT = 60;
+
+/** Each border searched again between its neighbours; borders that no longer pay are taken away. */
+export function refineBorders(
+  signal: DecaySignal,
+  decays: readonly FreeDecay[],
+  components: readonly Component[],
+  axisWeights: readonly number[],
+  search: TapSearch,
+): FreeDecay[] {
+  const refined = [...decays];
+  for (let round = 0; round < 2; round++) {
+    for (let k = 1; k < refined.length; k++) {
+      const left = refined[k - 1]!;
+      const right = refined[k]!;
+      const union: FreeDecay = { start: left.start, end: right.end, onset: left.onset };
+      const split = bestSplit(signal, union, components, axisWeights, search);
+      if (split === undefined || split.gain < search.threshold) {
+        refined.splice(k - 1, 2, union);
+        k--;
+        continue;
+      }
+      refined[k - 1] = { ...left, end: split.onset };
+      refined[k] = { start: split.start, end: right.end, onset: split.onset };
+    }
+  }
+  return refined;
+}
+
+function bestSplit(
+  signal: DecaySignal,
+  decay: FreeDecay,
+  components: readonly Component[],
+  axisWeights: readonly number[],
+  search: TapSearch,
+): Split | undefined {
+  const n = decay.end - decay.start;
+  const least = linearColumnCount(components.length) + 2;
+  if (n < 2 * least) return undefined;
+  const { leading, trailing } = scanSplits(signal, decay, components, axisWeights);
+  const price = signal.y.length + CONTACT_SAMPLE_PRICE;
+  const total = leading[n]!;
+  let best: Split | undefined;
+  // A record may begin within a contact: then the left part is empty (k = 0) and costs nothing.
+  for (let k = 0; k <= n - least; k++) {
+    const before = leading[k]!;
+    const onsetTime = signal.timeS[decay.start + k]!;
+    for (let j = k; j <= n - least; j++) {
+      if (signal.timeS[decay.start + j]! - onsetTime > search.contactS) break;
+      const gain = total - before - trailing[j]! - price * (j - k);
+      if (best === undefined || gain > best.gain) {
+        best = { gain, onset: decay.start + k, start: decay.start + j };
+      }
+    }
+  }
+  return best !== undefined && best.onset - decay.start >= 1 ? best : undefined;
+}
+
+function indexOfLargest(values: readonly number[]): number {
+  let best = 0;
+  for (let i = 1; i < values.length; i++) if (values[i]! > values[best]!) best = i;
+  return best;
+}

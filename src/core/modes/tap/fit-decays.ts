@@ -1,0 +1,147 @@
+import {
+  choleskyInPlace,
+  forwardSubstitute,
+  backSubstitute,
+  symmetricInverse,
+} from '../../signal/linear-algebra.ts';
+import { evaluateDecays, linearColumnCount, parameterCount } from './decay-model.ts';
+import type { Component, DecaySignal, Evaluation, Segment } from './decay-model.ts';
+
+/** Stop when a step promises less than this part of the cost's unit (cost is in noise variances). */
+const STOP_DECREASE = 1e-4;
+const ITERATION_LIMIT = 40;
+/** Smallest damping ratio searched: below it a free decay cannot be told from a line in a minute. */
+export const SMALLEST_DECAY_RATIO = 1e-5;
+
+export interface DecayFit {
+  readonly components: readonly Component[];
+  readonly evaluation: Evaluation;
+  /** Residual variance per axis, (m/s²)². */
+  readonly variance: readonly number[];
+  /** Covariance of the nonlinear parameters (angular frequency and decay per mode, angular frequency per tone). */
+  readonly covariance: Float64Array | undefined;
+  readonly sampleCount: number;
+}
+
+/**
+ * Joint least squares of free decays: Levenberg-Marquardt (Marquardt 1963) on frequencies and decays with the
+ * amplitudes projected out (Golub & Pereyra 1973). Axis variances are estimated along.
+ * @param start first guess; within about half a bandwidth of the answer or one over the segment length
+ * @param variance starting noise variance per axis, (m/s²)²
+ */
+export function fitDecays(
+  signal: DecaySignal,
+  segments: readonly Segment[],
+  start: readonly Component[],
+  variance: readonly number[],
+  rounds = 2,
+): DecayFit {
+  let components = start;
+  let noise = variance;
+  let evaluation = evaluateDecays(
+    signal,
+    segments,
+    components,
+    noise.map((v) => 1 / v),
+  );
+  for (let round = 0; round < rounds; round++) {
+    ({ components, evaluation } = descend(signal, segments, components, noise, evaluation));
+    noise = residualVariance(signal, segments, components.length, evaluation, variance);
+    evaluation = evaluateDecays(
+      signal,
+      segments,
+      components,
+      noise.map((v) => 1 / v),
+    );
+  }
+  const sampleCount = segments.reduce((n, s) => n + s.end - s.start, 0);
+  return {
+    components,
+    evaluation,
+    variance: noise,
+    covariance: symmetricInverse(evaluation.curvature, parameterCount(components)),
+    sampleCount,
+  };
+}
+
+function residualVariance(
+  signal: DecaySignal,
+  segments: readonly Segment[],
+  componentCount: number,
+  evaluation: Evaluation,
+  floor: readonly number[],
+): number[] {
+  const columns = linearColumnCount(componentCount);
+  const count = segments.reduce((n, s) => n + s.end - s.start, 0);
+  const freedom = Math.max(count - segments.length * columns, 1);
+  return signal.y.map((_, a) => Math.max(evaluation.rss[a]! / freedom, 1e-6 * floor[a]!, 1e-18));
+}
+
+interface Descent {
+  readonly components: readonly Component[];
+  readonly evaluation: Evaluation;
+}
+
+function descend(
+  signal: DecaySignal,
+  segments: readonly Segment[],
+  start: readonly Component[],
+  variance: readonly number[],
+  first: Evaluation,
+): Descent {
+  const weights = variance.map((v) => 1 / v);
+  let current: Descent = { components: start, evaluation: first };
+  let lambda = 1e-3;
+  for (let i = 0; i < ITERATION_LIMIT; i++) {
+    const step = marquardtStep(current.evaluation, lambda);
+    if (step === undefined) break;
+    const components = moved(current.components, step.change);
+    const evaluation = evaluateDecays(signal, segments, components, weights);
+    if (evaluation.cost <= current.evaluation.cost) {
+      const gain = current.evaluation.cost - evaluation.cost;
+      current = { components, evaluation };
+      lambda = Math.max(lambda / 8, 1e-9);
+      if (step.promised < STOP_DECREASE && gain < STOP_DECREASE) break;
+    } else {
+      if (step.promised < STOP_DECREASE) break;
+      lambda *= 8;
+      if (lambda > 1e9) break;
+    }
+  }
+  return current;
+}
+
+function marquardtStep(
+  evaluation: Evaluation,
+  lambda: number,
+): { change: Float64Array; promised: number } | undefined {
+  const size = evaluation.gradient.length;
+  const matrix = evaluation.curvature.slice();
+  for (let i = 0; i < size; i++) matrix[i * size + i]! *= 1 + lambda;
+  if (choleskyInPlace(matrix, size) === 0) return undefined;
+  const change = evaluation.gradient.slice();
+  forwardSubstitute(matrix, size, change);
+  let promised = 0;
+  for (let i = 0; i < size; i++) promised += change[i]! * change[i]!;
+  backSubstitute(matrix, size, change);
+  return { change, promised };
+}
+
+/** Applies a parameter change, kept within a factor of four in decay and a few bandwidths in frequency. */
+function moved(components: readonly Component[], change: Float64Array): Component[] {
+  let at = 0;
+  return components.map((component) => {
+    const angular = component.angularRadPerS;
+    const reach = Math.max(3 * component.decayPerS, 0.05 * angular);
+    const angularRadPerS = Math.max(angular + clamp(change[at++]!, reach), 0.2 * angular);
+    if (component.kind === 'tone') return { ...component, angularRadPerS };
+    const decay = component.decayPerS + change[at++]!;
+    const decayPerS = Math.max(
+      Math.min(Math.max(decay, component.decayPerS / 4), component.decayPerS * 4),
+      SMALLEST_DECAY_RATIO * angular,
+    );
+    return { ...component, angularRadPerS, decayPerS };
+  });
+}
+
+const clamp = (x: number, reach: number): number => Math.min(Math.max(x, -reach), reach);

@@ -1,0 +1,67 @@
+import type { Component, DecaySignal, Segment } from './decay-model.ts';
+import type { DecayFit } from './fit-decays.ts';
+
+/** What the fit leaves, m/s², per axis; zero outside the segments. */
+export function residuals(signal: DecaySignal, segments: readonly Segment[], fit: DecayFit): Float64Array[] {
+  const left = signal.y.map((y) => new Float64Array(y.length));
+  const m = fit.components.length;
+  const column = new Float64Array(2 * m + 2);
+  segments.forEach((segment, index) => {
+    const { coefficients } = fit.evaluation.segments[index]!;
+    const origin = signal.timeS[segment.start]!;
+    const span = Math.max(signal.timeS[segment.end - 1]! - origin, 1e-9);
+    for (let i = segment.start; i < segment.end; i++) {
+      fillColumns(fit.components, signal.timeS[i]! - origin, span, column);
+      for (let a = 0; a < left.length; a++) {
+        const c = coefficients[a]!;
+        let value = 0;
+        for (let r = 0; r < column.length; r++) value += c[r]! * column[r]!;
+        left[a]![i] = signal.y[a]![i]! - value;
+      }
+    }
+  });
+  return left;
+}
+
+function fillColumns(
+  components: readonly Component[],
+  tau: number,
+  span: number,
+  column: Float64Array,
+): void {
+  const m = components.length;
+  for (let k = 0; k < m; k++) {
+    const { angularRadPerS, decayPerS } = components[k]!;
+    const envelope = Math.exp(-decayPerS * tau);
+    column[2 * k] = envelope * Math.cos(angularRadPerS * tau);
+    column[2 * k + 1] = envelope * Math.sin(angularRadPerS * tau);
+  }
+  column[2 * m] = 1;
+  column[2 * m + 1] = tau / span - 0.5;
+}
+
+/** One decay of component `k` along a direction: its model plus what the fit left; other components taken off. */
+export function decayAlone(
+  signal: DecaySignal,
+  segments: readonly Segment[],
+  fit: DecayFit,
+  left: readonly Float64Array[],
+  index: number,
+  k: number,
+  direction: readonly number[],
+): Float64Array {
+  const { start, end } = segments[index]!;
+  const { coefficients } = fit.evaluation.segments[index]!;
+  const { angularRadPerS, decayPerS } = fit.components[k]!;
+  const origin = signal.timeS[start]!;
+  const along = (values: readonly number[]): number =>
+    values.reduce((sum, v, a) => sum + v * direction[a]!, 0);
+  const onCosine = along(coefficients.map((c) => c[2 * k]!));
+  const onSine = along(coefficients.map((c) => c[2 * k + 1]!));
+  return Float64Array.from({ length: end - start }, (_, i) => {
+    const tau = signal.timeS[start + i]! - origin;
+    const phase = angularRadPerS * tau;
+    const model = Math.exp(-decayPerS * tau) * (onCosine * Math.cos(phase) + onSine * Math.sin(phase));
+    return model + along(left.map((l) => l[start + i]!));
+  });
+}

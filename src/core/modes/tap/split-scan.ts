@@ -1,0 +1,99 @@
+import { choleskyInPlace, forwardSubstitute } from '../../signal/linear-algebra.ts';
+import { linearColumnCount } from './decay-model.ts';
+import type { Component, DecaySignal, Segment } from './decay-model.ts';
+
+/** Weighted residual sums of squares of the free-decay model on every leading and every trailing part of a segment. */
+export interface SplitScan {
+  /** leading[k]: samples start .. start+k-1; length n+1. In noise variances, summed over axes. */
+  readonly leading: Float64Array;
+  /** trailing[k]: samples start+k .. end-1; length n+1. */
+  readonly trailing: Float64Array;
+}
+
+/**
+ * The state of the modes just before and just after any instant, tried at every sample: a free decay remains in the
+ * space of the model's columns whatever its start, so running products forwards and backwards give all fits at once.
+ */
+export function scanSplits(
+  signal: DecaySignal,
+  segment: Segment,
+  components: readonly Component[],
+  axisWeights: readonly number[],
+): SplitScan {
+  const n = segment.end - segment.start;
+  const p = linearColumnCount(components.length);
+  const columns = segmentColumns(signal, segment, components, p);
+  return {
+    leading: runningResidual(signal, segment, columns, p, axisWeights, 1, n),
+    trailing: runningResidual(signal, segment, columns, p, axisWeights, -1, n),
+  };
+}
+
+function segmentColumns(
+  signal: DecaySignal,
+  segment: Segment,
+  components: readonly Component[],
+  p: number,
+): Float64Array {
+  const n = segment.end - segment.start;
+  const columns = new Float64Array(n * p);
+  const origin = signal.timeS[segment.start]!;
+  const span = Math.max(signal.timeS[segment.end - 1]! - origin, 1e-9);
+  const m = components.length;
+  for (let i = 0; i < n; i++) {
+    const tau = signal.timeS[segment.start + i]! - origin;
+    const row = i * p;
+    for (let k = 0; k < m; k++) {
+      const component = components[k]!;
+      const envelope = component.decayPerS === 0 ? 1 : Math.exp(-component.decayPerS * tau);
+      columns[row + 2 * k] = envelope * Math.cos(component.angularRadPerS * tau);
+      columns[row + 2 * k + 1] = envelope * Math.sin(component.angularRadPerS * tau);
+    }
+    columns[row + 2 * m] = 1;
+    columns[row + 2 * m + 1] = tau / span - 0.5;
+  }
+  return columns;
+}
+
+function runningResidual(
+  signal: DecaySignal,
+  segment: Segment,
+  columns: Float64Array,
+  p: number,
+  axisWeights: readonly number[],
+  step: 1 | -1,
+  n: number,
+): Float64Array {
+  const axisCount = signal.y.length;
+  const residual = new Float64Array(n + 1);
+  const gram = new Float64Array(p * p);
+  const cross = new Float64Array(axisCount * p);
+  const square = new Float64Array(axisCount);
+  const lower = new Float64Array(p * p);
+  const v = new Float64Array(axisCount * p);
+  for (let count = 1; count <= n; count++) {
+    const k = step === 1 ? count - 1 : n - count;
+    const row = k * p;
+    for (let r = 0; r < p; r++) {
+      const x = columns[row + r]!;
+      for (let c = 0; c <= r; c++) gram[r * p + c]! += x * columns[row + c]!;
+    }
+    for (let a = 0; a < axisCount; a++) {
+      const y = signal.y[a]![segment.start + k]!;
+      square[a]! += y * y;
+      for (let r = 0; r < p; r++) cross[a * p + r]! += y * columns[row + r]!;
+    }
+    lower.set(gram);
+    choleskyInPlace(lower, p);
+    v.set(cross);
+    let sum = 0;
+    for (let a = 0; a < axisCount; a++) {
+      forwardSubstitute(lower, p, v, a * p);
+      let rss = square[a]!;
+      for (let r = 0; r < p; r++) rss -= v[a * p + r]! * v[a * p + r]!;
+      sum += axisWeights[a]! * Math.max(rss, 0);
+    }
+    residual[step === 1 ? count : k] = sum;
+  }
+  return residual;
+}

@@ -1,0 +1,245 @@
+import type { AnalysisSettings, DampingCheck, Mode, Tone } from '../../model/analysis.ts';
+import type { Doubt, DoubtCode } from '../../model/doubt.ts';
+import { failure, success, type Outcome } from '../../model/outcome.ts';
+import type { RingDown } from '../../model/pictures.ts';
+import type { ConditionedSignal } from '../../signal/condition-recording.ts';
+import { median } from '../../signal/sample-counter.ts';
+import { foldOfMode, foldOfTone } from '../fold.ts';
+import type { ProcedureAnswer } from '../procedure-answer.ts';
+import { parameterIndex } from './decay-model.ts';
+import type { DecaySignal } from './decay-model.ts';
+import { used } from './find-taps.ts';
+import type { FreeDecay } from './find-taps.ts';
+import type { DecayFit } from './fit-decays.ts';
+import { halfPowerOfDecay } from './half-power.ts';
+import { logDecrementOfDecay } from './log-decrement.ts';
+import { directionOf, amplitudeAtStart, modeEstimate, naturalFrequencyHz } from './mode-estimate.ts';
+import type { ModeEstimate } from './mode-estimate.ts';
+import { decayAlone, residuals } from './modelled-signal.ts';
+import { searchRingDowns } from './ring-down-search.ts';
+import type { RingDownSearch } from './ring-down-search.ts';
+
+/** Fewer samples than this hold no ring-down worth fitting. */
+const FEWEST_SAMPLES = 64;
+/** A mode must stand out of the noise by this many standard deviations of a sample at its strongest tap... */
+const LEAST_AMPLITUDE_SDS = 3;
+/** ...and its damping must be known to this relative standard deviation, else it is no answer. */
+const LARGEST_DAMPING_SPREAD = 0.5;
+/** Share of the motion under the ring-downs that the fit must explain; below, it is not free decay. */
+const LEAST_EXPLAINED_SHARE = 0.8;
+/** Half-power or decrement further than this from the fit is said. */
+const DISAGREEMENT_SHARE = 0.25;
+/** Fewer taps than this leave tap-to-tap scatter unknown (common practice: three to eight). */
+const FEWEST_TAPS = 3;
+
+/** Tap test: free decays found, fitted jointly, cross-checked. */
+export function tapProcedure(
+  conditioned: ConditionedSignal,
+  _settings: AnalysisSettings,
+): Outcome<ProcedureAnswer> {
+  const signal = tapSignal(conditioned);
+  const { facts } = conditioned;
+  if (signal.timeS.length < FEWEST_SAMPLES)
+    return failure('too-short', { durationS: facts.durationS, sampleCount: facts.sampleCount });
+  if (facts.clippedCount > signal.timeS.length / 4)
+    return failure('clipped-throughout', { clippedCount: facts.clippedCount });
+  const search = searchRingDowns({ signal, rateHz: facts.rateHz, stepMps2: facts.stepMps2 });
+  if (search === undefined) return failure('no-motion');
+  return answerOf(conditioned, signal, search);
+}
+
+/** Sensor values about their median: the slow part stays, for the fit's own constant and slope to take up. */
+function tapSignal(conditioned: ConditionedSignal): DecaySignal {
+  const y = conditioned.accelerationMps2.map((fast, a) => {
+    const whole = fast.map((v, i) => v + conditioned.slowMps2[a]![i]!);
+    const middle = median(whole);
+    return whole.map((v) => v - middle);
+  });
+  return { timeS: conditioned.timeS, y };
+}
+
+function answerOf(
+  conditioned: ConditionedSignal,
+  signal: DecaySignal,
+  search: RingDownSearch,
+): Outcome<ProcedureAnswer> {
+  const decays = used(search.decays);
+  const { fit } = search;
+  const left = residuals(signal, decays, fit);
+  const modeIndexes = fit.components.flatMap((c, k) => (c.kind === 'mode' ? [k] : []));
+  const estimates = modeIndexes
+    .map((k) => ({ k, estimate: modeEstimate(signal, decays, fit, k) }))
+    .filter(({ estimate }) => isAnswer(estimate, fit))
+    .sort((a, b) => Math.max(...b.estimate.amplitudesMps2) - Math.max(...a.estimate.amplitudesMps2));
+  if (estimates.length === 0) return failure(search.tapCount === 0 ? 'no-taps' : 'no-decay');
+  const strongest = fit.components[estimates[0]!.k]!;
+  const explained = explainedShare(signal, decays, left, strongest.decayPerS, search.quietVariance);
+  if (explained < LEAST_EXPLAINED_SHARE) return failure('no-decay', { explainedShare: explained });
+  const modes = estimates.map(({ k, estimate }) =>
+    modeOf({ conditioned, signal, decays, fit, left, k, estimate, tapCount: search.tapCount }),
+  );
+  return success({
+    modes,
+    tones: fit.components.flatMap((c, k) => (c.kind === 'tone' ? [toneOf(conditioned, fit, k)] : [])),
+    broadPeaks: [],
+    tapTimesS: decays.flatMap((d) => (d.onset === undefined ? [] : [signal.timeS[d.onset]!])),
+    doubts: tapDoubts(search),
+    ringDowns: ringDownPictures(signal, decays, fit, left, estimates[0]!.k, modes[0]!.direction),
+  });
+}
+
+/** The part of a decay that is looked at, in time constants of the strongest mode: later there is mostly noise. */
+const JUDGED_DECAYS = 1.5;
+
+/** Share of the squared motion early in the decays, noise taken off, that the model takes up. */
+function explainedShare(
+  signal: DecaySignal,
+  decays: readonly FreeDecay[],
+  left: readonly Float64Array[],
+  decayPerS: number,
+  noise: readonly number[],
+): number {
+  let whole = 0;
+  let unexplained = 0;
+  for (const { start, end } of decays) {
+    const limitS = signal.timeS[start]! + JUDGED_DECAYS / decayPerS;
+    for (let i = start; i < end && signal.timeS[i]! < limitS; i++) {
+      for (let a = 0; a < left.length; a++) {
+        whole += signal.y[a]![i]! ** 2;
+        unexplained += left[a]![i]! ** 2 - noise[a]!;
+      }
+    }
+  }
+  return whole > 0 ? 1 - Math.max(unexplained, 0) / whole : 0;
+}
+
+function isAnswer(estimate: ModeEstimate, fit: DecayFit): boolean {
+  const noise = Math.sqrt(fit.variance.reduce((a, b) => a + b, 0) / fit.variance.length);
+  return (
+    Math.max(...estimate.amplitudesMps2) > LEAST_AMPLITUDE_SDS * noise &&
+    estimate.dampingRatioSd < LARGEST_DAMPING_SPREAD * estimate.dampingRatio
+  );
+}
+
+interface ModeContext {
+  readonly conditioned: ConditionedSignal;
+  readonly signal: DecaySignal;
+  readonly decays: readonly FreeDecay[];
+  readonly fit: DecayFit;
+  readonly left: readonly Float64Array[];
+  readonly k: number;
+  readonly estimate: ModeEstimate;
+  readonly tapCount: number;
+}
+
+function modeOf(context: ModeContext): Mode {
+  const { conditioned, decays, fit, k, estimate } = context;
+  const { direction } = estimate;
+  const { up } = conditioned.facts;
+  const upShare = up === undefined ? undefined : direction.reduce((s, d, a) => s + d * (up[a] ?? 0), 0) ** 2;
+  const checks = crossChecks(context);
+  const doubts: DoubtCode[] = [];
+  if (estimate.scatters) doubts.push('tap-scatter');
+  if ('refusal' in checks.halfPower) doubts.push('half-power-refused');
+  if (disagrees(checks.halfPower, estimate) || disagrees(checks.logDecrement, estimate))
+    doubts.push('methods-disagree');
+  const { frequencyHz, dampingRatio } = estimate;
+  const samples = modeAlone(context);
+  const ringStartsS = decays.map((d) => context.signal.timeS[d.start]!);
+  const fold = foldOfMode(conditioned, { frequencyHz, dampingRatio, direction, samples }, ringStartsS);
+  if (fold.verdict === 'folded') doubts.push('folded');
+  if (fold.verdict === 'undecided') doubts.push('fold-undecided');
+  return {
+    frequencyHz: estimate.frequencyHz,
+    frequencySdHz: estimate.frequencySdHz,
+    dampingRatio: estimate.dampingRatio,
+    dampingRatioSd: estimate.dampingRatioSd,
+    amplitudeMps2: Math.max(...estimate.amplitudesMps2),
+    direction,
+    ...(upShare === undefined ? {} : { verticalShare: Math.min(upShare, 1) }),
+    method: 'ring-down-fit',
+    eventCount: Math.max(decays.filter((_, s) => amplitudeAtStart(fit, s, k) > 0).length, 1),
+    ...checks,
+    fold,
+    doubts,
+  };
+}
+
+/** The mode with what the fit left, along its direction, over the whole record; zero between the decays. */
+function modeAlone({ signal, decays, fit, left, k, estimate }: ModeContext): Float64Array {
+  const samples = new Float64Array(signal.timeS.length);
+  decays.forEach((decay, s) => {
+    samples.set(decayAlone(signal, decays, fit, left, s, k, estimate.direction), decay.start);
+  });
+  return samples;
+}
+
+const disagrees = (check: DampingCheck, estimate: ModeEstimate): boolean =>
+  'dampingRatio' in check &&
+  Math.abs(check.dampingRatio / estimate.dampingRatio - 1) > DISAGREEMENT_SHARE &&
+  Math.abs(check.dampingRatio - estimate.dampingRatio) > 3 * estimate.dampingRatioSd;
+
+/** Half-power and logarithmic decrement of the decay that carries most, other modes taken off by the fit. */
+function crossChecks(context: ModeContext): { halfPower: DampingCheck; logDecrement: DampingCheck } {
+  const { signal, decays, fit, left, k, estimate, conditioned } = context;
+  let best = 0;
+  decays.forEach((_, s) => {
+    if (amplitudeAtStart(fit, s, k) > amplitudeAtStart(fit, best, k)) best = s;
+  });
+  const samples = decayAlone(signal, decays, fit, left, best, k, estimate.direction);
+  const { start, end } = decays[best]!;
+  const component = fit.components[k]!;
+  const noiseSd = Math.sqrt(fit.variance.reduce((s, v, a) => s + v * estimate.direction[a]! ** 2, 0));
+  const dampedHz = component.angularRadPerS / (2 * Math.PI);
+  return {
+    halfPower: halfPowerOfDecay(samples, conditioned.facts.rateHz, dampedHz, component.decayPerS),
+    logDecrement: logDecrementOfDecay(signal.timeS.subarray(start, end), samples, dampedHz, noiseSd),
+  };
+}
+
+function toneOf(conditioned: ConditionedSignal, fit: DecayFit, k: number): Tone {
+  const component = fit.components[k]!;
+  const amplitudes = fit.evaluation.segments.map((_, s) => amplitudeAtStart(fit, s, k));
+  const amplitudeMps2 = median(Float64Array.from(amplitudes));
+  const at = parameterIndex(fit.components, k);
+  const size = Math.round(Math.sqrt(fit.evaluation.curvature.length));
+  const variance = fit.covariance?.[at * size + at] ?? 0;
+  const noise = Math.sqrt(Math.max(...fit.variance));
+  const direction = directionOf(fit, k);
+  const frequencyHz = naturalFrequencyHz(component);
+  return {
+    frequencyHz,
+    frequencySdHz: Math.sqrt(variance) / (2 * Math.PI),
+    amplitudeMps2,
+    amplitudeSdMps2: noise * Math.sqrt(2 / fit.sampleCount),
+    direction,
+    nature: 'forced',
+    fold: foldOfTone(conditioned, { frequencyHz, direction }),
+  };
+}
+
+function tapDoubts(search: RingDownSearch): Doubt[] {
+  return search.tapCount < FEWEST_TAPS ? [{ code: 'few-taps', facts: { tapCount: search.tapCount } }] : [];
+}
+
+function ringDownPictures(
+  signal: DecaySignal,
+  decays: readonly FreeDecay[],
+  fit: DecayFit,
+  left: readonly Float64Array[],
+  k: number,
+  direction: readonly number[],
+): RingDown[] {
+  return decays.map((decay, s) => {
+    const measuredMps2 = decayAlone(signal, decays, fit, left, s, k, direction);
+    const fittedMps2 = measuredMps2.map(
+      (v, i) => v - direction.reduce((sum, d, a) => sum + d * left[a]![decay.start + i]!, 0),
+    );
+    return {
+      tapTimeS: signal.timeS[decay.onset ?? decay.start]!,
+      timeS: signal.timeS.slice(decay.start, decay.end),
+      measuredMps2,
+      fittedMps2,
+    };
+  });
+}
