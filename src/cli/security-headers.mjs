@@ -3,6 +3,9 @@
  * what it writes to `_headers` for hosts that read such a file. One list, so that they cannot differ.
  */
 
+/** The team store is chosen by the person, so a build for anybody must let any https host through (and loopback, for trying). */
+const ANY_TEAM_STORE = 'https: http://127.0.0.1:* http://localhost:*';
+
 /** @type {Readonly<Record<string, string>>} */
 const POLICY = {
   'default-src': "'none'",
@@ -11,8 +14,7 @@ const POLICY = {
   'img-src': "'self' blob: data:",
   'worker-src': "'self'",
   'manifest-src': "'self'",
-  // The team store is chosen by the person, so its address cannot stand here; everything else stays on the phone.
-  'connect-src': "'self' https: http://127.0.0.1:* http://localhost:*",
+  'connect-src': connectSources(process.env.THRUMBOOK_TEAM_STORES),
   'frame-src': "'self' blob:",
   'base-uri': "'none'",
   'form-action': "'none'",
@@ -68,4 +70,21 @@ function policyText(policy) {
   return Object.entries(policy)
     .map(([name, value]) => `${name} ${value}`)
     .join('; ');
+}
+
+/**
+ * Where the page may connect to. A build for one team names its hosts: THRUMBOOK_TEAM_STORES="https://store.example".
+ * @param {string | undefined} teamStores origins, separated by blanks; "none" for no team store at all
+ */
+export function connectSources(teamStores) {
+  if (teamStores === undefined || teamStores.trim() === '') return `'self' ${ANY_TEAM_STORE}`;
+  if (teamStores.trim() === 'none') return "'self'";
+  const origins = teamStores.trim().split(/\s+/);
+  const wrong = origins.find((origin) => !/^https:\/\/[\w.-]+(:\d+)?$/.test(origin));
+  if (wrong !== undefined) {
+    throw new RangeError(
+      `THRUMBOOK_TEAM_STORES must hold origins such as https://store.example, not "${wrong}"`,
+    );
+  }
+  return ["'self'", ...origins].join(' ');
 }
