@@ -4,6 +4,7 @@ import { failure, success } from './model/outcome.ts';
 import type { Outcome } from './model/outcome.ts';
 import type { AnalysisResult } from './model/pictures.ts';
 import type { Recording } from './model/recording.ts';
+import { ambientProcedure } from './modes/ambient.ts';
 import type { ProcedureAnswer } from './modes/procedure-answer.ts';
 import { tapProcedure } from './modes/tap/tap-procedure.ts';
 import { roundedForKeeping } from './modes/rounded-for-keeping.ts';
@@ -32,7 +33,7 @@ export function analyse(recording: Recording, settings: AnalysisSettings): Outco
 const PROCEDURES: Readonly<Record<Procedure, ProcedureFunction>> = {
   tap: tapProcedure,
   running: () => failure('no-tone'),
-  ambient: () => failure('no-mode'),
+  ambient: ambientProcedure,
   coastdown: () => failure('no-pass'),
 };
 

@@ -1,0 +1,79 @@
+/**
+ * Where a spectrum stands out of its surroundings: running median as background, then the strongest rise over windows of
+ * many widths (a scan statistic: log-likelihood ratio of one raised level in exponential ordinates).
+ */
+
+/** Ordinates averaged before the median is taken, so that the median is close to the mean. */
+const BLOCK_BINS = 8;
+/** Half width of the background window: this share of the frequency, and at least so many Hz. */
+const BACKGROUND_SHARE = 0.4;
+const BACKGROUND_LEAST_HZ = 0.8;
+/** Fewest blocks in the background window. */
+const BACKGROUND_LEAST_BLOCKS = 9;
+/** Widest rise looked for, half width over frequency: a damping ratio of 12 %. */
+const WIDEST_SHARE = 0.12;
+
+export interface Rise {
+  readonly bin: number;
+  readonly halfWidthBins: number;
+  /** Mean level over the background. */
+  readonly ratio: number;
+  readonly logLikelihood: number;
+}
+
+/** Background of bins first..last (same indexing), by a running median of block means. */
+export function background(values: Float64Array, first: number, last: number, stepHz: number): Float64Array {
+  const blockCount = Math.max(1, Math.floor((last - first + 1) / BLOCK_BINS));
+  const means = Float64Array.from({ length: blockCount }, (_, b) => {
+    let sum = 0;
+    for (let i = 0; i < BLOCK_BINS; i++) sum += values[Math.min(last, first + b * BLOCK_BINS + i)] as number;
+    return sum / BLOCK_BINS;
+  });
+  const medians = means.map((_, b) => {
+    const frequencyHz = (first + (b + 0.5) * BLOCK_BINS) * stepHz;
+    const reach = Math.max(BACKGROUND_SHARE * frequencyHz, BACKGROUND_LEAST_HZ) / (BLOCK_BINS * stepHz);
+    const half = Math.max(Math.round(reach), BACKGROUND_LEAST_BLOCKS >> 1);
+    const window = means.slice(Math.max(0, b - half), Math.min(blockCount, b + half + 1)).sort();
+    return Math.max(window[window.length >> 1] as number, Number.MIN_VALUE);
+  });
+  const out = new Float64Array(values.length);
+  for (let k = first; k <= last; k++) {
+    const at = Math.max(0, Math.min(blockCount - 1, (k - first + 0.5) / BLOCK_BINS - 0.5));
+    const i = Math.min(blockCount - 1, Math.floor(at));
+    const j = Math.min(blockCount - 1, i + 1);
+    const share = at - i;
+    out[k] = (1 - share) * (medians[i] as number) + share * (medians[j] as number);
+  }
+  return out;
+}
+
+/**
+ * Strongest rise of values over their background.
+ * @param levels ordinate over background, mean 1 where nothing stands out
+ * @param weight independent exponential ordinates per bin (axes times pieces)
+ * @param isTaken bins that may not be the centre of the rise
+ */
+export function strongestRise(
+  levels: Float64Array,
+  first: number,
+  last: number,
+  weight: number,
+  isTaken: (bin: number) => boolean,
+): Rise | undefined {
+  const sums = new Float64Array(last + 2);
+  for (let k = first; k <= last; k++) sums[k + 1] = (sums[k] as number) + (levels[k] as number);
+  let best: Rise | undefined;
+  for (let half = 0; half <= WIDEST_SHARE * last; half = Math.max(half + 1, Math.round(half * 1.4))) {
+    const stride = Math.max(1, Math.floor(half / 4));
+    for (let bin = first + half; bin <= last - half; bin += stride) {
+      if (half > 2 && half > WIDEST_SHARE * bin) continue;
+      const n = 2 * half + 1;
+      const ratio = ((sums[bin + half + 1] as number) - (sums[bin - half] as number)) / n;
+      if (!(ratio > 1)) continue;
+      const logLikelihood = weight * n * (ratio - 1 - Math.log(ratio));
+      if (best && logLikelihood <= best.logLikelihood) continue;
+      if (!isTaken(bin)) best = { bin, halfWidthBins: half, ratio, logLikelihood };
+    }
+  }
+  return best;
+}
