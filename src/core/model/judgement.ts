@@ -116,6 +116,8 @@ export interface WayOut {
   readonly nearestSpeedRpm?: number;
   readonly amplificationAfter?: Interval;
   readonly verdictAfter: Verdict;
+  /** Isolation: forcings that the mounts themselves would sit near (indexes into forcings). */
+  readonly mountsNearIndex?: readonly number[];
   /** Other pairs that this change would make worse: indexes into separations. */
   readonly sideEffects: readonly number[];
 }

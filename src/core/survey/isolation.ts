@@ -46,7 +46,7 @@ export function isolationWay(separationIndex: number, context: WaysOutContext): 
   const factor = transmissibilityRange(forcing.frequencyHz, mountHz);
   const [low, high] = separation.amplification.interval;
   const deflection = staticDeflectionM(mountHz);
-  const mountsNear = context.forcings.flatMap((other, index) => {
+  const mountsNearIndex = context.forcings.flatMap((other, index) => {
     const near =
       other.frequencyHz[1] > apartBelowRatio * mountHz && other.frequencyHz[0] < apartAboveRatio * mountHz;
     return near ? [index] : [];
@@ -60,7 +60,7 @@ export function isolationWay(separationIndex: number, context: WaysOutContext): 
     practical: deflection <= PRACTICAL_DEFLECTION_M,
     amplificationAfter: [low * factor[0], high * factor[1]],
     verdictAfter: separation.verdict,
-    mountsNear,
+    mountsNearIndex,
     sideEffects: [],
   };
 }

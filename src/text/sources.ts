@@ -1,0 +1,102 @@
+import type { FootfallActivity, Forcing, KnownBy, SourceKind } from '../core/model/source.ts';
+
+const ORDINALS = ['zeroth', 'first', 'second', 'third', 'fourth', 'fifth', 'sixth', 'seventh', 'eighth'];
+export const ordinalWord = (order: number): string => ORDINALS[order] ?? `${order}th`;
+
+const ACTIVITIES: Readonly<Record<FootfallActivity, string>> = {
+  walking: 'walking',
+  running: 'running',
+  stairs: 'walking on stairs',
+  jumping: 'jumping',
+  dancing: 'dancing',
+  sway: 'swaying people',
+};
+export const activityWord = (activity: FootfallActivity): string => ACTIVITIES[activity];
+
+const KINDS: Readonly<Record<SourceKind, string>> = {
+  machine: 'rotating or reciprocating machine',
+  belt: 'belt drive',
+  mains: 'electric motor on the mains',
+  footfall: 'people',
+  wind: 'wind',
+  traffic: 'traffic',
+  band: 'frequency or band',
+};
+export const sourceKindName = (kind: SourceKind): string => KINDS[kind];
+
+const KNOWN: Readonly<Record<KnownBy, string>> = {
+  nameplate: 'read from the nameplate',
+  'drive-display': 'read from the drive display',
+  tachometer: 'measured with a tachometer',
+  strobe: 'measured with a strobe lamp',
+  counted: 'counted',
+  estimate: 'an estimate',
+  unknown: 'not known how',
+};
+export const knownByName = (knownBy: KnownBy): string => KNOWN[knownBy];
+
+const timesSpeed = (order: number): string => `${Number(order.toFixed(2))} times`;
+
+function footfallName(forcing: Forcing): string {
+  const activity = activityWord(forcing.activity ?? 'walking');
+  if (forcing.role === 'sway') return 'the sway of people from side to side';
+  if (forcing.order < 1) return `the sideways push of ${activity}, at half the step rate`;
+  return forcing.order === 1
+    ? `the step rate of ${activity}`
+    : `the ${ordinalWord(forcing.order)} harmonic of ${activity}`;
+}
+
+/** The forcing in words, to stand inside a sentence: "the third harmonic of walking", "the running speed of Pump A". */
+export function forcingName(forcing: Forcing): string {
+  const of = forcing.source;
+  switch (forcing.role) {
+    case 'shaft':
+      return `the running speed of ${of}`;
+    case 'shaft-order':
+      return forcing.order < 1
+        ? `the half order of ${of} (${timesSpeed(forcing.order)} its speed)`
+        : `${timesSpeed(forcing.order)} the speed of ${of}`;
+    case 'blade-pass':
+      return `the blade pass of ${of}`;
+    case 'gear-mesh':
+      return `the gear mesh of ${of}`;
+    case 'firing':
+      return `the firing order of ${of}`;
+    case 'bearing-outer':
+      return `the outer-race frequency of the bearing of ${of}`;
+    case 'bearing-inner':
+      return `the inner-race frequency of the bearing of ${of}`;
+    case 'bearing-cage':
+      return `the cage frequency of the bearing of ${of}`;
+    case 'bearing-ball':
+      return `the ball frequency of the bearing of ${of}`;
+    case 'belt-pass':
+      return `the belt frequency of ${of}`;
+    case 'belt-pass-second':
+      return `twice the belt frequency of ${of}`;
+    case 'twice-line':
+      return `twice the supply frequency at ${of}`;
+    case 'motor-shaft':
+      return `the shaft speed of ${of}`;
+    case 'pole-pass':
+      return `the pole-pass frequency of ${of}`;
+    case 'step':
+    case 'sway':
+      return footfallName(forcing);
+    case 'vortex':
+      return `vortex shedding in the wind (${of})`;
+    case 'road-traffic':
+      return `road traffic (${of})`;
+    case 'rail-traffic':
+      return `rail traffic (${of})`;
+    case 'band':
+      return forcing.order === 1 ? of : `the ${ordinalWord(forcing.order)} harmonic of ${of}`;
+  }
+}
+
+/** Where its numbers come from, with the warning where they are less than sure. */
+export const forcingOrigin = (forcing: Forcing): string =>
+  forcing.certain ? forcing.origin : `${forcing.origin} (${CHECK_THE_STANDARD})`;
+
+/** Follows every published value that is not sure. */
+export const CHECK_THE_STANDARD = 'check against the standard';
