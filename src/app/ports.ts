@@ -94,8 +94,8 @@ export interface CapturePort {
   subscribe(listener: (state: SessionState) => void): () => void;
   /** Must be called synchronously inside a tap: it asks for permission before any await. */
   open(options: SessionOptions): Promise<void>;
-  /** 10 s at rest; only between recordings. */
-  check(): Promise<Outcome<PhoneCheck>>;
+  /** 10 s at rest; only between recordings. Like `open` synchronously inside a tap. `practice`: rig query. */
+  check(practice?: string): Promise<Outcome<PhoneCheck>>;
   start(): void;
   /** Ends early and keeps what there is. */
   finish(): void;
@@ -233,6 +233,8 @@ export interface JournalPort {
   ): Promise<void>;
   /** A gap, a flag: kept with the journal. */
   flag(journalId: string, code: InterruptionCode): Promise<void>;
+  /** The person gave the recording up. */
+  dropJournal(journalId: string): Promise<void>;
 }
 
 // ---------------------------------------------------------------- exchange

@@ -12,6 +12,8 @@ export interface SensorDescription {
   readonly claimedIntervalMs?: number;
   readonly requestedRateHz?: number;
   readonly screenAngleDeg?: number;
+  /** Lying flat, screen up: most browsers read +g along z (`up`), some -g (`down`). Noted; the samples stay as they came. */
+  readonly gravityReads?: 'up' | 'down';
   /** How the recording ended: whole, or cut by something (hidden page, lost sensor...). */
   readonly interruption?: InterruptionCode;
 }

@@ -13,6 +13,7 @@ export const sensorDescription = v.looseObject({
   claimedIntervalMs: v.exactOptional(v.pipe(v.number(), v.finite())),
   requestedRateHz: v.exactOptional(v.pipe(v.number(), v.finite())),
   screenAngleDeg: v.exactOptional(v.pipe(v.number(), v.finite())),
+  gravityReads: v.exactOptional(v.picklist(['up', 'down'])),
   interruption: v.exactOptional(v.picklist(INTERRUPTION_CODES)),
 });
 
