@@ -26,7 +26,8 @@ export interface MachinePlace {
 }
 
 export type BuildingUse = 'commercial' | 'dwelling' | 'sensitive';
-export type FloorUse = 'office' | 'residence' | 'mall' | 'indoor-footbridge' | 'outdoor-footbridge' | 'workshop';
+export type FloorUse =
+  'office' | 'residence' | 'mall' | 'indoor-footbridge' | 'outdoor-footbridge' | 'workshop';
 
 export interface Place {
   readonly kind: SpotKind;
