@@ -148,6 +148,10 @@ const SENTENCES: Readonly<Record<ProblemCode, (facts: Facts) => string>> = {
     'It is damaged: what it says about itself does not fit what is in it. Nothing was taken from it.',
   cancelled: () => 'Cancelled. Nothing was changed.',
   'bad-source': badSource,
+  'mass-shift-unclear': () =>
+    'The added mass did not lower the frequency by clearly more than the uncertainty. Use a heavier mass, fixed firmly, or more taps.',
+  'too-few-readings': (facts) =>
+    `Too few readings for this: ${whole(facts, 'count') ?? 'these'} of at least ${whole(facts, 'needed') ?? 'two'}.`,
 };
 
 /** One or two sentences: what is wrong, and what to do. */

@@ -23,6 +23,8 @@ export const PROBLEM_CODES = [
   'damaged',
   'cancelled',
   'bad-source',
+  'mass-shift-unclear',
+  'too-few-readings',
 ] as const;
 export type ProblemCode = (typeof PROBLEM_CODES)[number];
 
