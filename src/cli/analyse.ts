@@ -5,6 +5,7 @@ import type { Separation } from '../core/model/judgement.ts';
 import type { Outcome } from '../core/model/outcome.ts';
 import type { Problem } from '../core/model/problem.ts';
 import { readCsv } from '../core/packet/read-csv.ts';
+import { problemSentence } from '../text/problems.ts';
 import { ANALYSE_USAGE, parseAnalyseArguments, type AnalyseArguments } from './analyse-arguments.ts';
 import { readTextFile } from './read-text-file.ts';
 
@@ -44,7 +45,7 @@ async function judgingBy(sourcesPath: string | undefined): Promise<Judging | str
   if (sourcesPath === undefined) return () => [];
   const { readSourcesFile } = await import('./read-sources-file.ts');
   const sources = await readSourcesFile(sourcesPath);
-  if (!sources.ok) return `${sourcesPath}: ${(await problemRecord(sources.problem))['message']}`;
+  if (!sources.ok) return `${sourcesPath}: ${problemSentence(sources.problem)}`;
   const { judge } = await import('../core/survey/judge.ts');
   return (analysis) => judge(analysis, sources.value).separations;
 }
@@ -67,14 +68,13 @@ async function analyseFile(
 async function printLine(file: string, outcome: Outcome<JudgedAnalysis>): Promise<void> {
   const line = outcome.ok
     ? { file, analysis: outcome.value }
-    : { file, problem: await problemRecord(outcome.problem) };
+    : { file, problem: problemRecord(outcome.problem) };
   if (!process.stdout.write(`${JSON.stringify(line)}\n`)) {
     await new Promise((resolve) => process.stdout.once('drain', resolve));
   }
 }
 
-async function problemRecord(problem: Problem): Promise<Record<string, string | number>> {
-  const { problemSentence } = await import('../text/problems.ts');
+function problemRecord(problem: Problem): Record<string, string | number> {
   return { ...problem.facts, code: problem.code, message: problemSentence(problem) };
 }
 
