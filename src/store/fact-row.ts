@@ -2,7 +2,7 @@ import type { Fact, KnownFact } from '../core/model/fact.ts';
 import { aboutOf } from '../core/packet/merge-facts.ts';
 import { parseFact } from '../core/packet/parse-fact.ts';
 import { revisionOf } from '../core/packet/revision.ts';
-import type { FactRow } from './schema.ts';
+import type { FactRow } from './rows.ts';
 
 export function rowOf(fact: Fact, revision = revisionOf(fact)): FactRow {
   const about = aboutOf(fact);

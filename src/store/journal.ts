@@ -2,7 +2,7 @@ import type { JournalPort, RecoveredJournal } from '../app/ports.ts';
 import type { Recording } from '../core/model/recording.ts';
 import { ulid } from '../core/packet/ulid.ts';
 import type { Change, Connection } from './connection.ts';
-import type { ChunkRow, JournalRow } from './schema.ts';
+import type { ChunkRow, JournalRow } from './rows.ts';
 import { StoreError } from './store-error.ts';
 import type { StoreEnvironment } from './store-environment.ts';
 

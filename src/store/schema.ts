@@ -1,51 +1,15 @@
 import type { DBSchema, IDBPDatabase, IDBPTransaction, StoreNames } from 'idb';
 import type { ReadingSummary } from '../app/ports.ts';
-import type { EditFact, Fact, FieldValue } from '../core/model/fact.ts';
-import type { AxisName, InterruptionCode, SensorDescription } from '../core/model/recording.ts';
+import type { EditFact, FieldValue } from '../core/model/fact.ts';
 import { summaryOf } from './reading-summary.ts';
 import { knownFact } from './fact-row.ts';
+import type { ChunkRow, ErrorRow, FactRow, JournalRow, RawRow } from './rows.ts';
 
 /*
  * The database and its history. A migration is data: what it creates, and what it fills from what is there. A published
  * one never changes; a new one is added at the end (recipe in DEVELOPERS.md). All run in one version-change transaction:
  * after a kill the old state or the new one is there, nothing between.
  */
-
-export interface FactRow {
-  readonly id: string;
-  readonly kind: string;
-  /** Entity of an edit or photo, reading of a result, target of an erasure. */
-  readonly about?: string;
-  readonly revision: string;
-  readonly fact: Fact;
-}
-
-/** Bytes of a reading's raw samples (gzip) or of a photo (jpeg). ArrayBuffer: some browsers lose Blobs. */
-export interface RawRow {
-  readonly id: string;
-  readonly bytes: ArrayBuffer;
-}
-
-export interface JournalRow {
-  readonly id: string;
-  readonly startedAt: string;
-  readonly sensor: SensorDescription;
-  readonly axes: readonly AxisName[];
-  readonly flags: readonly InterruptionCode[];
-}
-
-export interface ChunkRow {
-  readonly journal: string;
-  readonly sequence: number;
-  readonly timeS: Float64Array;
-  readonly accelerationMps2: readonly Float32Array[];
-}
-
-export interface ErrorRow {
-  readonly at: string;
-  readonly message: string;
-  readonly detail: string;
-}
 
 export interface ThrumbookSchema extends DBSchema {
   facts: { key: string; value: FactRow; indexes: { kind: string; about: string } };
