@@ -1,4 +1,3 @@
-import { execFileSync } from 'node:child_process';
 import { readFileSync } from 'node:fs';
 import { fileURLToPath } from 'node:url';
 import preact from '@preact/preset-vite';
@@ -6,6 +5,7 @@ import type { Plugin } from 'vite';
 import { VitePWA } from 'vite-plugin-pwa';
 import { defineConfig } from 'vitest/config';
 import { noticesPlugins } from './src/cli/notices.ts';
+import { commit } from './src/cli/project.mjs';
 import { headersFile, PAGE_POLICY } from './src/cli/security-headers.mjs';
 
 const root = fileURLToPath(new URL('.', import.meta.url));
@@ -109,16 +109,4 @@ function offline() {
       sourcemap: false,
     },
   });
-}
-
-function commit(): string {
-  try {
-    return execFileSync('git', ['rev-parse', '--short=10', 'HEAD'], {
-      cwd: root,
-      encoding: 'utf8',
-      stdio: ['ignore', 'pipe', 'ignore'],
-    }).trim();
-  } catch {
-    return 'unknown';
-  }
 }

@@ -1,6 +1,6 @@
 import { createHash } from 'node:crypto';
-import { existsSync, readdirSync, readFileSync, writeFileSync } from 'node:fs';
-import { spawn } from 'node:child_process';
+import { existsSync, readdirSync, readFileSync, statSync, writeFileSync } from 'node:fs';
+import { spawn, spawnSync } from 'node:child_process';
 import { dirname, join } from 'node:path';
 import { fileURLToPath } from 'node:url';
 
@@ -72,6 +72,12 @@ function packagesOf(path) {
   return JSON.parse(readFileSync(path, 'utf8')).packages;
 }
 
+/** Short name of the commit, or "unknown" outside a git checkout. */
+export function commit() {
+  const git = spawnSync('git', ['rev-parse', '--short=10', 'HEAD'], { cwd: ROOT, encoding: 'utf8' });
+  return git.status === 0 ? git.stdout.trim() : 'unknown';
+}
+
 /** Builds dist/ when an input changed since the last build. */
 export async function buildWhenOld() {
   if (existsSync(INPUTS_STAMP) && readFileSync(INPUTS_STAMP, 'utf8') === inputsHash()) return;
@@ -88,6 +94,8 @@ export async function build() {
 
 function inputsHash() {
   const hash = createHash('sha256');
+  // The page shows its commit, and its policy may name a team's hosts.
+  hash.update(`${commit()}\0${process.env.THRUMBOOK_TEAM_STORES ?? ''}\0`);
   for (const file of BUILD_INPUTS.flatMap(filesUnder)) {
     hash.update(`${file}\0`);
     hash.update(readFileSync(join(ROOT, file)));
@@ -102,13 +110,8 @@ function inputsHash() {
 function filesUnder(path) {
   const full = join(ROOT, path);
   if (!existsSync(full)) return [];
-  try {
-    return readdirSync(full, { withFileTypes: true })
-      .sort((a, b) => (a.name < b.name ? -1 : 1))
-      .flatMap((entry) =>
-        entry.isDirectory() ? filesUnder(join(path, entry.name)) : [join(path, entry.name)],
-      );
-  } catch {
-    return [path];
-  }
+  if (!statSync(full).isDirectory()) return [path];
+  return readdirSync(full)
+    .sort()
+    .flatMap((name) => filesUnder(join(path, name)));
 }
