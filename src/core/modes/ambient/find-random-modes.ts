@@ -105,7 +105,7 @@ function withRise(
   const periodogram = periodogramAlong(spectra, direction);
   const start: RandomModeStart = {
     frequencyHz,
-    dampingRatio: Math.min(0.1, Math.max(0.0005, (0.6 * halfHz) / frequencyHz)),
+    dampingRatio: Math.min(0.1, Math.max(0.0005, halfHz / frequencyHz)),
     peakPerHz: meanOver(periodogram, rise.bin - rise.halfWidthBins, rise.bin + rise.halfWidthBins),
   };
   const band = bandOf(start, limits, stepHz);
@@ -143,7 +143,7 @@ function bestOf(
   floor: number,
 ): RandomBandFit {
   let best: RandomBandFit | undefined;
-  for (const factor of [1, 0.3, 3]) {
+  for (const factor of [1, 0.4, 2.5]) {
     const own = {
       ...start,
       dampingRatio: Math.min(0.2, start.dampingRatio * factor),

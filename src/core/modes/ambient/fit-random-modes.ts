@@ -45,9 +45,11 @@ export interface BandData {
 /** Damping ratios outside are not searched: below nothing rings out in a recording, above there is no resonance to speak of. */
 const LEAST_DAMPING = 1e-4;
 const MOST_DAMPING = 0.35;
-const MOST_STEPS = 40;
+const MOST_STEPS = 30;
+/** The floor is not followed further down than e to this below its start: there it no longer shows. */
+const FLOOR_DEPTH = 6;
 /** Scoring ends when a step changes the cost by less than this. */
-const COST_TOLERANCE = 1e-5;
+const COST_TOLERANCE = 1e-4;
 
 interface Point {
   /** Of each mode: ln f, ln zeta, ln peak; then ln floor, slope. */
@@ -71,13 +73,14 @@ export function fitRandomModes(
   theta[size - 2] = Math.log(floorPerHz);
   const work = workspace(data, starts.length);
   let at: Point = { theta, cost: costAt(data, work, theta) };
+  const leastFloor = Math.log(floorPerHz) - FLOOR_DEPTH;
   let damping = 1e-3;
   let converged = false;
   for (let step = 0; step < MOST_STEPS && !converged; step++) {
     const { score, fisher } = scoreAndFisher(data, work, at.theta);
     let accepted = false;
     for (let attempt = 0; attempt < 8 && !accepted; attempt++) {
-      const next = stepped(at.theta, score, fisher, damping, data);
+      const next = stepped(at.theta, score, fisher, damping, data, leastFloor);
       const cost = next ? costAt(data, work, next) : Infinity;
       if (next && cost < at.cost) {
         converged = at.cost - cost < COST_TOLERANCE;
@@ -97,6 +100,7 @@ interface Workspace {
   readonly slopes: readonly Float64Array[];
   readonly density: Float64Array;
   readonly logRatio: Float64Array;
+  readonly bend: Float64Array;
 }
 
 function workspace(data: BandData, modeCount: number): Workspace {
@@ -108,12 +112,13 @@ function workspace(data: BandData, modeCount: number): Workspace {
     shifted: array(),
     slopes: Array.from({ length: 3 * modeCount + 2 }, array),
     density: array(),
+    bend: array(),
     logRatio: Float64Array.from({ length }, (_, i) => Math.log((data.first + i) / centre)),
   };
 }
 
 function fillDensity(data: BandData, work: Workspace, theta: Float64Array): void {
-  const { density, logRatio, shapes } = work;
+  const { density, logRatio, shapes, bend } = work;
   const modeCount = shapes.length;
   const floor = Math.exp(theta[3 * modeCount] as number);
   const slope = theta[3 * modeCount + 1] as number;
@@ -132,8 +137,9 @@ function fillDensity(data: BandData, work: Workspace, theta: Float64Array): void
       density[k] = (density[k] as number) + peak * (shape[k] as number);
   });
   for (let k = 0; k < density.length; k++) {
-    const bend = Math.exp(slope * (logRatio[k] as number));
-    density[k] = modeCount ? bend * (density[k] as number) + floor : bend * floor;
+    const factor = slope === 0 ? 1 : Math.exp(slope * (logRatio[k] as number));
+    bend[k] = factor;
+    density[k] = modeCount ? factor * (density[k] as number) + floor : factor * floor;
   }
 }
 
@@ -157,7 +163,7 @@ function scoreAndFisher(
   const size = theta.length;
   const modeCount = work.shapes.length;
   fillDensity(data, work, theta);
-  const { density, slopes, shapes, shifted, logRatio } = work;
+  const { density, slopes, shapes, shifted, logRatio, bend } = work;
   const slope = theta[size - 1] as number;
   const floor = Math.exp(theta[size - 2] as number);
   for (let i = 0; i < modeCount; i++) {
@@ -182,8 +188,7 @@ function scoreAndFisher(
     }
     const out = slopes[3 * i + 2] as Float64Array;
     for (let k = 0; k < out.length; k++)
-      out[k] =
-        (peak * Math.exp(slope * (logRatio[k] as number)) * (shape[k] as number)) / (density[k] as number);
+      out[k] = (peak * (bend[k] as number) * (shape[k] as number)) / (density[k] as number);
   }
   const onFloor = slopes[size - 2] as Float64Array;
   const onSlope = slopes[size - 1] as Float64Array;
@@ -232,6 +237,7 @@ function stepped(
   fisher: Float64Array,
   damping: number,
   data: BandData,
+  leastFloor: number,
 ): Float64Array | undefined {
   const size = theta.length;
   const raised = fisher.slice();
@@ -245,6 +251,7 @@ function stepped(
     for (let j = 0; j < size; j++) step += (inverse[i * size + j] as number) * (score[j] as number);
     next[i] = (next[i] as number) + Math.max(-1, Math.min(1, step));
   }
+  next[size - 2] = Math.max(leastFloor, next[size - 2] as number);
   const lowHz = data.first * data.piece.stepHz;
   const highHz = data.last * data.piece.stepHz;
   for (let i = 0; 3 * i + 2 < size - 1; i++) {

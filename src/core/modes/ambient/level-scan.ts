@@ -3,8 +3,9 @@
  * many widths (a scan statistic: log-likelihood ratio of one raised level in exponential ordinates).
  */
 
-/** Ordinates averaged before the median is taken, so that the median is close to the mean. */
-const BLOCK_BINS = 8;
+/** Ordinates averaged before the median is taken, so that the median is close to the mean; more where the record is long. */
+const LEAST_BLOCK_BINS = 8;
+const MOST_BLOCKS = 256;
 /** Half width of the background window: this share of the frequency, and at least so many Hz. */
 const BACKGROUND_SHARE = 0.4;
 const BACKGROUND_LEAST_HZ = 0.8;
@@ -23,22 +24,23 @@ export interface Rise {
 
 /** Background of bins first..last (same indexing), by a running median of block means. */
 export function background(values: Float64Array, first: number, last: number, stepHz: number): Float64Array {
-  const blockCount = Math.max(1, Math.floor((last - first + 1) / BLOCK_BINS));
+  const blockBins = Math.max(LEAST_BLOCK_BINS, Math.ceil((last - first + 1) / MOST_BLOCKS));
+  const blockCount = Math.max(1, Math.floor((last - first + 1) / blockBins));
   const means = Float64Array.from({ length: blockCount }, (_, b) => {
     let sum = 0;
-    for (let i = 0; i < BLOCK_BINS; i++) sum += values[Math.min(last, first + b * BLOCK_BINS + i)] as number;
-    return sum / BLOCK_BINS;
+    for (let i = 0; i < blockBins; i++) sum += values[Math.min(last, first + b * blockBins + i)] as number;
+    return sum / blockBins;
   });
   const medians = means.map((_, b) => {
-    const frequencyHz = (first + (b + 0.5) * BLOCK_BINS) * stepHz;
-    const reach = Math.max(BACKGROUND_SHARE * frequencyHz, BACKGROUND_LEAST_HZ) / (BLOCK_BINS * stepHz);
+    const frequencyHz = (first + (b + 0.5) * blockBins) * stepHz;
+    const reach = Math.max(BACKGROUND_SHARE * frequencyHz, BACKGROUND_LEAST_HZ) / (blockBins * stepHz);
     const half = Math.max(Math.round(reach), BACKGROUND_LEAST_BLOCKS >> 1);
     const window = means.slice(Math.max(0, b - half), Math.min(blockCount, b + half + 1)).sort();
     return Math.max(window[window.length >> 1] as number, Number.MIN_VALUE);
   });
   const out = new Float64Array(values.length);
   for (let k = first; k <= last; k++) {
-    const at = Math.max(0, Math.min(blockCount - 1, (k - first + 0.5) / BLOCK_BINS - 0.5));
+    const at = Math.max(0, Math.min(blockCount - 1, (k - first + 0.5) / blockBins - 0.5));
     const i = Math.min(blockCount - 1, Math.floor(at));
     const j = Math.min(blockCount - 1, i + 1);
     const share = at - i;
@@ -75,5 +77,30 @@ export function strongestRise(
       if (!isTaken(bin)) best = { bin, halfWidthBins: half, ratio, logLikelihood };
     }
   }
-  return best;
+  return best && sharpened(best, sums, first, last);
+}
+
+/** The widest window wins on a strong peak, skirts and all: shrink it to the stretch that holds half of the excess. */
+function sharpened(rise: Rise, sums: Float64Array, first: number, last: number): Rise {
+  const low = Math.max(first, rise.bin - rise.halfWidthBins);
+  const high = Math.min(last, rise.bin + rise.halfWidthBins);
+  const excess = (from: number, to: number): number =>
+    (sums[to + 1] as number) - (sums[from] as number) - (to - from + 1);
+  const whole = excess(low, high);
+  for (let width = 1; width < high - low; width = Math.max(width + 1, Math.round(width * 1.25))) {
+    let bestAt = low;
+    let most = -Infinity;
+    for (let from = low; from + width - 1 <= high; from++) {
+      const here = excess(from, from + width - 1);
+      if (here > most) {
+        most = here;
+        bestAt = from;
+      }
+    }
+    if (most >= whole / 2) {
+      const halfWidthBins = Math.max(0, Math.round((width - 1) / 2));
+      return { ...rise, bin: Math.min(last, bestAt + halfWidthBins), halfWidthBins, ratio: 1 + most / width };
+    }
+  }
+  return rise;
 }
