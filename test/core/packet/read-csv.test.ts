@@ -2,8 +2,8 @@ import { existsSync, readdirSync, readFileSync } from 'node:fs';
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import type { Recording } from '../../../src/core/model/recording.ts';
-import { PROBLEM_CODES } from '../../../src/core/model/problem.ts';
 import { readCsv, type ReadCsvOptions } from '../../../src/core/packet/read-csv.ts';
+import { checkReadCsvOnAnyText } from '../../support/any-csv-text.ts';
 
 const SHARED_DATA = '../shared/data';
 
@@ -191,49 +191,7 @@ describe('readCsv: properties', () => {
   });
 
   it('never throws: any text is understood in full or refused with a known code', () => {
-    const pieces = fc.constantFrom(
-      't',
-      'x',
-      'time',
-      'ay',
-      ',',
-      ';',
-      '\t',
-      '\n',
-      '\r',
-      '"',
-      '0',
-      '1.5',
-      '-',
-      'e',
-      '.',
-      ' ',
-      '(g)',
-      'Z',
-      ':',
-    );
-    const text = fc.oneof(
-      fc.string({ unit: 'binary', maxLength: 200 }),
-      fc.array(pieces, { maxLength: 60 }).map((list) => list.join('')),
-      fc.array(pieces, { maxLength: 60 }).map((list) => `t,x\n0,1\n${list.join('')}`),
-    );
-    fc.assert(
-      fc.property(text, (input) => {
-        const outcome = read(input);
-        if (!outcome.ok) {
-          expect(PROBLEM_CODES).toContain(outcome.problem.code);
-          return;
-        }
-        const { timeS, accelerationMps2 } = outcome.value;
-        expect(timeS.length).toBeGreaterThan(0);
-        for (const axis of accelerationMps2) {
-          expect(axis).toHaveLength(timeS.length);
-          expect(axis.every(Number.isFinite)).toBe(true);
-        }
-        expect(timeS.every((time, i) => Number.isFinite(time) && time >= (timeS[i - 1] ?? 0))).toBe(true);
-      }),
-      { numRuns: 2000 },
-    );
+    checkReadCsvOnAnyText(2000);
   });
 });
 
