@@ -162,6 +162,12 @@ const DOUBTS: Readonly<Record<DoubtCode, DoubtText>> = {
       'Several modes lie so close that their sum dies away faster than any of them: damping reads too high.',
     remedy: 'Tap at several spots and directions, or leave the phone for an ambient reading of ten minutes.',
   },
+  'running-resonance': {
+    name: 'Found while running',
+    meaning:
+      'This mode was read from random motion of a running machine; a broad hump of the machine can look the same.',
+    remedy: 'Stop the machine if that is safe and allowed, and tap, or take an ambient reading.',
+  },
   practice: {
     name: 'Practice',
     meaning: 'Made with the practice rig, not measured on a structure.',

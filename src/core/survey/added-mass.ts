@@ -1,19 +1,10 @@
 import { STANDARD_DEVIATIONS_95, type Interval } from '../model/interval.ts';
+import type { ModalValues } from '../model/guided-pairs.ts';
 import { failure, success, type Outcome } from '../model/outcome.ts';
 
 export interface MeasuredFrequency {
   readonly frequencyHz: number;
   readonly frequencySdHz: number;
-}
-
-export interface ModalValues {
-  /** Modal mass at the spot and in its direction, with the phone on it as in both readings. */
-  readonly massKg: number;
-  readonly massSdKg: number;
-  readonly stiffnessNPerM: number;
-  readonly stiffnessSdNPerM: number;
-  readonly massIntervalKg: Interval;
-  readonly stiffnessIntervalNPerM: Interval;
 }
 
 /** Extra stiffness and mass that a factor means. */

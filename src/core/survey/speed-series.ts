@@ -1,35 +1,11 @@
 import type { Analysis } from '../model/analysis.ts';
+import type { SpeedPoint, SpeedSeries } from '../model/guided-pairs.ts';
 import { failure, success, type Outcome } from '../model/outcome.ts';
 import type { Interval } from '../model/interval.ts';
 
 export interface SpeedReading {
   readonly speedRpm: number;
   readonly analysis: Analysis;
-}
-
-export interface SpeedPoint {
-  readonly speedRpm: number;
-  readonly amplitudeMps2: number;
-  /** Displacement of the line over speed squared, relative to the largest: what a constant unbalance force would give. */
-  readonly perForceRatio: number;
-}
-
-/**
- * `resonance`: response to a like force rises to a peak inside the range and falls again on both sides; `rising`, `falling`: it is
- * largest at an end, the peak lies beyond; `flat`: no peak that stands out.
- */
-export type SpeedFinding = 'resonance' | 'rising' | 'falling' | 'flat';
-
-export interface SpeedSeries {
-  readonly order: number;
-  /** By rising speed. */
-  readonly points: readonly SpeedPoint[];
-  /** Speeds at which the line was not found. */
-  readonly missingRpm: readonly number[];
-  readonly finding: SpeedFinding;
-  /** Speeds between which the peak lies (neighbours of the largest point), and the frequency of the line there. */
-  readonly peakRpm?: Interval;
-  readonly peakHz?: Interval;
 }
 
 /** Fewest speeds for a peak with two sides. */
@@ -45,8 +21,10 @@ function pointAt(
 ): { speedRpm: number; amplitudeMps2: number } | undefined {
   const wanted = (order * speedRpm) / 60;
   const reach = SPEED_REACH_RATIO * wanted + 0.5 / analysis.recording.durationS;
+  // An entered speed below half the rate settles what the time stamps alone left undecided.
+  const visible = wanted < analysis.recording.rateHz / 2;
   const near = analysis.tones.filter(
-    (tone) => tone.fold.verdict === 'direct' && Math.abs(tone.frequencyHz - wanted) <= reach,
+    (tone) => visible && tone.fold.verdict !== 'folded' && Math.abs(tone.frequencyHz - wanted) <= reach,
   );
   if (near.length === 0) return undefined;
   return { speedRpm, amplitudeMps2: Math.max(...near.map((tone) => tone.amplitudeMps2)) };

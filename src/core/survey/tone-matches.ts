@@ -1,5 +1,6 @@
 import type { Analysis, Tone } from '../model/analysis.ts';
 import { STANDARD_DEVIATIONS_95 } from '../model/interval.ts';
+import type { ToneOrigin } from '../model/guided-pairs.ts';
 import type { ToneMatch } from '../model/judgement.ts';
 import type { Forcing } from '../model/source.ts';
 
@@ -60,14 +61,6 @@ export function toneMatches(analysis: Analysis, forcings: readonly Forcing[]): r
     const forcing = forcings[best.forcingIndex] as Forcing;
     return { toneIndex, forcing, forcingIndex: best.forcingIndex, folded: best.folded };
   });
-}
-
-export interface ToneOrigin {
-  readonly toneIndex: number;
-  /** Amplitude with the machine off over amplitude running, with both uncertainties; 0 where nothing was found. */
-  readonly remainingRatio: number;
-  /** `machine`: gone when it is off; `elsewhere`: still there; `both`: part of it. */
-  readonly whose: 'machine' | 'elsewhere' | 'both';
 }
 
 /** Below this share a tone counts as gone, above the other as still there. Our own bounds (judgement, no source). */

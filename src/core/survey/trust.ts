@@ -35,6 +35,7 @@ export const DOUBT_WEIGHTS: Readonly<Record<DoubtCode, DoubtWeight>> = {
   'late-stamps': 'slight',
   interrupted: 'slight',
   stalled: 'slight',
+  'running-resonance': 'moderate',
   'mounting-unknown': 'slight',
   'half-power-refused': 'none',
   practice: 'none',

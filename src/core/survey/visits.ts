@@ -1,7 +1,8 @@
 /** Visit to visit: what changed at a spot, beyond what repeating a reading changes by itself. */
 import type { Analysis, Mode } from '../model/analysis.ts';
 import type { Circumstances } from '../model/fact.ts';
-import { STANDARD_DEVIATIONS_95, type Interval } from '../model/interval.ts';
+import { STANDARD_DEVIATIONS_95 } from '../model/interval.ts';
+import type { Condition, ModeChange, QuantityChange, VisitChange } from '../model/visit-change.ts';
 import { modePairs } from './mode-pairs.ts';
 import { studentQuantile95 } from './student.ts';
 
@@ -21,24 +22,6 @@ export interface Visit {
   readonly circumstances: Partial<Circumstances>;
 }
 
-export interface QuantityChange {
-  /** Later over earlier. */
-  readonly ratio: number;
-  readonly interval: Interval;
-  readonly changed: boolean;
-  /** Whether the spot's own scatter was used (from five visits on). */
-  readonly floor: 'practice' | 'own';
-}
-
-export interface ModeChange {
-  readonly earlierIndex: number;
-  readonly laterIndex: number;
-  readonly frequency: QuantityChange;
-  readonly damping: QuantityChange;
-}
-
-/** Conditions that differ between two visits and may explain a change. */
-export type Condition = keyof Circumstances;
 const CONDITIONS: readonly Condition[] = [
   'mounting',
   'surface',
@@ -52,17 +35,6 @@ const CONDITIONS: readonly Condition[] = [
 ];
 /** A difference in temperature below this is not worth a word, degrees (our own bound). */
 export const TEMPERATURE_STEP_C = 5;
-
-export interface VisitChange {
-  readonly earlier: string;
-  readonly later: string;
-  readonly modes: readonly ModeChange[];
-  /** Modes of one visit that the other did not find: indexes. */
-  readonly lostIndexes: readonly number[];
-  readonly newIndexes: readonly number[];
-  readonly conditions: readonly Condition[];
-  readonly temperatureDifferenceC?: number;
-}
 
 /** Scatter of a quantity over earlier visits, relative; undefined below five. */
 function ownScatter(logs: readonly number[]): { readonly sd: number; readonly quantile: number } | undefined {

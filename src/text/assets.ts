@@ -1,0 +1,102 @@
+/** What an asset's pooled readings say, what to do next, and what changed between visits. */
+import type { AssetVerdict, NextStep, NextStepKind } from '../core/model/asset-verdict.ts';
+import type { SpeedSeries, ToneOrigin } from '../core/model/guided-pairs.ts';
+import type { Condition, QuantityChange, VisitChange } from '../core/model/visit-change.ts';
+import { formatNumber } from './number.ts';
+import { formatFrequencyRange } from './quantity.ts';
+import { forcingName } from './sources.ts';
+import { unpairedText } from './verdicts.ts';
+
+const STEPS: Readonly<Record<NextStepKind, string>> = {
+  'tap-first': 'Tap it: no reading here looks for modes yet.',
+  'read-spot': 'Take a reading at this spot: it has none yet.',
+  'repeat-poor': 'Repeat this reading: it is not to be trusted.',
+  'settle-undecided': 'Repeat this reading with more taps: its uncertainty leaves the verdict open.',
+  'add-spot': 'Add a spot at a quarter or the middle: a mode stands still at its nodes and is missed there.',
+  'other-direction': 'Tap in another direction: up and down, along, and across ring differently.',
+  'read-running': 'Take a reading with the machine running.',
+  'tap-stopped': 'Tap it with the machine stopped and locked out: a running reading finds no modes.',
+};
+
+/** @param spotName name of the step's spot, where it has one */
+export function nextStepSentence(step: NextStep, spotName?: string): string {
+  return spotName === undefined ? STEPS[step.kind] : `${spotName}: ${STEPS[step.kind]}`;
+}
+
+const capital = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1);
+
+/** The asset in one or two sentences: its worst pair, or that none was found near, and what is not covered. */
+export function assetSentence(verdict: AssetVerdict): string {
+  const worst = verdict.pairs[0];
+  const missing = verdict.coverage.spotsMissing.length;
+  const open =
+    missing === 0 ? '' : ` ${missing} ${missing === 1 ? 'spot has' : 'spots have'} no reading yet.`;
+  if (!worst) return `No sources are entered for it.${open}`;
+  const name = capital(forcingName(worst.forcing));
+  if (worst.verdict === 'none-near') return `No mode found near any source in the readings so far.${open}`;
+  if (worst.verdict === 'blind' || worst.verdict === 'not-sought')
+    return `${name}: ${unpairedText(worst.verdict).meaning}${open}`;
+  return `${name}: ${worst.verdict}.${open}`;
+}
+
+const CONDITIONS: Readonly<Record<Condition, string>> = {
+  mounting: 'how the phone was held',
+  surface: 'the surface',
+  excitation: 'how it was excited',
+  machineState: 'the state of the machine',
+  peopleOnIt: 'people on it',
+  load: 'the load',
+  temperatureC: 'the temperature',
+  phoneMassKg: 'the weight of the phone',
+  direction: 'the direction',
+  visibleSway: 'visible sway',
+  cracksOrLooseParts: 'cracks or loose parts',
+  speedRpm: 'the speed',
+};
+export const conditionName = (condition: Condition): string => CONDITIONS[condition];
+
+/** "Frequency down 6.1 % (3 to 9 %): changed." or "no change shown"; never "unchanged". */
+export function changeSentence(name: string, change: QuantityChange): string {
+  const percent = (ratio: number): string => formatNumber(100 * (ratio - 1), 2);
+  const range = `${percent(change.interval[0])} to ${percent(change.interval[1])} %`;
+  const way = change.ratio < 1 ? 'down' : 'up';
+  const size = formatNumber(Math.abs(100 * (change.ratio - 1)), 2);
+  const floor =
+    change.floor === 'own' ? 'the scatter of this spot’s own visits' : 'what a repeat usually scatters';
+  return change.changed
+    ? `${name} ${way} ${size} % (${range}): changed, beyond ${floor}.`
+    : `${name}: no change shown (${range}), within ${floor}.`;
+}
+
+/** What differs in the conditions of two visits, for beside the change. */
+export function conditionsSentence(change: VisitChange): string | undefined {
+  const degrees = change.temperatureDifferenceC;
+  const warmer =
+    degrees === undefined || Math.abs(degrees) < 0.5
+      ? []
+      : [`${formatNumber(Math.abs(degrees), 2)} °C ${degrees > 0 ? 'warmer' : 'colder'}`];
+  const others = change.conditions.filter((condition) => condition !== 'temperatureC').map(conditionName);
+  const all = [...warmer, ...others];
+  return all.length === 0 ? undefined : `Different this time: ${all.join(', ')}.`;
+}
+
+/** What a series of speeds shows. */
+export function speedSeriesSentence(series: SpeedSeries): string {
+  switch (series.finding) {
+    case 'resonance':
+      return `The response peaks between ${Math.round(series.peakRpm?.[0] ?? 0)} and ${Math.round(series.peakRpm?.[1] ?? 0)} r/min (${formatFrequencyRange(series.peakHz ?? [0, 0])}) and falls on both sides: a resonance.`;
+    case 'rising':
+      return 'The response for a like unbalance still rises at the highest speed: a resonance lies there or above.';
+    case 'falling':
+      return 'The response for a like unbalance falls from the lowest speed on: a resonance lies there or below.';
+    case 'flat':
+      return 'No peak stands out over these speeds.';
+  }
+}
+
+const WHOSE: Readonly<Record<ToneOrigin['whose'], string>> = {
+  machine: 'gone with the machine off: it is this machine’s',
+  elsewhere: 'still there with the machine off: it comes from elsewhere',
+  both: 'weaker with the machine off: part of it comes from elsewhere',
+};
+export const toneOriginSentence = (origin: ToneOrigin): string => WHOSE[origin.whose];
