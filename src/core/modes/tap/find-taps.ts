@@ -8,7 +8,13 @@ export interface FreeDecay extends Segment {
 }
 
 /** Fall of the summed squares that a contact sample must bring, beyond one per axis, to be left out. Our own choice. */
-const CONTACT_SAMPLE_PRICE = 8;
+export const CONTACT_SAMPLE_PRICE = 8;
+
+/**
+ * A tap changes the motion by at least this share of its energy (14 % of its amplitude): smaller jumps are how far a
+ * real structure is from a linear one. Our own choice, tried on measured beams.
+ */
+const LEAST_JUMP_SHARE = 0.02;
 
 export interface TapSearch {
   /** Longest contact left out, s. */
@@ -76,7 +82,7 @@ export function used(decays: readonly FreeDecay[]): readonly FreeDecay[] {
 }
 
 /** More than this many taps is not a tap test. */
-const TAP_LIMIT = 60;
+export const TAP_LIMIT = 40;
 
 /** Each border searched again between its neighbours; borders that no longer pay are taken away. */
 export function refineBorders(
@@ -115,7 +121,12 @@ function bestSplit(
   const n = decay.end - decay.start;
   const least = linearColumnCount(components.length) + 2;
   if (n < 2 * least) return undefined;
-  const { leading, trailing } = scanSplits(signal, decay, components, axisWeights);
+  const { leading, trailing, leadingSquare, trailingSquare } = scanSplits(
+    signal,
+    decay,
+    components,
+    axisWeights,
+  );
   const price = signal.y.length + CONTACT_SAMPLE_PRICE;
   const total = leading[n]!;
   let best: Split | undefined;
@@ -131,7 +142,11 @@ function bestSplit(
       }
     }
   }
-  return best !== undefined && best.onset - decay.start >= 1 ? best : undefined;
+  if (best === undefined || best.onset === decay.start) return undefined;
+  const k = best.onset - decay.start;
+  const j = best.start - decay.start;
+  const motion = Math.min(leadingSquare[k]! - leading[k]!, trailingSquare[j]! - trailing[j]!);
+  return best.gain > LEAST_JUMP_SHARE * motion ? best : undefined;
 }
 
 function indexOfLargest(values: readonly number[]): number {

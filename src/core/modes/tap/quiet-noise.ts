@@ -2,6 +2,10 @@
 const STRETCH_S = 0.25;
 /** Stretches ranked: this share of the quietest stands for the noise. */
 const QUIET_SHARE = 0.15;
+/** Standard normal quantile of that share, by which a low quantile of white noise reads too little. */
+const QUIET_SHARE_Z = 1.036;
+/** 1 + 2 (squared correlations of second differences, -2/3 and 1/6): how much less a stretch tells than its length. */
+const SECOND_DIFFERENCE_CORRELATION = 35 / 18;
 
 /**
  * First guess of the noise variance per axis, (m/s²)², from second differences over the quietest stretches.
@@ -25,7 +29,8 @@ export function quietNoiseVariance(
       variances.push(sum / (6 * (width - 2)));
     }
     variances.sort((a, b) => a - b);
-    const quiet = variances[Math.floor(QUIET_SHARE * variances.length)] ?? 0;
+    const spread = Math.sqrt((2 * SECOND_DIFFERENCE_CORRELATION) / (width - 2));
+    const quiet = (variances[Math.floor(QUIET_SHARE * variances.length)] ?? 0) * Math.exp(QUIET_SHARE_Z * spread);
     return Math.max(quiet, (stepMps2[axis] ?? 0) ** 2 / 12, 1e-14);
   });
 }

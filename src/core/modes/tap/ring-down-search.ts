@@ -1,9 +1,9 @@
-import { linearColumnCount, parameterCount, parameterIndex } from './decay-model.ts';
+import { evaluateDecays, linearColumnCount, parameterCount, parameterIndex } from './decay-model.ts';
 import type { Component, DecaySignal, Segment } from './decay-model.ts';
-import { fitDecays, SMALLEST_DECAY_RATIO } from './fit-decays.ts';
+import { fitDecays } from './fit-decays.ts';
 import { residuals } from './modelled-signal.ts';
 import type { DecayFit } from './fit-decays.ts';
-import { findTaps, used } from './find-taps.ts';
+import { CONTACT_SAMPLE_PRICE, TAP_LIMIT, findTaps, used } from './find-taps.ts';
 import type { FreeDecay } from './find-taps.ts';
 import { strongestOnset } from './first-decay.ts';
 import { quietNoiseVariance } from './quiet-noise.ts';
@@ -41,16 +41,61 @@ export function searchRingDowns(input: SearchInput): RingDownSearch | undefined 
   const noise = quietNoiseVariance(signal.y, input.rateHz, input.stepMps2);
   const start = firstComponents(input, noise);
   if (start === undefined) return undefined;
-  let current = settle(signal, start, noise, COARSE);
-  current = grow(input, current, noise, COARSE);
-  current = prune(input, settle(signal, current, noise, FINE), noise);
-  current = settle(signal, current, noise, FINE);
-  const grown = grow(input, current, noise, FINE);
-  return withTones(signal, grown === current ? current : prune(input, grown, noise));
+  const result = search(input, settle(signal, start, noise, COARSE), noise);
+  return result.tapCount >= TAP_LIMIT ? result : withTones(signal, prune(input, result, noise));
+}
+
+/** Steps taken at most: each adds a component, or looks for weaker taps. */
+const STEP_LIMIT = 10;
+
+/**
+ * Either one more component or the weaker taps, whichever the record pays more for (a missed tap passes for a second
+ * mode, a missed mode for many weak taps), until neither pays.
+ */
+function search(input: SearchInput, start: RingDownSearch, noise: readonly number[]): RingDownSearch {
+  const { signal } = input;
+  let current = start;
+  let threshold = COARSE;
+  for (let step = 0; step < STEP_LIMIT && current.tapCount < TAP_LIMIT; step++) {
+    const cost = recordCost(signal, current);
+    const larger = withOneMore(input, current, noise);
+    const richer = larger === undefined ? undefined : settle(signal, larger, noise, threshold);
+    const finer = threshold === FINE ? undefined : settle(signal, current, noise, FINE);
+    const richerCost = richer === undefined ? Infinity : recordCost(signal, richer);
+    const finerCost = finer === undefined ? Infinity : recordCost(signal, finer);
+    if (finer !== undefined && finerCost <= Math.min(cost, richerCost)) {
+      current = finer;
+      threshold = FINE;
+    } else if (richer !== undefined && richerCost < cost) {
+      current = richer;
+    } else {
+      break;
+    }
+  }
+  return current;
+}
+
+/** Bayesian information criterion of the whole record: silence before the first tap and contacts count too. */
+function recordCost(signal: DecaySignal, search: RingDownSearch): number {
+  const { components, variance } = search.fit;
+  const weights = variance.map((v) => 1 / v);
+  const all = evaluateDecays(signal, search.decays, components, weights);
+  const axes = signal.y.length;
+  const n = signal.timeS.length;
+  const inside = search.decays.reduce((sum, d) => sum + d.end - d.start, 0);
+  let cost = 0;
+  for (let a = 0; a < axes; a++) {
+    const contact = ((n - inside) * (axes + CONTACT_SAMPLE_PRICE) * variance[a]!) / axes;
+    cost += n * Math.log((all.rss[a]! + contact) / n);
+  }
+  const parameters = parameterCount(components) + search.decays.length * axes * linearColumnCount(components.length);
+  return cost + parameters * Math.log(n * axes);
 }
 
 /** Standard deviations of its decay above zero that a component needs to be a mode; else it is a steady tone. */
 const DECAY_SDS = 3;
+/** Below this damping ratio nothing built rings (bare steel in air: about 0.0005; common practice, no source). */
+const LEAST_DAMPING_RATIO = 2e-4;
 
 /** Calls components that do not fall tones, and fits once more with their decay held at nothing. */
 function withTones(signal: DecaySignal, search: RingDownSearch): RingDownSearch {
@@ -62,7 +107,7 @@ function withTones(signal: DecaySignal, search: RingDownSearch): RingDownSearch 
     const decaySd = covariance === undefined ? 0 : Math.sqrt(covariance[at * size + at]!);
     const falls =
       component.decayPerS > DECAY_SDS * decaySd &&
-      component.decayPerS > 2 * SMALLEST_DECAY_RATIO * component.angularRadPerS;
+      component.decayPerS > LEAST_DAMPING_RATIO * component.angularRadPerS;
     return falls ? component : asTone(component);
   });
   if (named.every((component, k) => component === components[k])) return search;
@@ -105,22 +150,6 @@ function isMeasurable(component: Component, rateHz: number): boolean {
   );
 }
 
-/** Adds components while the data pay for them. */
-function grow(
-  input: SearchInput,
-  start: RingDownSearch,
-  noise: readonly number[],
-  relativeThreshold: number,
-): RingDownSearch {
-  let current = start;
-  while (current.fit.components.length < COMPONENT_LIMIT) {
-    const larger = withOneMore(input, current, noise);
-    if (larger === undefined) break;
-    current = settle(input.signal, larger, noise, relativeThreshold);
-  }
-  return current;
-}
-
 /**
  * First components: steady tones over the whole record, then the strongest decaying line: rough frequency from the
  * whole record, best onset by matched filter, and what rings in the time after that onset.
@@ -143,8 +172,8 @@ function firstComponents(input: SearchInput, noise: readonly number[]): RingDown
       1,
     );
     const newest = line.components.at(-1)!;
-    if (tones.length < TONE_LIMIT && isSteady(signal, newest)) {
-      tones = [...tones, asTone(newest)];
+    if (tones.length < TONE_LIMIT && isSteady(signal, left, newest)) {
+      tones = [...line.components];
       left = residuals(signal, whole, line);
       continue;
     }
@@ -166,9 +195,33 @@ const STEADY_FALL = 0.3;
 const STEADY_START_PER_S = 0.01;
 const TONE_LIMIT = 3;
 
-function isSteady(signal: DecaySignal, component: Component): boolean {
-  const durationS = signal.timeS.at(-1)! - signal.timeS[0]!;
-  return component.decayPerS * durationS < STEADY_FALL;
+/** Stretches in which a tone must keep amplitude and phase, and how well: one of equal arrows, less of random ones. */
+const STEADY_STRETCHES = 8;
+const STEADY_COHERENCE = 0.8;
+
+function isSteady(signal: DecaySignal, left: readonly Float64Array[], component: Component): boolean {
+  const { timeS } = signal;
+  const n = timeS.length;
+  if (component.decayPerS * (timeS[n - 1]! - timeS[0]!) > STEADY_FALL) return false;
+  let together = 0;
+  let apart = 0;
+  for (const y of left) {
+    let [sumRe, sumIm] = [0, 0];
+    for (let b = 0; b < STEADY_STRETCHES; b++) {
+      const [first, end] = [b, b + 1].map((k) => Math.floor((k * n) / STEADY_STRETCHES)) as [number, number];
+      let [re, im] = [0, 0];
+      for (let i = first; i < end; i++) {
+        const phase = component.angularRadPerS * timeS[i]!;
+        re += y[i]! * Math.cos(phase);
+        im += y[i]! * Math.sin(phase);
+      }
+      apart += re * re + im * im;
+      sumRe += re;
+      sumIm += im;
+    }
+    together += sumRe * sumRe + sumIm * sumIm;
+  }
+  return together > STEADY_COHERENCE * STEADY_STRETCHES * apart;
 }
 
 /** Taps and shapes in turn until the taps stay. */
@@ -247,8 +300,27 @@ function withOneMore(
   const peak = strongestDecay(signal, residual, segments, rateHz, weights);
   if (peak === undefined) return undefined;
   const trial = fitDecays(signal, segments, [...current.fit.components, peak.component], noise);
+  if (areTooClose(signal, segments, trial.components)) return undefined;
   if (bayesCost(signal, segments, trial) >= bayesCost(signal, segments, current.fit)) return undefined;
   return found(current.decays, trial, noise);
+}
+
+/** Two lines nearer than these shares of one over the longest decay are one line to a single decay, to several. */
+const CLOSEST_IN_ONE_DECAY = 0.5;
+const CLOSEST_IN_SEVERAL = 0.2;
+
+/** What softening or a poor start looks like: a second line inside the resolution of the first. */
+function areTooClose(
+  signal: DecaySignal,
+  segments: readonly Segment[],
+  components: readonly Component[],
+): boolean {
+  const longestS = Math.max(...segments.map((s) => signal.timeS[s.end - 1]! - signal.timeS[s.start]!));
+  const share = segments.length > 1 ? CLOSEST_IN_SEVERAL : CLOSEST_IN_ONE_DECAY;
+  const leastRadPerS = (2 * Math.PI * share) / longestS;
+  return components.some((a, i) =>
+    components.some((b, j) => j < i && Math.abs(a.angularRadPerS - b.angularRadPerS) < leastRadPerS),
+  );
 }
 
 /** Bayesian information criterion (Schwarz 1978) with the residual variance of each axis estimated. */

@@ -8,6 +8,9 @@ export interface SplitScan {
   readonly leading: Float64Array;
   /** trailing[k]: samples start+k .. end-1; length n+1. */
   readonly trailing: Float64Array;
+  /** Squares of the same parts themselves; length n+1 each. */
+  readonly leadingSquare: Float64Array;
+  readonly trailingSquare: Float64Array;
 }
 
 /**
@@ -23,9 +26,13 @@ export function scanSplits(
   const n = segment.end - segment.start;
   const p = linearColumnCount(components.length);
   const columns = segmentColumns(signal, segment, components, p);
+  const leading = runningResidual(signal, segment, columns, p, axisWeights, 1, n);
+  const trailing = runningResidual(signal, segment, columns, p, axisWeights, -1, n);
   return {
-    leading: runningResidual(signal, segment, columns, p, axisWeights, 1, n),
-    trailing: runningResidual(signal, segment, columns, p, axisWeights, -1, n),
+    leading: leading.residual,
+    trailing: trailing.residual,
+    leadingSquare: leading.whole,
+    trailingSquare: trailing.whole,
   };
 }
 
@@ -63,9 +70,10 @@ function runningResidual(
   axisWeights: readonly number[],
   step: 1 | -1,
   n: number,
-): Float64Array {
+): { residual: Float64Array; whole: Float64Array } {
   const axisCount = signal.y.length;
   const residual = new Float64Array(n + 1);
+  const whole = new Float64Array(n + 1);
   const gram = new Float64Array(p * p);
   const cross = new Float64Array(axisCount * p);
   const square = new Float64Array(axisCount);
@@ -87,13 +95,17 @@ function runningResidual(
     choleskyInPlace(lower, p);
     v.set(cross);
     let sum = 0;
+    let all = 0;
     for (let a = 0; a < axisCount; a++) {
       forwardSubstitute(lower, p, v, a * p);
       let rss = square[a]!;
       for (let r = 0; r < p; r++) rss -= v[a * p + r]! * v[a * p + r]!;
       sum += axisWeights[a]! * Math.max(rss, 0);
+      all += axisWeights[a]! * square[a]!;
     }
-    residual[step === 1 ? count : k] = sum;
+    const at = step === 1 ? count : k;
+    residual[at] = sum;
+    whole[at] = all;
   }
-  return residual;
+  return { residual, whole };
 }

@@ -6,9 +6,9 @@ import type { ConditionedSignal } from '../../signal/condition-recording.ts';
 import { median } from '../../signal/sample-counter.ts';
 import { foldOfMode, foldOfTone } from '../fold.ts';
 import type { ProcedureAnswer } from '../procedure-answer.ts';
-import { parameterIndex } from './decay-model.ts';
+import { linearColumnCount, parameterIndex } from './decay-model.ts';
 import type { DecaySignal } from './decay-model.ts';
-import { used } from './find-taps.ts';
+import { TAP_LIMIT, used } from './find-taps.ts';
 import type { FreeDecay } from './find-taps.ts';
 import type { DecayFit } from './fit-decays.ts';
 import { halfPowerOfDecay } from './half-power.ts';
@@ -25,6 +25,12 @@ const FEWEST_SAMPLES = 64;
 const LEAST_AMPLITUDE_SDS = 3;
 /** ...and its damping must be known to this relative standard deviation, else it is no answer. */
 const LARGEST_DAMPING_SPREAD = 0.5;
+/** ...its frequency to this one... */
+const LARGEST_FREQUENCY_SPREAD = 0.02;
+/** Above this damping nothing rings that a tap test could read: under three half cycles are left above a tenth. */
+const LARGEST_DAMPING_RATIO = 0.25;
+/** Two lines that cancel each other have amplitudes beyond anything measured. */
+const LARGEST_AMPLITUDE_FACTOR = 3;
 /** Share of the motion under the ring-downs that the fit must explain; below, it is not free decay. */
 const LEAST_EXPLAINED_SHARE = 0.8;
 /** Half-power or decrement further than this from the fit is said. */
@@ -45,6 +51,7 @@ export function tapProcedure(
     return failure('clipped-throughout', { clippedCount: facts.clippedCount });
   const search = searchRingDowns({ signal, rateHz: facts.rateHz, stepMps2: facts.stepMps2 });
   if (search === undefined) return failure('no-motion');
+  if (search.tapCount >= TAP_LIMIT) return failure('no-decay', { tapCount: search.tapCount });
   return answerOf(conditioned, signal, search);
 }
 
@@ -66,14 +73,22 @@ function answerOf(
   const decays = used(search.decays);
   const { fit } = search;
   const left = residuals(signal, decays, fit);
+  const largest = Math.max(...signal.y.map((y) => y.reduce((m, v) => Math.max(m, Math.abs(v)), 0)));
   const modeIndexes = fit.components.flatMap((c, k) => (c.kind === 'mode' ? [k] : []));
   const estimates = modeIndexes
     .map((k) => ({ k, estimate: modeEstimate(signal, decays, fit, k) }))
-    .filter(({ estimate }) => isAnswer(estimate, fit))
+    .filter(({ estimate }) => isAnswer(estimate, fit, largest))
     .sort((a, b) => Math.max(...b.estimate.amplitudesMps2) - Math.max(...a.estimate.amplitudesMps2));
   if (estimates.length === 0) return failure(search.tapCount === 0 ? 'no-taps' : 'no-decay');
   const strongest = fit.components[estimates[0]!.k]!;
-  const explained = explainedShare(signal, decays, left, strongest.decayPerS, search.quietVariance);
+  const explained = explainedShare(
+    signal,
+    decays,
+    left,
+    strongest.decayPerS,
+    search.quietVariance,
+    fit.components.length,
+  );
   if (explained < LEAST_EXPLAINED_SHARE) return failure('no-decay', { explainedShare: explained });
   const modes = estimates.map(({ k, estimate }) =>
     modeOf({ conditioned, signal, decays, fit, left, k, estimate, tapCount: search.tapCount }),
@@ -98,9 +113,11 @@ function explainedShare(
   left: readonly Float64Array[],
   decayPerS: number,
   noise: readonly number[],
+  componentCount: number,
 ): number {
   let whole = 0;
   let unexplained = 0;
+  let count = 0;
   for (const { start, end } of decays) {
     const limitS = signal.timeS[start]! + JUDGED_DECAYS / decayPerS;
     for (let i = start; i < end && signal.timeS[i]! < limitS; i++) {
@@ -108,15 +125,21 @@ function explainedShare(
         whole += signal.y[a]![i]! ** 2;
         unexplained += left[a]![i]! ** 2 - noise[a]!;
       }
+      count++;
     }
   }
-  return whole > 0 ? 1 - Math.max(unexplained, 0) / whole : 0;
+  // Every free amplitude takes a share of the noise with it.
+  const freedom = Math.max(count - decays.length * linearColumnCount(componentCount), 1);
+  return whole > 0 ? 1 - (Math.max(unexplained, 0) * count) / freedom / whole : 0;
 }
 
-function isAnswer(estimate: ModeEstimate, fit: DecayFit): boolean {
+function isAnswer(estimate: ModeEstimate, fit: DecayFit, largestMps2: number): boolean {
   const noise = Math.sqrt(fit.variance.reduce((a, b) => a + b, 0) / fit.variance.length);
   return (
     Math.max(...estimate.amplitudesMps2) > LEAST_AMPLITUDE_SDS * noise &&
+    Math.max(...estimate.amplitudesMps2) < LARGEST_AMPLITUDE_FACTOR * largestMps2 &&
+    estimate.frequencySdHz < LARGEST_FREQUENCY_SPREAD * estimate.frequencyHz &&
+    estimate.dampingRatio < LARGEST_DAMPING_RATIO &&
     estimate.dampingRatioSd < LARGEST_DAMPING_SPREAD * estimate.dampingRatio
   );
 }
