@@ -12,8 +12,14 @@ export interface SensorOverride {
   provide(): Promise<void>;
 }
 
-/** Trusted motion events through Chromium's virtual sensors. For permission and loss, not for accuracy. */
-export async function overrideSensors(page: Page): Promise<SensorOverride> {
+/**
+ * Trusted motion events through Chromium's virtual sensors. For permission and loss, not for accuracy.
+ * `maximumFrequency`: readings a second that the sensor can do.
+ */
+export async function overrideSensors(
+  page: Page,
+  options: { readonly maximumFrequency?: number } = {},
+): Promise<SensorOverride> {
   const session = await page.context().newCDPSession(page);
   const set = async (available: boolean) => {
     // Enabling twice throws, so each change begins with off.
@@ -22,7 +28,7 @@ export async function overrideSensors(page: Page): Promise<SensorOverride> {
       await session.send('Emulation.setSensorOverrideEnabled', {
         enabled: true,
         type,
-        metadata: { available },
+        metadata: { available, ...(available ? options : {}) },
       });
     }
   };
@@ -61,7 +67,7 @@ export async function setMotionPermission(
 ): Promise<void> {
   const session = await page.context().newCDPSession(page);
   for (const name of ['accelerometer', 'gyroscope']) {
+    // The answer lasts as long as this session: detaching would give 'granted' back.
     await session.send('Browser.setPermission', { permission: { name }, setting, origin });
   }
-  await session.detach();
 }
