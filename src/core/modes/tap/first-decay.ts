@@ -12,14 +12,14 @@ export interface FirstDecay {
 }
 
 /**
- * Where a damped sinusoid of a given frequency best begins: matched filter over all onsets and a few decays.
+ * Where a damped sinusoid of a given frequency best begins, for each of a few decays: matched filter over all onsets.
  * One backward recursion per decay: sum over later samples of y·exp(-(decay + i·angular)(t - onset)).
  */
-export function strongestOnset(
+export function strongestOnsets(
   signal: DecaySignal,
   angularRadPerS: number,
   axisWeights: readonly number[],
-): FirstDecay | undefined {
+): FirstDecay[] {
   const { timeS, y } = signal;
   const n = timeS.length;
   const turn = new Float64Array(2 * n);
@@ -28,7 +28,7 @@ export function strongestOnset(
     turn[2 * i] = Math.cos(phase);
     turn[2 * i + 1] = -Math.sin(phase);
   }
-  let best: FirstDecay | undefined;
+  const candidates: FirstDecay[] = [];
   for (const ratio of DAMPING_RATIOS) {
     const decayPerS = ratio * angularRadPerS;
     const explained = new Float64Array(n);
@@ -55,11 +55,13 @@ export function strongestOnset(
         explained[i]! += axisWeights[a]! * (re * re + im * im);
       }
     }
+    let best: FirstDecay = { onset: 0, decayPerS, gain: 0 };
     for (let i = 0; i < n - 8; i++) {
-      // The energies of neighbouring onsets differ by the windows' own energy: normalised to a likelihood ratio.
+      // Half the squared sum over the window's energy: the likelihood ratio of a sinusoid beginning here.
       const gain = explained[i]! / (2 * energy[i]!);
-      if (best === undefined || gain > best.gain) best = { onset: i, decayPerS, gain };
+      if (gain > best.gain) best = { onset: i, decayPerS, gain };
     }
+    candidates.push(best);
   }
-  return best;
+  return candidates;
 }

@@ -5,7 +5,8 @@ import { residuals } from './modelled-signal.ts';
 import type { DecayFit } from './fit-decays.ts';
 import { CONTACT_SAMPLE_PRICE, TAP_LIMIT, findTaps, used } from './find-taps.ts';
 import type { FreeDecay } from './find-taps.ts';
-import { strongestOnset } from './first-decay.ts';
+import { strongestOnsets } from './first-decay.ts';
+import type { FirstDecay } from './first-decay.ts';
 import { quietNoiseVariance } from './quiet-noise.ts';
 import { strongestDecay } from './start-bank.ts';
 
@@ -157,8 +158,7 @@ function isMeasurable(component: Component, rateHz: number): boolean {
 function firstComponents(input: SearchInput, noise: readonly number[]): RingDownSearch | undefined {
   const { signal, rateHz } = input;
   const weights = noise.map((v) => 1 / v);
-  const n = signal.timeS.length;
-  const whole: FreeDecay[] = [{ start: 0, end: n, onset: undefined }];
+  const whole: FreeDecay[] = [{ start: 0, end: signal.timeS.length, onset: undefined }];
   let tones: Component[] = [];
   let left: readonly Float64Array[] = signal.y;
   for (;;) {
@@ -177,17 +177,42 @@ function firstComponents(input: SearchInput, noise: readonly number[]): RingDown
       left = residuals(signal, whole, line);
       continue;
     }
-    const onset = strongestOnset({ ...signal, y: left }, rough.component.angularRadPerS, weights);
-    if (onset === undefined) return undefined;
-    const start = Math.min(onset.onset + 2, n - 8);
-    const local: FreeDecay[] = [
-      { start, end: endAfter(signal, start, 2 / onset.decayPerS), onset: onset.onset },
-    ];
-    const peak = strongestDecay(signal, left, local, rateHz, weights) ?? rough;
-    const single = refit(signal, local, [...tones, peak.component], noise);
-    const second = withOneMore(input, single, noise) ?? single;
-    return second;
+    const singles = strongestOnsets({ ...signal, y: left }, rough.component.angularRadPerS, weights)
+      .map((onset) => localSearch(input, left, tones, onset, noise))
+      .filter((single) => single !== undefined);
+    if (singles.length === 0) return undefined;
+    const single = singles.reduce((best, s) => (likelihoodGain(signal, s) > likelihoodGain(signal, best) ? s : best));
+    return withOneMore(input, single, noise) ?? single;
   }
+}
+
+/** The decay that begins at a given onset, fitted alone over two time constants. */
+function localSearch(
+  input: SearchInput,
+  left: readonly Float64Array[],
+  tones: readonly Component[],
+  onset: FirstDecay,
+  noise: readonly number[],
+): RingDownSearch | undefined {
+  const { signal, rateHz } = input;
+  const start = Math.min(onset.onset + 2, signal.timeS.length - 12);
+  const local: FreeDecay[] = [
+    { start, end: endAfter(signal, start, 2 / onset.decayPerS), onset: onset.onset },
+  ];
+  const peak = strongestDecay(signal, left, local, rateHz, noise.map((v) => 1 / v));
+  return peak && refit(signal, local, [...tones, peak.component], noise);
+}
+
+/** Logarithm of the likelihood ratio of the fit against silence, noise unknown: long poor fits lose to short good ones. */
+function likelihoodGain(signal: DecaySignal, search: RingDownSearch): number {
+  const { start, end } = search.decays[0]!;
+  let gain = 0;
+  signal.y.forEach((y, a) => {
+    let square = 0;
+    for (let i = start; i < end; i++) square += y[i]! * y[i]!;
+    gain += (end - start) * Math.log((square + 1e-30) / (search.fit.evaluation.rss[a]! + 1e-30));
+  });
+  return gain;
 }
 
 /** A line that falls less than this over the whole record is steady: a tone. */
@@ -294,6 +319,7 @@ function withOneMore(
   noise: readonly number[],
 ): RingDownSearch | undefined {
   const { signal, rateHz } = input;
+  if (current.fit.components.length >= COMPONENT_LIMIT) return undefined;
   const segments = used(current.decays);
   const residual = residuals(signal, segments, current.fit);
   const weights = current.fit.variance.map((v) => 1 / v);
