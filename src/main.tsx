@@ -4,6 +4,7 @@ import { createApp, type App } from './app/app.ts';
 import { createNavigation } from './app/navigation.ts';
 import { createOfflineUpdates } from './app/offline-updates.ts';
 import { createCapture } from './capture/create-capture.ts';
+import { RECORDER_LOCK } from './capture/recorder-lock.ts';
 import { ANALYSIS_VERSION } from './core/model/analysis.ts';
 import { openStore } from './store/open-store.ts';
 import { problemSentence } from './text/problems.ts';
@@ -29,6 +30,7 @@ async function assemble(place: HTMLElement): Promise<void> {
   const update = createOfflineUpdates({
     container: navigator.serviceWorker,
     locks: navigator.locks,
+    recorderLock: RECORDER_LOCK,
     reload: () => location.reload(),
     isOff,
     onError: (error) => app?.noteError(error),

@@ -5,8 +5,10 @@ import type { Outcome } from '../core/model/outcome.ts';
 import type { Problem } from '../core/model/problem.ts';
 import type { Recording } from '../core/model/recording.ts';
 import { screenText } from '../text/screens.ts';
+import { live, type Live } from './live-state.ts';
 import type { Navigation } from './navigation.ts';
 import { createNotices, type Notices } from './notices.ts';
+import { createPhone, type Phone } from './phone.ts';
 import { createPlaces, type PlaceIds, type Places } from './places.ts';
 import type { AnalysisPort, CapturePort, StorePort } from './ports.ts';
 import { createReadings, type Readings } from './readings.ts';
@@ -32,7 +34,10 @@ export interface App {
   readonly places: Places;
   readonly sources: Sources;
   readonly rounds: Rounds;
+  readonly phone: Phone;
   readonly take: Take;
+  /** Readings picked in a list to be handed over; empty means all. */
+  readonly selection: Live<readonly string[]>;
   /** Kept on this phone, shown under This phone; nothing leaves it. */
   noteError(error: unknown): void;
   today(): string;
@@ -141,7 +146,9 @@ export async function createApp(parts: AppParts): Promise<App> {
     places,
     sources,
     rounds,
+    phone: createPhone(parts.capture, store),
     take,
+    selection: live<readonly string[]>([]),
     noteError,
     today: () => localDay(environment.now()),
     update: parts.update,

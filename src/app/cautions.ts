@@ -1,33 +1,22 @@
-/** Which cautions stand before a recording; each is confirmed once a day. The sentences are in src/text/cautions.ts. */
+/** Cautions that stand before a recording; each is confirmed once a day. Which ones fit is the survey's to say. */
 import type { CautionCode } from '../core/model/judgement.ts';
-import type { SpotKind } from '../core/model/place.ts';
+import { cautionsFor } from '../core/survey/cautions.ts';
 import type { TakePlan } from './take-plan.ts';
 
-const MACHINE_KINDS: readonly SpotKind[] = ['bearing-housing', 'machine-base', 'fan-frame', 'pipe'];
-const HEIGHT_KINDS: readonly SpotKind[] = ['stair', 'footbridge', 'handrail'];
-
-/** Cautions that fit what is about to be done, the gravest first. */
-export function cautionsBefore(plan: Pick<TakePlan, 'spotKind' | 'procedure'>): readonly CautionCode[] {
-  const { spotKind, procedure } = plan;
-  const found: CautionCode[] = [];
-  const atMachine = MACHINE_KINDS.includes(spotKind);
-  if (atMachine && procedure === 'tap') found.push('isolate-and-lock-out', 'stand-by-may-start');
-  if (atMachine || procedure === 'running' || procedure === 'coastdown')
-    found.push('no-loose-phone-near-moving-parts', 'live-parts');
-  if (procedure === 'coastdown') found.push('stay-clear-while-slowing');
-  if (spotKind === 'pipe' && procedure === 'tap') found.push('no-tapping-pressurised-pipe');
-  if (spotKind === 'handrail') found.push('do-not-lean-on-rail');
-  if (HEIGHT_KINDS.includes(spotKind)) found.push('heights');
-  if (spotKind === 'footbridge' || spotKind === 'stair') found.push('leave-when-it-sways');
-  return [...found, 'local-rules-first'];
-}
-
-/** Those not yet confirmed on this day (ISO date). */
-export const unseenCautions = (
-  plan: Pick<TakePlan, 'spotKind' | 'procedure'>,
+/** Those not yet confirmed on this day (ISO date), most pressing first. */
+export function unseenCautions(
+  plan: Pick<TakePlan, 'procedure' | 'spotKind' | 'circumstances'>,
   seen: readonly string[],
   day: string,
-): readonly CautionCode[] => cautionsBefore(plan).filter((code) => !seen.includes(seenMark(code, day)));
+): readonly CautionCode[] {
+  const { machineState, visibleSway } = plan.circumstances;
+  return cautionsFor({
+    procedure: plan.procedure,
+    spotKind: plan.spotKind,
+    machineState,
+    visibleSway,
+  }).filter((code) => !seen.includes(seenMark(code, day)));
+}
 
 /** The list to keep after confirming: marks of other days are forgotten. */
 export const withSeen = (

@@ -5,14 +5,14 @@
 import { live } from './live-state.ts';
 import type { UpdatePort } from './update-port.ts';
 
-/** Held by the tab that records (src/capture); a version must not change under it. */
-export const RECORDER_LOCK = 'recorder';
 /** How often a long-open app looks for a newer version. */
 const LOOK_EVERY_MS = 60 * 60 * 1000;
 
 export interface OfflineParts {
   readonly container: ServiceWorkerContainer | undefined;
   readonly locks: LockManager | undefined;
+  /** Name of the lock held by the tab that records; a version must not change under it. */
+  readonly recorderLock: string;
   readonly reload: () => void;
   readonly isOff: boolean;
   readonly onError: (error: unknown) => void;
@@ -26,7 +26,7 @@ export function createOfflineUpdates(parts: OfflineParts): UpdatePort {
   let isAskedHere = false;
   const isRecording = async () => {
     const held = (await parts.locks?.query())?.held ?? [];
-    return held.some((lock) => lock.name === RECORDER_LOCK);
+    return held.some((lock) => lock.name === parts.recorderLock);
   };
   const start = async () => {
     if (!container) return;

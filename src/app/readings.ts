@@ -30,6 +30,8 @@ export interface Readings {
   edit(entity: string, set: Readonly<Record<string, FieldValue>>, said?: string): Promise<void>;
   trash(ids: readonly string[]): Promise<void>;
   restore(ids: readonly string[]): Promise<void>;
+  /** Where these readings belong from now on; undoable. */
+  setSpot(ids: readonly string[], where: PlaceIds): Promise<void>;
   history(entity: string): Promise<readonly EditFact[]>;
   photos(entity: string): ReturnType<StorePort['photos']>;
   savePhoto: StorePort['savePhoto'];
@@ -39,6 +41,7 @@ export interface ReadingsWords {
   readonly undo: string;
   readonly trashed: (count: number) => string;
   readonly restored: (count: number) => string;
+  readonly spotSet: (count: number) => string;
 }
 
 /** Newest kept analysis: the last redo, else the one made when the reading was taken. */
@@ -105,6 +108,19 @@ export function createReadings(
       notices.show(words.restored(ids.length), {
         action: { label: words.undo, run: () => void mark(ids, true) },
       });
+    },
+    async setSpot(ids, where) {
+      const set = { spot: where.spot ?? null, asset: where.asset ?? null, site: where.site ?? null };
+      const opened = await Promise.all(ids.map((id) => store.openReading(id)));
+      await Promise.all(ids.map((id) => store.edit(id, set)));
+      const undo = () => {
+        for (const former of opened) {
+          if (!former) continue;
+          const { spot = null, asset = null, site = null } = currentPlaceIds(former);
+          void store.edit(former.reading._id, { spot, asset, site });
+        }
+      };
+      notices.show(words.spotSet(ids.length), { action: { label: words.undo, run: undo } });
     },
     history: (entity) => store.history(entity),
     photos: (entity) => store.photos(entity),

@@ -1,7 +1,7 @@
 /** Hash routes: a screen and ids, never a phase of a measurement. Deep links work offline because nothing else is needed. */
 import { PROCEDURES, type Procedure } from '../core/model/analysis.ts';
 import type { EntityKind } from '../core/model/fact.ts';
-import type { SourceKind } from '../core/model/source.ts';
+import { SOURCE_KINDS, type SourceKind } from '../core/model/source.ts';
 
 export const PHONE_PARTS = ['check', 'storage', 'about', 'privacy', 'cautions', 'licences', 'log'] as const;
 export type PhonePart = (typeof PHONE_PARTS)[number];
@@ -27,16 +27,6 @@ export type Route =
   | { readonly screen: 'phone'; readonly part?: PhonePart }
   | { readonly screen: 'pace'; readonly frequencyHz?: number }
   | { readonly screen: 'lost'; readonly hash: string };
-
-const SOURCE_KINDS: readonly SourceKind[] = [
-  'machine',
-  'belt',
-  'mains',
-  'footfall',
-  'wind',
-  'traffic',
-  'band',
-];
 
 const withKind = (kind: EntityKind, id: string) => (id.includes(':') ? id : `${kind}:${id}`);
 const bare = (id: string) => id.slice(id.indexOf(':') + 1);

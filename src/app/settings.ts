@@ -2,6 +2,7 @@
 import { PROCEDURES, type Procedure } from '../core/model/analysis.ts';
 import type { Circumstances, FieldValue } from '../core/model/fact.ts';
 import { SPOT_KINDS, type SpotKind } from '../core/model/place.ts';
+import type { AccelerationUnit, DisplacementUnit, FrequencyUnit, VelocityUnit } from '../text/quantity.ts';
 import { live, type Live } from './live-state.ts';
 import type { StorePort } from './ports.ts';
 
@@ -10,8 +11,10 @@ export type Theme = (typeof THEMES)[number];
 
 export interface Settings {
   readonly theme: Theme;
-  readonly frequencyUnit: 'Hz' | 'rpm';
-  readonly accelerationUnit: 'mps2' | 'g';
+  readonly frequencyUnit: FrequencyUnit;
+  readonly accelerationUnit: AccelerationUnit;
+  readonly velocityUnit: VelocityUnit;
+  readonly displacementUnit: DisplacementUnit;
   readonly lastProcedure: Procedure;
   readonly mounting: Circumstances['mounting'];
   readonly phoneMassKg: number | null;
@@ -26,7 +29,9 @@ export interface Settings {
 export const DEFAULT_SETTINGS: Settings = {
   theme: 'auto',
   frequencyUnit: 'Hz',
-  accelerationUnit: 'mps2',
+  accelerationUnit: 'm/s²',
+  velocityUnit: 'mm/s',
+  displacementUnit: 'µm',
   lastProcedure: 'tap',
   mounting: 'laid',
   phoneMassKg: null,
@@ -65,8 +70,10 @@ export function parseSettings(kept: unknown): Settings {
   const mass = given.phoneMassKg;
   return {
     theme: word('theme', THEMES),
-    frequencyUnit: word('frequencyUnit', ['Hz', 'rpm']),
-    accelerationUnit: word('accelerationUnit', ['mps2', 'g']),
+    frequencyUnit: word('frequencyUnit', ['Hz', 'r/min']),
+    accelerationUnit: word('accelerationUnit', ['m/s²', 'g', 'mg']),
+    velocityUnit: word('velocityUnit', ['mm/s', 'm/s', 'in/s']),
+    displacementUnit: word('displacementUnit', ['µm', 'mm', 'mil']),
     lastProcedure: word('lastProcedure', PROCEDURES),
     mounting: word('mounting', ['laid', 'strapped', 'putty', 'clamp', 'magnet', 'unknown']),
     phoneMassKg: typeof mass === 'number' && mass > 0 && mass < 2 ? mass : null,

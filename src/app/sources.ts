@@ -1,6 +1,6 @@
 /** Sources are entities whose fields are those of a Source, laid flat, and the place they belong to. */
 import type { Entity, FieldValue } from '../core/model/fact.ts';
-import type { Source, SourceKind } from '../core/model/source.ts';
+import type { Source } from '../core/model/source.ts';
 import type { StorePort } from './ports.ts';
 import { textField } from './places.ts';
 
@@ -31,6 +31,8 @@ const SOURCE_FIELDS = [
   'toleranceRatio',
   'speedRpm',
   'bladeCount',
+  'toothCount',
+  'bearing',
   'orders',
   'cylinders',
   'twoStroke',
@@ -42,6 +44,7 @@ const SOURCE_FIELDS = [
   'activity',
   'paceHz',
   'peopleCount',
+  'stepCount',
   'widthM',
   'speedMps',
   'shape',
@@ -51,6 +54,7 @@ const SOURCE_FIELDS = [
   'traffic',
   'frequencyHz',
   'harmonics',
+  'through',
 ] as const;
 
 export function createSources(
@@ -120,13 +124,3 @@ function fieldsOf(source: Source, place: { readonly asset?: string; readonly sit
 
 const withoutNulls = (fields: Readonly<Record<string, FieldValue>>): Record<string, FieldValue> =>
   Object.fromEntries(Object.entries(fields).filter(([, value]) => value !== null));
-
-export const SOURCE_KINDS: readonly SourceKind[] = [
-  'machine',
-  'footfall',
-  'mains',
-  'belt',
-  'wind',
-  'traffic',
-  'band',
-];

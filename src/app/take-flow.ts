@@ -7,6 +7,7 @@ import type { ReadingFact } from '../core/model/fact.ts';
 import type { Problem } from '../core/model/problem.ts';
 import type { InterruptionCode, Recording } from '../core/model/recording.ts';
 import { live, type Live } from './live-state.ts';
+import { lastCheck } from './phone.ts';
 import type { AnalysisPort, CapturePort, RecoveredJournal, SessionState, StorePort } from './ports.ts';
 import type { Rounds } from './rounds.ts';
 import { sessionOptions, type TakePlan } from './take-plan.ts';
@@ -141,7 +142,7 @@ async function readingDraft(
   const isFile = recording.sensor.source === 'file';
   const { spot, asset, site } = plan.where;
   const round = isFile ? undefined : await parts.rounds.forNewReading(now, site);
-  const check = await store.getSetting('check');
+  const check = await lastCheck(store);
   const procedure: Procedure = analysis.procedure;
   return {
     recordedAt: recording.startedAt ?? now.toISOString(),
@@ -156,7 +157,7 @@ async function readingDraft(
     phone: {
       device: store.device,
       userAgent: environment.userAgent,
-      ...(check && !isFile ? { check: check as unknown as NonNullable<Draft['phone']['check']> } : {}),
+      ...(check && !isFile ? { check } : {}),
     },
     sensor: recording.sensor,
     analysis,

@@ -54,12 +54,12 @@ export function TextField(
       <input
         id={id}
         class={styles.input}
-        type={props.type ?? 'text'}
         value={props.value}
         autocomplete="off"
         required={props.required ?? false}
         autofocus={props.focus ?? false}
         {...(props.suggestions?.length ? { list: `${id}-list` } : {})}
+        {...({ type: props.type ?? 'text' } as { type: 'text' })}
         {...described(id, props)}
         onInput={(event) => props.onInput(event.currentTarget.value)}
       />

@@ -17,7 +17,6 @@ export function ReadingRow(props: {
   const { app, reading } = props;
   const { frequencyUnit } = useLive(app.settings);
   const name = useReadingName(app, reading);
-  const unit = frequencyUnit === 'rpm' ? 'r/min' : 'Hz';
   const note = [
     dayAndTime(reading.recordedAt),
     screenText.procedures[reading.procedure].verb,
@@ -34,7 +33,7 @@ export function ReadingRow(props: {
           <span class="note">{screenText.readings.noFrequency}</span>
         ) : (
           <>
-            <strong>{formatFrequency(reading.frequencyHz, reading.frequencySdHz, unit)}</strong>
+            <strong>{formatFrequency(reading.frequencyHz, reading.frequencySdHz, frequencyUnit)}</strong>
             {reading.dampingRatio !== undefined && (
               <span class="note" style={{ display: 'block' }}>
                 {formatDamping(reading.dampingRatio, reading.dampingRatioSd)}

@@ -1,0 +1,82 @@
+/** What shakes things here: a list, and the way to add one by kind. */
+import type { App } from '../../../app/app.ts';
+import type { KnownSource } from '../../../app/sources.ts';
+import { SOURCE_KINDS } from '../../../core/model/source.ts';
+import { screenText } from '../../../text/screens.ts';
+import { sourceKindName } from '../../../text/sources.ts';
+import { Page } from '../../components/page.tsx';
+import { Row, Rows } from '../../components/rows.tsx';
+import { useLoaded } from '../../use-loaded.ts';
+import { IconAdd } from '../../components/icons.tsx';
+import styles from './sources-screen.module.css';
+
+const text = screenText.sources;
+
+export function SourcesScreen({ app }: { readonly app: App }) {
+  const sources = useLoaded(app.store, () => app.sources.list(), []);
+  return (
+    <Page title={text.title}>
+      <p class="quiet">{text.lead}</p>
+      {sources && sources.length > 0 && <SourceRows app={app} sources={sources} />}
+      <section class="stack">
+        <h2>{text.add}</h2>
+        <ul class={styles.kinds}>
+          {SOURCE_KINDS.map((kind) => (
+            <li key={kind}>
+              <a class={styles.kind} href={app.navigation.href({ screen: 'source', id: 'new', kind })}>
+                <IconAdd />
+                <span>
+                  <strong>{sourceKindName(kind)}</strong>
+                  <span class="note">{text.kindNotes[kind]}</span>
+                </span>
+              </a>
+            </li>
+          ))}
+        </ul>
+      </section>
+    </Page>
+  );
+}
+
+export function SourceRows(props: {
+  readonly app: App;
+  readonly sources: readonly KnownSource[];
+  readonly current?: string;
+}) {
+  const { app } = props;
+  const tree = useLoaded(app.store, () => app.places.tree(), []);
+  const placeName = (entry: KnownSource) => {
+    const assets = [...(tree?.sites.flatMap((site) => site.assets) ?? []), ...(tree?.looseAssets ?? [])];
+    const asset = assets.find((place) => place.id === entry.asset);
+    const site = tree?.sites.find((place) => place.id === entry.site);
+    return asset?.name ?? site?.name ?? text.everywhere;
+  };
+  return (
+    <Rows label={text.title}>
+      {props.sources.map((entry) => (
+        <Row
+          key={entry.id}
+          href={app.navigation.href({ screen: 'source', id: entry.id })}
+          title={entry.source.name}
+          note={`${sourceKindName(entry.source.kind)} · ${placeName(entry)}`}
+          isCurrent={entry.id === props.current}
+        />
+      ))}
+    </Rows>
+  );
+}
+
+/** Beside the form, on a laptop. */
+export function SourceList({ app, current }: { readonly app: App; readonly current?: string }) {
+  const sources = useLoaded(app.store, () => app.sources.list(), []);
+  return (
+    <nav class="stack" aria-label={text.title}>
+      <h2>{text.title}</h2>
+      {sources?.length === 0 && <p class="quiet">{text.none}</p>}
+      {sources && sources.length > 0 && (
+        <SourceRows app={app} sources={sources} {...(current ? { current } : {})} />
+      )}
+      <a href={app.navigation.href({ screen: 'sources' })}>{text.add}</a>
+    </nav>
+  );
+}
