@@ -1,6 +1,5 @@
 /** The app without a screen: ports in, use cases out. Screens call these and nothing else; main.tsx plugs in the edges, tests plug in fakes. */
 import type { Procedure } from '../core/model/analysis.ts';
-import { parseSource } from '../core/survey/parse-sources.ts';
 import type { Outcome } from '../core/model/outcome.ts';
 import type { Problem } from '../core/model/problem.ts';
 import type { Recording } from '../core/model/recording.ts';
@@ -99,9 +98,12 @@ export async function createApp(parts: AppParts): Promise<App> {
   const notices = createNotices();
   const places = createPlaces(store);
   const rounds = createRounds(store, settings);
-  const sources = createSources(store, (given) => {
-    const parsed = parseSource(given);
-    return parsed.ok ? parsed.value : undefined;
+  const sources = createSources(store, async () => {
+    const { parseSource } = await import('../core/survey/parse-sources.ts');
+    return (given) => {
+      const parsed = parseSource(given);
+      return parsed.ok ? parsed.value : undefined;
+    };
   });
   const readings = createReadings(store, parts.analysis, places, notices, screenText.readings);
   const { lastProcedure, mounting } = settings.get();

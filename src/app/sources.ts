@@ -57,20 +57,20 @@ const SOURCE_FIELDS = [
   'through',
 ] as const;
 
-export function createSources(
-  store: StorePort,
-  parseSource: (given: unknown) => Source | undefined,
-): Sources {
-  const known = (entity: Entity): KnownSource | undefined => {
+type ParseSource = (given: unknown) => Source | undefined;
+
+export function createSources(store: StorePort, loadParser: () => Promise<ParseSource>): Sources {
+  const known = (entity: Entity, parseSource: ParseSource): KnownSource | undefined => {
     const source = parseSource(sourceFields(entity));
     const asset = textField(entity, 'asset');
     const site = textField(entity, 'site');
     return source && { id: entity.id, source, ...(asset ? { asset } : {}), ...(site ? { site } : {}) };
   };
   const list = async () => {
+    const parse = await loadParser();
     const entities = (await store.entities('source')).filter((entity) => !entity.trashed);
     return entities
-      .map(known)
+      .map((entity) => known(entity, parse))
       .filter((source): source is KnownSource => source !== undefined)
       .sort((a, b) => a.source.name.localeCompare(b.source.name, undefined, { numeric: true }));
   };
@@ -81,7 +81,7 @@ export function createSources(
     },
     async open(id) {
       const entity = await store.entity(id);
-      return entity && !entity.trashed ? known(entity) : undefined;
+      return entity && !entity.trashed ? known(entity, await loadParser()) : undefined;
     },
     async save(source, place, id) {
       const fields = fieldsOf(source, place);

@@ -2,13 +2,14 @@ import { useState } from 'preact/hooks';
 import type { App } from '../../../app/app.ts';
 import type { Route } from '../../../app/route.ts';
 import { SPOT_KINDS, type SpotKind } from '../../../core/model/place.ts';
+import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
 import { Button } from '../../components/button.tsx';
 import { Choice } from '../../components/choice.tsx';
 import { Dialog } from '../../components/dialog.tsx';
 import { SelectField, TextField } from '../../components/field.tsx';
 
-const text = screenText.places;
+const text = officeText.places;
 
 type Kind = 'site' | 'asset' | 'spot';
 

@@ -5,6 +5,7 @@ import type { Asset, Spot } from '../../../app/places.ts';
 import type { NextStep } from '../../../core/model/asset-verdict.ts';
 import { INDICATIVE_LINE } from '../../../text/indicative.ts';
 import { formatDamping, formatFrequency } from '../../../text/quantity.ts';
+import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
 import { forcingName } from '../../../text/sources.ts';
 import { verdictText, verdictWord } from '../../../text/verdicts.ts';
@@ -23,7 +24,7 @@ import { EditPlaceDialog } from './edit-place-dialog.tsx';
 import { loadAsset, type LoadedAsset } from './load-asset.ts';
 import { SpotRows } from './place-rows.tsx';
 
-const text = screenText.places;
+const text = officeText.places;
 
 export function AssetScreen({ app, id }: { readonly app: App; readonly id: string }) {
   const loaded = useLoaded(
@@ -141,9 +142,9 @@ function Pooled(props: { readonly app: App; readonly asset: Asset; readonly load
         <ul class="stack stack-tight" aria-label={text.modesFound}>
           {modes.map((mode, index) => (
             <li key={index}>
-              <strong>{formatFrequency(mode.frequencyHz.value, mode.frequencyHz.sd, frequencyUnit)}</strong>{' '}
+              <strong>{formatFrequency(mode.frequencyHz, mode.frequencySdHz, frequencyUnit)}</strong>{' '}
               <span class="note">
-                {formatDamping(mode.dampingRatio.value, mode.dampingRatio.sd)} ·{' '}
+                {formatDamping(mode.dampingRatio, mode.dampingRatioSd)} ·{' '}
                 {text.inReadings(mode.readings.length)}
               </span>
             </li>

@@ -1,7 +1,7 @@
 /** Sites, assets and spots at a glance, and the way to add one. */
 import { useState } from 'preact/hooks';
 import type { App } from '../../../app/app.ts';
-import { screenText } from '../../../text/screens.ts';
+import { officeText } from '../../../text/office-screens.ts';
 import { BottomBar } from '../../components/bottom-bar.tsx';
 import { Button } from '../../components/button.tsx';
 import { IconAdd } from '../../components/icons.tsx';
@@ -10,7 +10,7 @@ import { useLoaded } from '../../use-loaded.ts';
 import { AddPlaceDialog } from './add-place-dialog.tsx';
 import { isEmptyTree, PlaceTreeRows } from './place-rows.tsx';
 
-const text = screenText.places;
+const text = officeText.places;
 
 export function AssetsScreen({ app }: { readonly app: App }) {
   const tree = useLoaded(app.store, () => app.places.tree(), []);

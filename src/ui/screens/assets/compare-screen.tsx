@@ -8,6 +8,7 @@ import { changeSentence } from '../../../text/change.ts';
 import { INDICATIVE_LINE } from '../../../text/indicative.ts';
 import { formatNumber } from '../../../text/number.ts';
 import { formatDamping, formatFrequency, formatVelocity } from '../../../text/quantity.ts';
+import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
 import { IndicativeLine } from '../../components/indicative-line.tsx';
 import { Page } from '../../components/page.tsx';
@@ -17,7 +18,7 @@ import { useLoaded } from '../../use-loaded.ts';
 import { LostScreen } from '../lost-screen.tsx';
 import styles from './compare-screen.module.css';
 
-const text = screenText.compare;
+const text = officeText.compare;
 
 export function CompareScreen(props: { readonly app: App; readonly first: string; readonly second: string }) {
   const { app } = props;

@@ -3,13 +3,14 @@ import type { App } from '../../../app/app.ts';
 import { textField, spotKindOf } from '../../../app/places.ts';
 import type { Entity, FieldValue } from '../../../core/model/fact.ts';
 import { SPOT_KINDS } from '../../../core/model/place.ts';
+import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
 import { Button } from '../../components/button.tsx';
 import { Dialog } from '../../components/dialog.tsx';
 import { SelectField, TextField } from '../../components/field.tsx';
 import { useLoaded } from '../../use-loaded.ts';
 
-const text = screenText.places;
+const text = officeText.places;
 
 /** Name, and where it belongs; moving to the trash can be undone from the notice. */
 export function EditPlaceDialog(props: {

@@ -2,13 +2,14 @@ import { useState } from 'preact/hooks';
 import type { App } from '../../../app/app.ts';
 import type { Asset, PlaceIds, PlaceTree, Spot } from '../../../app/places.ts';
 import { SPOT_KINDS, type SpotKind } from '../../../core/model/place.ts';
+import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
 import { Button } from '../../components/button.tsx';
 import { Dialog } from '../../components/dialog.tsx';
 import { SelectField, TextField } from '../../components/field.tsx';
 import { useLoaded } from '../../use-loaded.ts';
 
-const text = screenText.places;
+const text = officeText.places;
 
 /** Picks a known spot, or names a new one on the way: site and asset come along, or are typed once. */
 export function PickSpotDialog(props: {

@@ -1,9 +1,10 @@
 import type { App } from '../../../app/app.ts';
 import type { Asset, PlaceTree, Spot } from '../../../app/places.ts';
+import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
 import { Row, Rows } from '../../components/rows.tsx';
 
-const text = screenText.places;
+const text = officeText.places;
 
 export const AssetRows = (props: {
   readonly app: App;

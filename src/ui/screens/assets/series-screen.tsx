@@ -8,6 +8,7 @@ import { problemSentence } from '../../../text/problems.ts';
 import { INDICATIVE_LINE } from '../../../text/indicative.ts';
 import { withUncertainty } from '../../../text/number.ts';
 import { formatAcceleration, formatFrequency } from '../../../text/quantity.ts';
+import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
 import { LinkButton } from '../../components/button.tsx';
 import { Choice } from '../../components/choice.tsx';
@@ -20,7 +21,7 @@ import { useLive } from '../../use-live.ts';
 import { useLoaded } from '../../use-loaded.ts';
 import styles from './compare-screen.module.css';
 
-const text = screenText.series;
+const text = officeText.series;
 
 export function SeriesScreen({ app, id }: { readonly app: App; readonly id: string }) {
   const visits = useLoaded(app.store, () => app.places.visits(id), [id]);
@@ -51,7 +52,7 @@ export function SeriesScreen({ app, id }: { readonly app: App; readonly id: stri
             procedure: kind === 'speed' ? 'running' : 'tap',
           })}
         >
-          {screenText.places.takeHere}
+          {officeText.places.takeHere}
         </LinkButton>
       </div>
       {kind === 'speed' ? (

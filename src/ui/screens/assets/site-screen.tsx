@@ -1,5 +1,6 @@
 import { useState } from 'preact/hooks';
 import type { App } from '../../../app/app.ts';
+import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
 import { BottomBar } from '../../components/bottom-bar.tsx';
 import { Button } from '../../components/button.tsx';
@@ -12,7 +13,7 @@ import { AddPlaceDialog } from './add-place-dialog.tsx';
 import { EditPlaceDialog } from './edit-place-dialog.tsx';
 import { AssetRows } from './place-rows.tsx';
 
-const text = screenText.places;
+const text = officeText.places;
 
 /** A site: its assets and what shakes them all. */
 export function SiteScreen({ app, id }: { readonly app: App; readonly id: string }) {

@@ -6,6 +6,7 @@ import type { OpenedReading, ReadingSummary } from '../../../app/ports.ts';
 import { currentAnalysis } from '../../../app/readings.ts';
 import { visitChange, type Visit as SurveyVisit } from '../../../app/survey-desk.ts';
 import { INDICATIVE_LINE } from '../../../text/indicative.ts';
+import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
 import { changeSentence } from '../../../text/change.ts';
 import { BottomBar } from '../../components/bottom-bar.tsx';
@@ -22,7 +23,7 @@ import { ReadingRow } from '../readings/reading-row.tsx';
 import { EditPlaceDialog } from './edit-place-dialog.tsx';
 import { VisitChart, type Visit } from './visit-chart.tsx';
 
-const text = screenText.places;
+const text = officeText.places;
 
 export function SpotScreen({ app, id }: { readonly app: App; readonly id: string }) {
   const { frequencyUnit } = useLive(app.settings);

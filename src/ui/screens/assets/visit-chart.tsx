@@ -2,7 +2,7 @@
 import { STANDARD_DEVIATIONS_95 } from '../../../core/model/interval.ts';
 import { linearTicks } from '../../../core/picture/linear-ticks.ts';
 import { formatDamping, formatFrequency, toUnit, type FrequencyUnit } from '../../../text/quantity.ts';
-import { screenText } from '../../../text/screens.ts';
+import { officeText } from '../../../text/office-screens.ts';
 import { dayAndTime } from '../../day-and-time.ts';
 import styles from './visit-chart.module.css';
 
@@ -15,7 +15,7 @@ export interface Visit {
   readonly dampingRatioSd: number;
 }
 
-const text = screenText.places;
+const text = officeText.places;
 const WIDTH = 340;
 const HEIGHT = 180;
 const LEFT = 48;

@@ -1,10 +1,11 @@
 /** Hand over: readings in and out of this phone. */
 import type { App } from '../../../app/app.ts';
+import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
 import { FileButton } from '../../components/file-button.tsx';
 import { Page } from '../../components/page.tsx';
 
-const text = screenText.handOver;
+const text = officeText.handOver;
 
 export function HandOverScreen({ app }: { readonly app: App; readonly reading?: string }) {
   return (

@@ -2,6 +2,7 @@
 import { useEffect, useRef, useState } from 'preact/hooks';
 import type { App } from '../../../app/app.ts';
 import { formatNumber } from '../../../text/number.ts';
+import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
 import { BottomBar } from '../../components/bottom-bar.tsx';
 import { Button } from '../../components/button.tsx';
@@ -11,7 +12,7 @@ import { Page } from '../../components/page.tsx';
 import { parseNumber } from '../../parse-number.ts';
 import styles from './pace-screen.module.css';
 
-const text = screenText.pace;
+const text = officeText.pace;
 
 /** Slowest and fastest steady walk worth trying, steps a second (walking 1.6-2.4 Hz: ISO 10137:2007 A.1, from memory; some room beside). */
 const WALKABLE_HZ = [1.2, 2.6] as const;

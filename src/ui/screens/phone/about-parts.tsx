@@ -2,11 +2,11 @@ import type { App } from '../../../app/app.ts';
 import { CAUTION_CODES } from '../../../core/model/judgement.ts';
 import { cautionSentence } from '../../../text/cautions.ts';
 import { INDICATIVE_LINE } from '../../../text/indicative.ts';
-import { screenText } from '../../../text/screens.ts';
+import { officeText } from '../../../text/office-screens.ts';
 import { IndicativeLine } from '../../components/indicative-line.tsx';
 import { FactList } from './fact-list.tsx';
 
-const text = screenText.phone;
+const text = officeText.phone;
 
 /** What it is, in which version. */
 export const AboutPart = ({ app }: { readonly app: App }) => (

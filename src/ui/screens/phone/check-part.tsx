@@ -6,7 +6,7 @@ import type { Problem } from '../../../core/model/problem.ts';
 import { formatNumber } from '../../../text/number.ts';
 import { problemSentence } from '../../../text/problems.ts';
 import { formatFrequencyRange } from '../../../text/quantity.ts';
-import { screenText } from '../../../text/screens.ts';
+import { officeText } from '../../../text/office-screens.ts';
 import { BottomBar } from '../../components/bottom-bar.tsx';
 import { Button } from '../../components/button.tsx';
 import { ProgressLine } from '../../components/progress-line.tsx';
@@ -14,7 +14,7 @@ import { dayAndTime } from '../../day-and-time.ts';
 import { useLoaded } from '../../use-loaded.ts';
 import { FactList } from './fact-list.tsx';
 
-const text = screenText.phone.check;
+const text = officeText.phone.check;
 
 export function CheckPart({ app }: { readonly app: App }) {
   const [runs, setRuns] = useState(0);

@@ -1,10 +1,10 @@
 import type { App } from '../../../app/app.ts';
-import { screenText } from '../../../text/screens.ts';
+import { officeText } from '../../../text/office-screens.ts';
 import { Button } from '../../components/button.tsx';
 import { dayAndTime } from '../../day-and-time.ts';
 import { useLoaded } from '../../use-loaded.ts';
 
-const text = screenText.phone.log;
+const text = officeText.phone.log;
 
 /** Errors of this phone, newest first; they leave it only when the person copies them. */
 export function LogPart({ app }: { readonly app: App }) {

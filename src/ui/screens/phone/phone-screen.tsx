@@ -2,6 +2,7 @@
 import type { App } from '../../../app/app.ts';
 import type { PhonePart } from '../../../app/route.ts';
 import { THEMES } from '../../../app/settings.ts';
+import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
 import { Choice } from '../../components/choice.tsx';
 import { Page } from '../../components/page.tsx';
@@ -12,7 +13,7 @@ import { CheckPart } from './check-part.tsx';
 import { LogPart } from './log-part.tsx';
 import { StoragePart } from './storage-part.tsx';
 
-const text = screenText.phone;
+const text = officeText.phone;
 
 export function PhoneScreen({ app, part }: { readonly app: App; readonly part?: PhonePart }) {
   if (!part) return <Overview app={app} />;

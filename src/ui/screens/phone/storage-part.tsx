@@ -1,5 +1,6 @@
 /** Where readings are kept, how safe that is, and how to get a copy out. */
 import type { App } from '../../../app/app.ts';
+import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
 import { formatNumber } from '../../../text/number.ts';
 import { Button, LinkButton } from '../../components/button.tsx';
@@ -8,7 +9,7 @@ import { useLoaded } from '../../use-loaded.ts';
 import { FactList } from './fact-list.tsx';
 import { useState } from 'preact/hooks';
 
-const text = screenText.phone.storage;
+const text = officeText.phone.storage;
 
 export function StoragePart({ app }: { readonly app: App }) {
   const offline = useLive(app.update.state);

@@ -2,11 +2,11 @@ import { useMemo } from 'preact/hooks';
 import type { Forcing } from '../../../core/model/source.ts';
 import type { LadderContent } from '../../../core/picture/ladder-content.ts';
 import { formatFrequencyRange } from '../../../text/quantity.ts';
-import { screenText } from '../../../text/screens.ts';
+import { officeText } from '../../../text/office-screens.ts';
 import { forcingName, forcingOrigin } from '../../../text/sources.ts';
 import { Ladder } from '../../charts/ladder.tsx';
 
-const text = screenText.sources;
+const text = officeText.sources;
 
 /** The forcings of one source on a small ladder, with the same in a list: name, band, and where the numbers come from. */
 export function ForcingLadder({ forcings }: { readonly forcings: readonly Forcing[] }) {

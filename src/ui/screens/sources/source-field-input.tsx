@@ -1,8 +1,9 @@
+import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
 import { CheckField, NumberField, SelectField, TextField } from '../../components/field.tsx';
 import type { SourceField } from './source-fields.ts';
 
-const text = screenText.sources;
+const text = officeText.sources;
 
 type FieldKey = keyof typeof text.fields;
 

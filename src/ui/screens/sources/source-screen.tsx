@@ -7,6 +7,7 @@ import { currentPlaceIds } from '../../../app/readings.ts';
 import { KNOWN_BY, type Source } from '../../../core/model/source.ts';
 import { forcingsOf, parseSource } from '../../../app/survey-desk.ts';
 import { problemSentence } from '../../../text/problems.ts';
+import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
 import { knownByName, sourceKindName } from '../../../text/sources.ts';
 import { BottomBar } from '../../components/bottom-bar.tsx';
@@ -20,7 +21,7 @@ import { draftToData, emptyDraft, sourceToDraft, type SourceDraft } from './sour
 import { HAS_KNOWN_BY, SOURCE_FIELDS } from './source-fields.ts';
 import { SourceFieldInput } from './source-field-input.tsx';
 
-const text = screenText.sources;
+const text = officeText.sources;
 
 type SourceRoute = Route & { readonly screen: 'source' };
 

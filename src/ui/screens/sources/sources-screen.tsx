@@ -2,7 +2,7 @@
 import type { App } from '../../../app/app.ts';
 import type { KnownSource } from '../../../app/sources.ts';
 import { SOURCE_KINDS } from '../../../core/model/source.ts';
-import { screenText } from '../../../text/screens.ts';
+import { officeText } from '../../../text/office-screens.ts';
 import { sourceKindName } from '../../../text/sources.ts';
 import { Page } from '../../components/page.tsx';
 import { Row, Rows } from '../../components/rows.tsx';
@@ -10,7 +10,7 @@ import { useLoaded } from '../../use-loaded.ts';
 import { IconAdd } from '../../components/icons.tsx';
 import styles from './sources-screen.module.css';
 
-const text = screenText.sources;
+const text = officeText.sources;
 
 export function SourcesScreen({ app }: { readonly app: App }) {
   const sources = useLoaded(app.store, () => app.sources.list(), []);
