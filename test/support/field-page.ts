@@ -4,7 +4,11 @@
 import { createCapture } from '../../src/capture/create-capture.ts';
 import { openStore, type Store } from '../../src/store/open-store.ts';
 import { migrate, MIGRATIONS } from '../../src/store/schema.ts';
-import { openDB } from 'idb';
+import { deleteDB, openDB } from 'idb';
+import { rowOf } from '../../src/store/fact-row.ts';
+import type { ReadingFact } from '../../src/core/model/fact.ts';
+import { encodeRaw } from '../../src/core/packet/raw-recording.ts';
+import { gzip, ownBuffer, sha256Of } from '../../src/store/raw-bytes.ts';
 import type { SessionOptions, SessionState } from '../../src/app/ports.ts';
 import { readingDraft, sampleRecording } from './reading-draft.ts';
 
@@ -12,7 +16,16 @@ let store: Store | undefined;
 let capture: ReturnType<typeof createCapture> | undefined;
 const heard: string[] = [];
 
+let longestTaskMs = 0;
+
 const field = {
+  /** Notes the longest time that the page was busy, from now on. */
+  watchTasks() {
+    new PerformanceObserver((list) => {
+      for (const { duration } of list.getEntries()) longestTaskMs = Math.max(longestTaskMs, duration);
+    }).observe({ type: 'longtask' });
+  },
+  longestTaskMs: () => longestTaskMs,
   heard,
   readingDraft,
   sampleRecording,
@@ -48,6 +61,40 @@ const field = {
         resolve(state);
       });
     });
+  },
+  /** Samples that do not shrink: a megabyte stays one. */
+  noisyRecording(count: number) {
+    const recording = sampleRecording(count);
+    for (const axis of recording.accelerationMps2) axis.forEach((_, i) => (axis[i] = 10 * Math.random()));
+    return recording;
+  },
+  async deleteDatabase() {
+    store?.close();
+    await deleteDB('thrumbook');
+  },
+  /** What version 1 of the program left behind: readings without summaries. */
+  async fillVersion1(count: number) {
+    const database = await field.openAsVersion(1);
+    const raw = encodeRaw(sampleRecording(600));
+    const bytes = ownBuffer(await gzip(raw));
+    const rawSha256 = await sha256Of(raw);
+    const change = database.transaction(['facts', 'raw', 'log'], 'readwrite');
+    for (let i = 0; i < count; i += 1) {
+      const ulid = `01J${String(i).padStart(23, '0')}`;
+      const fact: ReadingFact = {
+        ...readingDraft(),
+        _id: `reading:${ulid}`,
+        v: 1,
+        kind: 'reading',
+        rawSha256,
+        rawBytes: raw.length,
+      };
+      void change.objectStore('facts').add(rowOf(fact));
+      void change.objectStore('raw').add({ id: fact._id, bytes });
+      void change.objectStore('log').add({ id: fact._id });
+    }
+    await change.done;
+    database.close();
   },
   /** The database as an earlier version of the program left it. */
   async openAsVersion(version: number) {
