@@ -12,6 +12,9 @@ export interface Zones {
 /** Largest damping ratio at which the displacement response has a lower half-power point: sin(22.5 degrees). */
 const LARGEST_HALF_POWER_DAMPING = Math.sin(Math.PI / 8);
 
+/** A forcing on the edge of a half-power band is inside it, rounding or not. */
+const EDGE_MARGIN_RATIO = 1e-9;
+
 /**
  * Half-power edges of the velocity response, where the power taken in falls to a half: sqrt(1 + z²) -+ z, exact for every damping
  * (reference: mobility has f2 - f1 = 2 z fn and f1 f2 = fn²).
@@ -47,8 +50,8 @@ export function zonesFor(kind: AmplificationKind, dampingRatio: number, threshol
       Math.max(1 + thresholds.coincidentRatio, velocity[1]),
     ],
     apart: [
-      Math.min(thresholds.apartBelowRatio, velocity[0], response[0]),
-      Math.max(thresholds.apartAboveRatio, velocity[1], response[1]),
+      Math.min(thresholds.apartBelowRatio, Math.min(velocity[0], response[0]) * (1 - EDGE_MARGIN_RATIO)),
+      Math.max(thresholds.apartAboveRatio, Math.max(velocity[1], response[1]) * (1 + EDGE_MARGIN_RATIO)),
     ],
   };
 }
