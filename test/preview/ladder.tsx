@@ -1,9 +1,9 @@
 /** Development only: ladders of invented content, in every theme (?theme=dark). Never shipped. */
+import '../../src/ui/styles/index.css';
 import { render } from 'preact';
 import { useState } from 'preact/hooks';
 import type { LadderContent } from '../../src/core/picture/ladder-content.ts';
 import { Ladder } from '../../src/ui/charts/ladder.tsx';
-import '../../src/ui/styles/index.css';
 import { LADDER_EXAMPLES } from '../support/ladder-examples.ts';
 
 document.documentElement.dataset.theme = new URLSearchParams(location.search).get('theme') ?? 'light';

@@ -25,7 +25,7 @@ export interface LadderSize {
 /** Rails must leave room for four digits; the rest are proportions tried on 328, 400 and 560 px (our own, 2026-12). */
 const RAIL_GAP_TEXTS = 3.2;
 const LANE_TEXTS = 0.85;
-const LABEL_SHARE = 0.36;
+const LABEL_SHARE = 0.4;
 const LABEL_SHARE_WITHOUT_MODES = 0.46;
 
 export const ladderColumns = (

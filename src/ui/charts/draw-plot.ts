@@ -11,6 +11,8 @@ export interface DrawnPlot {
   setRange(range: Interval): void;
   zoom(factor: number): void;
   resize(widthPx: number): void;
+  /** Draws a line or leaves it out, by its index. */
+  show(seriesIndex: number, isShown: boolean): void;
   /** Moves the cursor to a sample; undefined takes it away. */
   pointAt(index: number | undefined): void;
   pointed(): number | undefined;
@@ -222,6 +224,9 @@ export function drawPlot(
     setRange,
     zoom: (factor) => setRange(movedRange(range, spec.wholeX, { factor }, spec.isLogX)),
     resize: (widthPx) => plot.setSize({ width: widthPx, height: size.heightPx }),
+    show: (index, isShown) => {
+      if (plot.series[index + 1]?.show !== isShown) plot.setSeries(index + 1, { show: isShown });
+    },
     pointAt: (index) => {
       const value = index === undefined ? undefined : plot.data[0][index];
       const left = value === undefined ? -10 : plot.valToPos(value, 'x');

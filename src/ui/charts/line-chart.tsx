@@ -21,6 +21,8 @@ export interface LineChartProps {
   /** What stands at a sample, in words. */
   readonly pointText: (index: number) => string;
   readonly table?: TableContent;
+  /** Labels of lines that are not drawn. */
+  readonly hidden?: ReadonlySet<string>;
   /** A view shared with another chart. */
   readonly range?: Interval | undefined;
   readonly onRange?: (range: Interval) => void;
@@ -64,6 +66,7 @@ export function LineChart(props: LineChartProps) {
             latest.current.onRange?.(range);
           },
         });
+        spec.series.forEach(({ label }, i) => plot.current?.show(i, !latest.current.hidden?.has(label)));
         const wanted = latest.current.range ?? before;
         if (wanted && !isSame(wanted, spec.wholeX)) plot.current.setRange(wanted);
       };
@@ -85,6 +88,10 @@ export function LineChart(props: LineChartProps) {
     const { range } = props;
     if (range && plot.current && !isSame(range, plot.current.range())) plot.current.setRange(range);
   }, [props.range]);
+
+  useEffect(() => {
+    spec.series.forEach(({ label }, index) => plot.current?.show(index, !props.hidden?.has(label)));
+  }, [props.hidden, spec]);
 
   const whole = () => plot.current?.setRange(spec.wholeX);
   const move = (by: number) => {

@@ -27,31 +27,49 @@ export interface ReadingView {
   readonly place: { readonly site?: string; readonly asset?: string; readonly spot?: string };
   /** Sources valid for this reading. */
   readonly sources: readonly NamedSource[];
-  /** Of the current analysis: the newest result, else the first analysis. */
-  readonly judgement: Judgement;
   readonly photos: readonly ReadingPhoto[];
   readonly history: readonly EditFact[];
+  /** Pure and quick: called on every move of a slider with a changed analysis or changed sources. */
+  readonly judge: (analysis: Analysis, sources: readonly Source[]) => Judgement;
 }
+
+/** The newest redone analysis, else the first one. */
+export const currentAnalysis = (view: ReadingView): Analysis =>
+  view.results.at(-1)?.analysis ?? view.reading.analysis;
 
 export type OpenedView =
   | { readonly state: 'open'; readonly view: ReadingView }
   | { readonly state: 'missing' }
   /** Made by a newer version of the program: kept, forwarded, not readable here. */
-  | { readonly state: 'newer'; readonly version: number };
+  | { readonly state: 'newer' };
 
 /** What the reading screen can ask for. */
 export interface ReadingUseCases {
   open(id: string): Promise<OpenedView>;
-  /** Called when something about this reading changed: open it again. */
-  subscribe(id: string, listener: () => void): () => void;
-  /** Pictures of the current analysis, made in the worker from the stored recording. */
-  pictures(view: ReadingView, signal: AbortSignal): Promise<Outcome<AnalysisResult>>;
-  /** Pure and quick: called on every move of a slider with a changed analysis or changed sources. */
-  judge(view: ReadingView, analysis: Analysis, sources: readonly Source[]): Judgement;
+  /** Called when something changed: open it again. */
+  subscribe(listener: () => void): () => void;
+  /** Made in the worker from the stored recording; never stored. */
+  analyse(
+    view: ReadingView,
+    settings: AnalysisSettings,
+    signal: AbortSignal,
+  ): Promise<Outcome<AnalysisResult>>;
+  keepAnalysis(id: string, analysis: Analysis): Promise<void>;
   edit(id: string, set: Readonly<Record<string, FieldValue>>): Promise<void>;
+  trash(id: string): Promise<void>;
+  restore(id: string): Promise<void>;
   addPhoto(id: string, image: Blob): Promise<void>;
   removePhoto(photoId: string): Promise<void>;
-  /** The analysis made again from the stored samples; not kept yet. */
-  redo(view: ReadingView, settings: AnalysisSettings, signal: AbortSignal): Promise<Outcome<Analysis>>;
-  keepRedo(id: string, settings: AnalysisSettings, analysis: Analysis): Promise<void>;
+  /** This device, to tell its own edits from others'. */
+  readonly device: string;
+}
+
+/** Where the screen leads. */
+export interface ReadingLinks {
+  readonly back: () => void;
+  readonly again: (view: ReadingView) => void;
+  readonly next: (view: ReadingView) => void;
+  readonly source: (id: string) => string;
+  readonly newSource: (readingId: string) => string;
+  readonly handOver: (readingId: string) => string;
 }

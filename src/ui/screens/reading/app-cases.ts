@@ -1,0 +1,60 @@
+import type { App } from '../../../app/app.ts';
+import { currentPlaceIds } from '../../../app/readings.ts';
+import { photoJpeg } from './photo-jpeg.ts';
+import type { OpenedView, ReadingLinks, ReadingUseCases } from './reading-use-cases.ts';
+
+/** The version of reading facts that this code reads. */
+const KNOWN_VERSION = 1;
+
+async function openView(app: App, id: string): Promise<OpenedView> {
+  const opened = await app.readings.open(id);
+  if (!opened) return { state: 'missing' };
+  if ((opened.reading.v as number) > KNOWN_VERSION) return { state: 'newer' };
+  const where = await app.readings.whereabouts(opened);
+  const [sources, photos, history, judge] = await Promise.all([
+    app.sources.validFor(where),
+    app.readings.photos(id),
+    app.readings.history(id),
+    app.readings.judge(),
+  ]);
+  const settings = where.place ? { place: where.place } : {};
+  return {
+    state: 'open',
+    view: {
+      reading: opened.reading,
+      recording: opened.recording,
+      entity: opened.entity,
+      results: opened.results,
+      place: where.names,
+      sources,
+      photos,
+      history,
+      judge: (analysis, given) => judge(analysis, given, opened.reading.circumstances, settings),
+    },
+  };
+}
+
+export const readingUseCases = (app: App): ReadingUseCases => ({
+  open: (id) => openView(app, id),
+  subscribe: (listener) => app.store.onChange((what) => what === 'facts' && listener()),
+  analyse: (view, settings, signal) => app.readings.analyse(view.recording, settings, signal),
+  keepAnalysis: (id, analysis) => app.readings.keepResult(id, analysis),
+  edit: (id, set) => app.readings.edit(id, set),
+  trash: (id) => app.readings.trash([id]),
+  restore: (id) => app.readings.restore([id]),
+  async addPhoto(id, image) {
+    const { jpeg, widthPx, heightPx } = await photoJpeg(image);
+    await app.readings.savePhoto(id, jpeg, widthPx, heightPx);
+  },
+  removePhoto: (photoId) => app.readings.edit(photoId, { trashed: true }),
+  device: app.store.device,
+});
+
+export const readingLinks = (app: App): ReadingLinks => ({
+  back: () => app.navigation.back({ screen: 'readings' }),
+  again: (view) => app.take.again({ ...currentPlaceIds(view), procedure: view.reading.procedure }),
+  next: (view) => app.take.next({ procedure: view.reading.procedure }),
+  source: (id) => app.navigation.href({ screen: 'source', id }),
+  newSource: (reading) => app.navigation.href({ screen: 'source', id: 'new', reading }),
+  handOver: (reading) => app.navigation.href({ screen: 'hand-over', reading }),
+});

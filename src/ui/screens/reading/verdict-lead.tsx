@@ -1,0 +1,39 @@
+import type { Analysis } from '../../../core/model/analysis.ts';
+import type { Judgement } from '../../../core/model/judgement.ts';
+import { readingText } from '../../../text/reading-screen.ts';
+import { sourcesSentence } from '../../../text/sentence.ts';
+import { verdictWord } from '../../../text/verdicts.ts';
+import { VerdictMark } from '../../components/verdict-mark.tsx';
+import { AmplificationText } from './amplification-text.tsx';
+import { sentenceCase } from './pair-card.tsx';
+import type { ReadingUnits } from './reading-units.ts';
+import styles from './verdict-lead.module.css';
+
+/** What drives it, right below what rings: mark, sentence, how much it would be amplified. */
+export function VerdictLead(props: {
+  readonly analysis: Analysis;
+  readonly judgement: Judgement;
+  readonly units: ReadingUnits;
+}) {
+  const { analysis, judgement } = props;
+  const [worst] = judgement.separations;
+  const isWorth = worst !== undefined && worst.verdict !== 'apart' && worst.verdict !== 'blind';
+  // the mark says the verdict's word already
+  const sentence = sourcesSentence(analysis, judgement)?.replace(/: \w+\.$/, '.');
+  const trust = judgement.trust;
+  return (
+    <div class={styles.lead}>
+      <p class={styles.said}>
+        {isWorth && (
+          <>
+            <VerdictMark verdict={worst.verdict} word={`${sentenceCase(verdictWord(worst.verdict))}.`} />{' '}
+          </>
+        )}
+        {sentence ?? readingText.pair.none} {isWorth && <AmplificationText separation={worst} />}
+      </p>
+      <p class={styles.trust}>
+        {readingText.trust[trust]} {readingText.trustName}, {readingText.doubtCount(judgement.doubts.length)}.
+      </p>
+    </div>
+  );
+}

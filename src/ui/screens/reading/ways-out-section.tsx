@@ -1,0 +1,76 @@
+import type { Judgement, WayOut } from '../../../core/model/judgement.ts';
+import { readingText } from '../../../text/reading-screen.ts';
+import { forcingName } from '../../../text/sources.ts';
+import { verdictWord } from '../../../text/verdicts.ts';
+import { wayOutName, wayOutSentence } from '../../../text/ways-out.ts';
+import { VerdictMark } from '../../components/verdict-mark.tsx';
+import { sentenceCase } from './pair-card.tsx';
+import { saidHz, type ReadingUnits } from './reading-units.ts';
+import { Section } from './section.tsx';
+import styles from './ways-out-section.module.css';
+
+/** What would move a pair apart, pair by pair, with what it does to the others. */
+export function WaysOutSection(props: { readonly judgement: Judgement; readonly units: ReadingUnits }) {
+  const { judgement, units } = props;
+  const pairs = [...new Set(judgement.waysOut.map((way) => way.separationIndex))];
+  if (pairs.length === 0) return null;
+  const first = pairs.slice(0, 1);
+  const others = pairs.slice(1);
+  return (
+    <Section title={readingText.waysOut.title}>
+      {first.map((index) => (
+        <PairWays
+          key={index}
+          judgement={judgement}
+          units={units}
+          separationIndex={index}
+          isNamed={pairs.length > 1}
+        />
+      ))}
+      {others.length > 0 && (
+        <details class={styles.others}>
+          <summary>{readingText.waysOut.others(others.length)}</summary>
+          {others.map((index) => (
+            <PairWays key={index} judgement={judgement} units={units} separationIndex={index} isNamed />
+          ))}
+        </details>
+      )}
+    </Section>
+  );
+}
+
+function PairWays(props: {
+  readonly judgement: Judgement;
+  readonly units: ReadingUnits;
+  readonly separationIndex: number;
+  readonly isNamed: boolean;
+}) {
+  const { judgement, units, separationIndex, isNamed } = props;
+  const separation = judgement.separations[separationIndex];
+  const forcing = separation && judgement.forcings[separation.forcingIndex];
+  const ways = judgement.waysOut.filter((way) => way.separationIndex === separationIndex);
+  return (
+    <div class={styles.pair}>
+      {isNamed && separation && forcing && (
+        <h3>
+          {sentenceCase(readingText.pair.against(forcingName(forcing), saidHz(units, separation.modeHz)))}
+        </h3>
+      )}
+      <ul class={styles.list}>
+        {ways.map((way, index) => (
+          <WayOutRow key={index} way={way} judgement={judgement} />
+        ))}
+      </ul>
+    </div>
+  );
+}
+
+const WayOutRow = ({ way, judgement }: { readonly way: WayOut; readonly judgement: Judgement }) => (
+  <li class={way.practical ? '' : styles.hard}>
+    <div class={styles.name}>
+      <b>{wayOutName(way.kind)}</b>
+      <VerdictMark verdict={way.verdictAfter} word={verdictWord(way.verdictAfter)} />
+    </div>
+    <p>{wayOutSentence(way, judgement)}</p>
+  </li>
+);

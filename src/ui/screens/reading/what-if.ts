@@ -1,0 +1,71 @@
+import type { Analysis, Mode } from '../../../core/model/analysis.ts';
+import type { Source } from '../../../core/model/source.ts';
+
+/** A change that is being tried, on one mode and on the speeds of sources; 1 and absent mean as measured. */
+export interface TriedChange {
+  readonly modeIndex: number;
+  readonly stiffnessRatio: number;
+  readonly massRatio: number;
+  /** Set outright; absent: it follows stiffness and mass. */
+  readonly dampingRatio?: number;
+  /** Speed by index of the source, r/min. */
+  readonly speedsRpm: Readonly<Record<number, number>>;
+}
+
+export const nothingTried = (modeIndex: number): TriedChange => ({
+  modeIndex,
+  stiffnessRatio: 1,
+  massRatio: 1,
+  speedsRpm: {},
+});
+
+export const isNothingTried = (change: TriedChange): boolean =>
+  change.stiffnessRatio === 1 &&
+  change.massRatio === 1 &&
+  change.dampingRatio === undefined &&
+  Object.keys(change.speedsRpm).length === 0;
+
+/** Damping ratio after the change with the damper left as it is: zeta = c / (2 sqrt(k m)). */
+export const followedDampingRatio = (mode: Mode, change: TriedChange): number =>
+  mode.dampingRatio / Math.sqrt(change.stiffnessRatio * change.massRatio);
+
+const changedMode = (mode: Mode, change: TriedChange): Mode => {
+  const shift = Math.sqrt(change.stiffnessRatio / change.massRatio);
+  const dampingRatio = change.dampingRatio ?? followedDampingRatio(mode, change);
+  return {
+    ...mode,
+    frequencyHz: mode.frequencyHz * shift,
+    frequencySdHz: mode.frequencySdHz * shift,
+    dampingRatio,
+    dampingRatioSd: mode.dampingRatioSd * (dampingRatio / mode.dampingRatio),
+    fold: { ...mode.fold, candidatesHz: mode.fold.candidatesHz.map((candidate) => candidate * shift) },
+  };
+};
+
+/**
+ * The analysis with one mode changed: f goes with sqrt(k / m) of that mode by itself.
+ * Misleads where the change alters the mode's shape, or where modes are close.
+ */
+export const changedAnalysis = (analysis: Analysis, change: TriedChange): Analysis => ({
+  ...analysis,
+  modes: analysis.modes.map((mode, index) => (index === change.modeIndex ? changedMode(mode, change) : mode)),
+});
+
+const isTurning = (
+  source: Source,
+): source is Extract<Source, { speedRpm: number | readonly [number, number] }> =>
+  source.kind === 'machine' || source.kind === 'belt';
+
+/** The speed that a slider starts from; absent where the source does not turn. */
+export function presentSpeedRpm(source: Source): number | undefined {
+  if (!isTurning(source)) return undefined;
+  const { speedRpm } = source;
+  return typeof speedRpm === 'number' ? speedRpm : Math.sqrt(speedRpm[0] * speedRpm[1]);
+}
+
+/** The sources with the speeds tried: a tried speed is one speed, whatever range it had. */
+export const changedSources = (sources: readonly Source[], change: TriedChange): Source[] =>
+  sources.map((source, index) => {
+    const speedRpm = change.speedsRpm[index];
+    return speedRpm === undefined || !isTurning(source) ? source : { ...source, speedRpm };
+  });
