@@ -85,6 +85,8 @@ export interface Mode {
 export interface Tone {
   readonly frequencyHz: number;
   readonly frequencySdHz: number;
+  /** Standard deviation of the line's frequency about its mean during the record (speed variation), Hz; absent when too weak to follow. */
+  readonly frequencyDeviationHz?: number;
   /** Peak amplitude of the line along its direction, m/s². */
   readonly amplitudeMps2: number;
   readonly amplitudeSdMps2: number;

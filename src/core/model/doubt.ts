@@ -30,6 +30,7 @@ export const DOUBT_CODES = [
   'stalled',
   'half-power-refused',
   'one-decay-close-modes',
+  'running-resonance',
   'practice',
 ] as const;
 export type DoubtCode = (typeof DOUBT_CODES)[number];

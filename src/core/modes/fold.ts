@@ -24,9 +24,14 @@ const CAUTION_FACTOR = 0.7;
 const FIT_TOLERANCE = 8;
 const SHARE_STEPS = 140;
 
+/** A line may run ahead of its mean by this much of a cycle within a block. */
+const PHASE_TOGETHER_CYCLES = 0.15;
+
 export interface FoldCandidate {
   readonly frequencyHz: number;
   readonly dampingRatio?: number;
+  /** How far the line wanders, Hz: blocks are kept short enough for its phase to stay together. */
+  readonly frequencyDeviationHz?: number;
   /** Unit vector, one entry per axis. */
   readonly direction: readonly number[];
   /** Signal to use instead of the recording along `direction` (e.g. with the other modes taken out); length n. */
@@ -40,7 +45,11 @@ export function signedCandidatesHz(frequencyHz: number, rateHz: number): readonl
 
 /** Fold of a steady line. */
 export function foldOfTone(signal: ConditionedSignal, tone: FoldCandidate): Fold {
-  const blockS = Math.max(0.6, Math.min(2, 6 / tone.frequencyHz));
+  const steadyS = PHASE_TOGETHER_CYCLES / Math.max(tone.frequencyDeviationHz ?? 0, 1e-6);
+  const blockS = Math.max(
+    10 * signal.periodS,
+    Math.min(steadyS, Math.max(0.6, Math.min(2, 6 / tone.frequencyHz))),
+  );
   return decide(signal, tone, blockS, [[0, signal.timeS.length]], 0);
 }
 
@@ -96,7 +105,8 @@ function decide(
   const rateHz = 1 / signal.periodS;
   const signed = signedCandidatesHz(item.frequencyHz, rateHz);
   const undecided: Fold = { verdict: 'undecided', candidatesHz: signed.map(Math.abs) };
-  if (signal.deviationS.every((d) => Math.abs(d) < 1e-6)) return undecided;
+  const isBlind = !signal.hasClock || signal.facts.timing.trueShare < LEAST_TELLING_SHARE;
+  if (isBlind || signal.facts.timing.scatterSdS < 1e-6) return undecided;
   const samples = item.samples ?? alongDirection(signal.accelerationMps2, item.direction);
   const profile = slopeProfile(
     { ...signal, samples },

@@ -40,6 +40,8 @@ export interface ConditionedSignal {
   readonly segments: readonly (readonly [number, number])[];
   /** Row of the recording each sample came from. */
   readonly rows: Int32Array;
+  /** False where the stamps show no steady clock at all (then times are the stamps). */
+  readonly hasClock: boolean;
   readonly isTimeBaseDecided: boolean;
   readonly isPolled: boolean;
   readonly lostCount: number;

@@ -29,6 +29,8 @@ export interface TimeBase {
   readonly periodS: number;
   readonly losses: readonly { readonly index: number; readonly lostCount: number }[];
   readonly timing: Omit<TimingFacts, 'repeatCount'>;
+  /** False where the stamps show no steady clock: nothing can then be told from their scatter. */
+  readonly hasClock: boolean;
   /** False where nothing in the record tells stamps from clock, or there is no steady clock. */
   readonly isDecided: boolean;
 }
@@ -69,6 +71,7 @@ export function estimateTimeBase(
       scatterSdS: line.scatterSdS,
       gapCount: base.losses.length,
     },
+    hasClock,
     isDecided: hasClock && (share !== undefined || found !== undefined),
   };
 }
@@ -77,7 +80,7 @@ export function estimateTimeBase(
 function countByTime(
   stampsS: Float64Array,
   periodS: number,
-): Omit<TimeBase, 'timeS' | 'timing' | 'isDecided'> {
+): Omit<TimeBase, 'timeS' | 'timing' | 'hasClock' | 'isDecided'> {
   const n = stampsS.length;
   const start = stampsS[0] as number;
   const count = new Int32Array(n);

@@ -19,8 +19,8 @@ export interface GriddableSignal {
   readonly accelerationMps2: readonly Float64Array[];
 }
 
-/** Half length of the differentiator, samples: exact to 0.5 % up to 0.42 of the rate. */
-const DIFFERENTIATOR_HALF = 12;
+/** Half length of the differentiator, samples: exact to 0.5 % up to 0.46 of the rate. */
+const DIFFERENTIATOR_HALF = 24;
 /** Samples further off the grid than this on average (rms, periods): the expansion would not converge, interpolation does the work. */
 const EXPANSION_LIMIT_PERIODS = 0.3;
 /** Corrections; each leaves about (2π·f·scatter) of the error before. */
