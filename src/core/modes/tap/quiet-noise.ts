@@ -30,7 +30,8 @@ export function quietNoiseVariance(
     }
     variances.sort((a, b) => a - b);
     const spread = Math.sqrt((2 * SECOND_DIFFERENCE_CORRELATION) / (width - 2));
-    const quiet = (variances[Math.floor(QUIET_SHARE * variances.length)] ?? 0) * Math.exp(QUIET_SHARE_Z * spread);
+    const quiet =
+      (variances[Math.floor(QUIET_SHARE * variances.length)] ?? 0) * Math.exp(QUIET_SHARE_Z * spread);
     return Math.max(quiet, (stepMps2[axis] ?? 0) ** 2 / 12, 1e-14);
   });
 }

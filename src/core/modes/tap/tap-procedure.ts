@@ -17,7 +17,7 @@ import { directionOf, amplitudeAtStart, modeEstimate, naturalFrequencyHz } from 
 import type { ModeEstimate } from './mode-estimate.ts';
 import { decayAlone, residuals } from './modelled-signal.ts';
 import { searchRingDowns } from './ring-down-search.ts';
-import type { RingDownSearch } from './ring-down-search.ts';
+import type { RingDownSearch } from './ring-down-state.ts';
 
 /** Fewer samples than this hold no ring-down worth fitting. */
 const FEWEST_SAMPLES = 64;
