@@ -41,25 +41,31 @@ const NOTHING: Readonly<Record<Analysis['procedure'], string>> = {
   coastdown: 'No resonance found in the range that the machine passed through.',
 };
 
-/** How near, in words: "comes within 3 %", "lies 12 % below", "falls on it". */
-export function nearnessWords(separation: Separation): string {
-  const { nearestRatio } = separation;
+/**
+ * How near, in words: "comes within 3 %", "lies 12 % below it", "falls on it".
+ * @param which the mode, where it is not the one just named
+ */
+export function nearnessWords(separation: Separation, which = ''): string {
+  const { nearestRatio, verdict } = separation;
   const offset = Math.abs(nearestRatio - 1);
-  if (offset < 0.005) return 'falls on it';
-  const percent = `${formatNumber(100 * offset, offset < 0.1 ? 1 : 2)} %`;
-  if (separation.verdict === 'coincident') return `comes within ${percent}`;
-  return `lies ${percent} ${nearestRatio < 1 ? 'below' : 'above'}`;
+  if (offset < 0.005) return `falls on ${which || 'it'}`;
+  if (verdict === 'coincident' || verdict === 'undecided')
+    return `comes within ${Math.ceil(100 * offset - 0.01)} %${which && ` of ${which}`}`;
+  const percent = formatNumber(100 * offset, offset < 0.1 ? 1 : 2);
+  return `lies ${percent} % ${nearestRatio < 1 ? 'below' : 'above'} ${which || 'it'}`;
 }
 
 /** "The third harmonic of walking comes within 3 %: coincident." */
-function pairSentence(separation: Separation, judgement: Judgement): string {
+function pairSentence(separation: Separation, analysis: Analysis, judgement: Judgement): string {
   const forcing = judgement.forcings[separation.forcingIndex];
   const name = capitalised(forcing ? forcingName(forcing) : separation.source);
-  const also = separation.modeIndex === 0 ? '' : ` of the mode at ${formatFrequency(separation.modeHz)}`;
-  const words = nearnessWords(separation).replace(/%$/, `%${also}`);
-  if (separation.verdict === 'undecided')
-    return `${name} may fall on ${also ? `the mode at ${formatFrequency(separation.modeHz)}` : 'it'} or lie clear of it: undecided.`;
-  return `${name} ${words}: ${separation.verdict}.`;
+  const which = separation.modeIndex === 0 ? '' : `the mode at ${formatFrequency(separation.modeHz)}`;
+  if (separation.verdict !== 'undecided')
+    return `${name} ${nearnessWords(separation, which)}: ${separation.verdict}.`;
+  const fold = analysis.modes[separation.modeIndex]?.fold.verdict;
+  return fold === 'undecided'
+    ? `${name} ${nearnessWords(separation, which)}, if what is seen is no folded image: undecided.`
+    : `${name} may fall on ${which || 'it'} or lie clear of it: undecided.`;
 }
 
 const count = (number: number, one: string, many: string): string =>
@@ -69,7 +75,8 @@ const count = (number: number, one: string, many: string): string =>
 export function sourcesSentence(analysis: Analysis, judgement: Judgement): string | undefined {
   if (judgement.forcings.length === 0) return undefined;
   const worst = judgement.separations[0];
-  if (worst && worst.verdict !== 'apart' && worst.verdict !== 'blind') return pairSentence(worst, judgement);
+  if (worst && worst.verdict !== 'apart' && worst.verdict !== 'blind')
+    return pairSentence(worst, analysis, judgement);
   if (analysis.procedure === 'running') return runningSentence(judgement);
   const blind = judgement.unpaired.filter(({ verdict }) => verdict === 'blind').length;
   const none = 'No mode found near any source in this reading';
