@@ -5,6 +5,7 @@ import type { Outcome } from './model/outcome.ts';
 import type { AnalysisResult } from './model/pictures.ts';
 import type { Recording } from './model/recording.ts';
 import { ambientProcedure } from './modes/ambient.ts';
+import { coastdownProcedure } from './modes/coastdown.ts';
 import type { ProcedureAnswer } from './modes/procedure-answer.ts';
 import { tapProcedure } from './modes/tap/tap-procedure.ts';
 import { roundedForKeeping } from './modes/rounded-for-keeping.ts';
@@ -34,7 +35,7 @@ const PROCEDURES: Readonly<Record<Procedure, ProcedureFunction>> = {
   tap: tapProcedure,
   running: () => failure('no-tone'),
   ambient: ambientProcedure,
-  coastdown: () => failure('no-pass'),
+  coastdown: coastdownProcedure,
 };
 
 function resultOf(

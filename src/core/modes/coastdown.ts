@@ -1,0 +1,2 @@
+/** Coast-down procedure: what the chain takes from `coastdown/`. */
+export { coastdownProcedure } from './coastdown/coastdown-procedure.ts';

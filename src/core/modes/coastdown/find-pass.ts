@@ -1,0 +1,225 @@
+import type { ConditionedSignal } from '../../signal/condition-recording.ts';
+import { failure, success } from '../../model/outcome.ts';
+import type { Outcome } from '../../model/outcome.ts';
+import { fitCoastdown } from './fit-coastdown.ts';
+import type { CoastdownFit, PassSamples } from './fit-coastdown.ts';
+import { TRACK_WINDOWS_S, trackLine } from './line-track.ts';
+import type { LineTrack } from './line-track.ts';
+import { guessFromWholePass } from './pass-spectrum.ts';
+import type { PassGuess } from './pass-spectrum.ts';
+import { robustPolynomial } from './polynomial-fit.ts';
+import { refineSweep } from './refine-track.ts';
+import { speedAt } from './sweep-response.ts';
+import type { Sweep } from './sweep-response.ts';
+
+export interface Pass {
+  readonly fit: CoastdownFit;
+  readonly samples: PassSamples;
+  readonly guess: PassGuess;
+  /** Of the sensor alone, m²/s⁴. */
+  readonly noiseVariance: number;
+}
+
+/** Highest frequency a line is followed to, as a share of the rate. */
+const TRACKED_SHARE = 0.48;
+/** A rising line this much clearer than a falling one (mean ln of power over floor) is a folded sweep or a run-up. */
+const RISING_MARGIN = 0.25;
+/** Residual over the sensor's noise (variance) at which no further start is tried. */
+const CLEAN_RATIO = 1.15;
+/** Orders of the polynomial through the track: the lower one holds where the line is faint. */
+const TRACK_ORDERS = [2, 3];
+/** Clarity below which a point of the track counts for nothing. */
+const CLEAR_POINT = 2;
+/** Scatter of the tracked frequency, Hz, beyond which a point is an outlier. */
+const TRACK_SCATTER_HZ = 0.4;
+/** Fitting goes down through the mode from above: ends of the windows, speed over natural frequency. */
+const UPPER_END = 1.08;
+const LOWER_ENDS = [1.02, 0.95, 0.85, 0.7];
+const WIDE_WINDOW = [0.5, 2] as const;
+/** What a pass must cover to be answered (study, section 12). */
+export const COVERED_WINDOW = [0.65, 1.4] as const;
+const DAMPING_FACTORS = [1, 0.5, 2];
+const MOST_ORDER = 5;
+/** A speed polynomial of one order more must lower the description length by this. */
+const ORDER_GAIN = 6;
+
+/** Finds the line, the mode it passes and the sweep, and fits them jointly. */
+export function findPass(conditioned: ConditionedSignal): Outcome<Pass> {
+  const { grid, facts } = conditioned;
+  const { durationS } = facts;
+  const highestHz = TRACKED_SHARE * facts.rateHz;
+  const falling = trackLine(grid, highestHz, 'falling');
+  const rising = trackLine(grid, highestHz, 'rising');
+  if (!falling || !rising) return failure('too-short', { durationS });
+  if (rising.score > falling.score + RISING_MARGIN)
+    return failure('folded-sweep', { rateHz: facts.rateHz, highestHz: facts.rateHz / 2 });
+  const guess = guessFromWholePass(grid, [1, highestHz]);
+  if (!guess) return failure('no-pass', { durationS });
+  const noise = noiseVariance(conditioned);
+  let best: Outcome<Pass> | undefined;
+  for (const windowS of TRACK_WINDOWS_S)
+    for (const order of TRACK_ORDERS) {
+      const track = windowS === TRACK_WINDOWS_S[0] ? falling : trackLine(grid, highestHz, 'falling', windowS);
+      if (!track) continue;
+      const pass = fitted(conditioned, trackPolynomial(track, order), guess);
+      if (!pass.ok) best ??= pass;
+      else if (!best?.ok || pass.value.fit.residualVariance < best.value.fit.residualVariance) best = pass;
+      if (best?.ok && best.value.fit.residualVariance < CLEAN_RATIO * noise) return best;
+    }
+  return best ?? failure('no-pass', { durationS });
+}
+
+/** Variance a sample of the sensor's own noise has, mean over the axes, m²/s⁴. */
+function noiseVariance(conditioned: ConditionedSignal): number {
+  const { noiseMps2PerRootHz, rateHz, stepMps2 } = conditioned.facts;
+  const each = noiseMps2PerRootHz.map((d, a) =>
+    Math.max((d * d * rateHz) / 2, (stepMps2[a] ?? 0) ** 2 / 12, 1e-12),
+  );
+  return each.reduce((sum, v) => sum + v, 0) / each.length;
+}
+
+/** Bent line through the clear points of a track. */
+function trackPolynomial(track: LineTrack, order: number): Sweep {
+  const first = track.timeS[0] as number;
+  const last = track.timeS[track.timeS.length - 1] as number;
+  const centreS = (first + last) / 2;
+  const halfS = (last - first) / 2;
+  const u = track.timeS.map((t) => (t - centreS) / halfS);
+  const weights = track.clarity.map((c) => Math.max(0, c - CLEAR_POINT));
+  return {
+    centreS,
+    halfS,
+    speedHz: robustPolynomial(u, track.frequencyHz, weights, order, TRACK_SCATTER_HZ),
+  };
+}
+
+function fitted(conditioned: ConditionedSignal, track: Sweep, guess: PassGuess): Outcome<Pass> {
+  const { timeS } = conditioned;
+  const { frequencyHz } = guess;
+  const startHz = speedAt(track, timeS[0] as number);
+  const endHz = speedAt(track, timeS[timeS.length - 1] as number);
+  const incomplete = failure('pass-incomplete', { startHz, endHz, frequencyHz });
+  const upper = windowOf(timeS, track, frequencyHz, [UPPER_END, WIDE_WINDOW[1]]);
+  if (!upper) return incomplete;
+  const sweep = upperSweep(conditioned, rebased(track, timeS, upper, 2), guess, upper);
+  const first = lowered(conditioned, sweep, guess);
+  const wide = first && windowOf(timeS, first.sweep, first.frequencyHz, WIDE_WINDOW);
+  if (!wide) return incomplete;
+  const fit = bestOrder(conditioned, first, wide);
+  return success({ fit, samples: cut(conditioned, wide), guess, noiseVariance: noiseVariance(conditioned) });
+}
+
+/** Sweep above the mode, where the response follows the machine steadily whatever the sweep rate. */
+function upperSweep(
+  conditioned: ConditionedSignal,
+  sweep: Sweep,
+  guess: PassGuess,
+  window: readonly [number, number],
+): Sweep {
+  const samples = cut(conditioned, window);
+  const along = samples.timeS.map((_, k) =>
+    samples.axes.reduce((sum, axis, a) => sum + (axis[k] as number) * (guess.direction[a] as number), 0),
+  );
+  const { frequencyHz, dampingRatio } = guess;
+  const refined = refineSweep(samples.timeS, along, sweep, frequencyHz, dampingRatio);
+  return fitCoastdown(samples, { frequencyHz, dampingRatio, sweep: refined }, { isModeHeld: true }).sweep;
+}
+
+/** Goes down through the mode step by step, so that the phase is never lost. */
+function lowered(conditioned: ConditionedSignal, sweep: Sweep, guess: PassGuess): CoastdownFit | undefined {
+  let best: CoastdownFit | undefined;
+  for (const factor of DAMPING_FACTORS) {
+    let at = { frequencyHz: guess.frequencyHz, dampingRatio: guess.dampingRatio * factor, sweep };
+    let fit: CoastdownFit | undefined;
+    for (const end of LOWER_ENDS) {
+      const window = windowOf(conditioned.timeS, at.sweep, at.frequencyHz, [end, WIDE_WINDOW[1]]);
+      if (!window) break;
+      fit = fitCoastdown(
+        cut(conditioned, window),
+        { ...at, sweep: rebased(at.sweep, conditioned.timeS, window, 2) },
+        { isModeHeld: end > 1, mostSteps: 8 },
+      );
+      at = { frequencyHz: fit.frequencyHz, dampingRatio: fit.dampingRatio, sweep: fit.sweep };
+    }
+    if (fit && (!best || fit.residualVariance < best.residualVariance)) best = fit;
+  }
+  return best;
+}
+
+/** Indexes [from, to) of the samples while the machine is within the window, around the passage. */
+function windowOf(
+  timeS: Float64Array,
+  sweep: Sweep,
+  frequencyHz: number,
+  window: readonly [number, number],
+): readonly [number, number] | undefined {
+  const middle = Math.sqrt(window[0] * Math.min(window[1], 1.3)) * frequencyHz;
+  let crossing = -1;
+  for (let k = 0; k < timeS.length && crossing < 0; k++)
+    if (speedAt(sweep, timeS[k] as number) <= middle) crossing = k;
+  if (crossing <= 0) return undefined;
+  let from = crossing;
+  while (from > 0 && inside(timeS[from - 1] as number)) from--;
+  let to = crossing;
+  while (to < timeS.length && inside(timeS[to] as number)) to++;
+  return to - from > 64 ? [from, to] : undefined;
+
+  function inside(t: number): boolean {
+    const ratio = speedAt(sweep, t) / frequencyHz;
+    return ratio > window[0] && ratio < window[1];
+  }
+}
+
+/** The same speeds as a polynomial about the middle of a window. */
+function rebased(sweep: Sweep, timeS: Float64Array, window: readonly [number, number], order: number): Sweep {
+  const first = timeS[window[0]] as number;
+  const last = timeS[window[1] - 1] as number;
+  const centreS = (first + last) / 2;
+  const halfS = (last - first) / 2;
+  const u = Float64Array.from({ length: 41 }, (_, i) => (i - 20) / 20);
+  const values = u.map((x) => speedAt(sweep, centreS + x * halfS));
+  return {
+    centreS,
+    halfS,
+    speedHz: robustPolynomial(
+      u,
+      values,
+      u.map(() => 1),
+      order,
+      1e9,
+    ),
+  };
+}
+
+function cut(conditioned: ConditionedSignal, window: readonly [number, number]): PassSamples {
+  return {
+    timeS: conditioned.timeS.slice(...window),
+    axes: conditioned.accelerationMps2.map((axis) => axis.slice(...window)),
+  };
+}
+
+/** Wider window, order of the speed polynomial raised while the description length falls (Schwarz 1978). */
+function bestOrder(
+  conditioned: ConditionedSignal,
+  first: CoastdownFit,
+  window: readonly [number, number],
+): CoastdownFit {
+  const samples = cut(conditioned, window);
+  let best: CoastdownFit | undefined;
+  for (let order = 2; order <= MOST_ORDER; order++) {
+    const from = best ?? first;
+    const sweep = rebased(from.sweep, conditioned.timeS, window, order);
+    const fit = fitCoastdown(samples, {
+      frequencyHz: from.frequencyHz,
+      dampingRatio: from.dampingRatio,
+      sweep,
+    });
+    if (best) {
+      const gain =
+        fit.sampleCount * Math.log(best.sumOfSquares / fit.sumOfSquares) - Math.log(fit.sampleCount);
+      if (gain < ORDER_GAIN) break;
+    }
+    best = fit;
+  }
+  return best as CoastdownFit;
+}
