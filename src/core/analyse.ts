@@ -7,6 +7,7 @@ import type { Recording } from './model/recording.ts';
 import { ambientProcedure } from './modes/ambient.ts';
 import { coastdownProcedure } from './modes/coastdown.ts';
 import type { ProcedureAnswer } from './modes/procedure-answer.ts';
+import { runningProcedure } from './modes/running-procedure.ts';
 import { tapProcedure } from './modes/tap/tap-procedure.ts';
 import { roundedForKeeping } from './modes/rounded-for-keeping.ts';
 import { conditionRecording } from './signal/condition-recording.ts';
@@ -33,7 +34,7 @@ export function analyse(recording: Recording, settings: AnalysisSettings): Outco
 
 const PROCEDURES: Readonly<Record<Procedure, ProcedureFunction>> = {
   tap: tapProcedure,
-  running: () => failure('no-tone'),
+  running: runningProcedure,
   ambient: ambientProcedure,
   coastdown: coastdownProcedure,
 };

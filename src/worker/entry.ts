@@ -1,0 +1,6 @@
+/** The worker's own entry: nothing but the analysis behind the protocol. */
+import { analyse } from '../core/analyse.ts';
+import { serveAnalysis } from './protocol.ts';
+import type { MessageEnd } from './protocol.ts';
+
+serveAnalysis(self as unknown as MessageEnd, analyse);
