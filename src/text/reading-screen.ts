@@ -168,8 +168,7 @@ export const readingText = {
     times: (factor: string) => `× ${factor}`,
     asMeasured: 'as measured',
     nowAt: (now: string, before: string) => `Mode at ${now}, was ${before}.`,
-    worst: 'Nearest pair now:',
-    nothingNear: 'No forcing near any mode now.',
+    nothingNear: 'No forcing is held against this mode.',
     worse: (list: string) => `Made worse: ${list}.`,
   },
   waysOut: {
@@ -179,7 +178,7 @@ export const readingText = {
     impractical: 'more than is commonly built',
     sideEffects: (list: string) => `Brings closer: ${list}.`,
   },
-  specialist: 'Call a specialist',
+  specialistMore: (n: number) => count(n, 'more reason', 'more reasons'),
 
   plots: {
     keys: 'Arrow keys move the cursor, plus and minus zoom, 0 shows the whole.',
@@ -188,7 +187,7 @@ export const readingText = {
     whole: 'Whole range',
     loading: 'Working out the pictures from the raw samples…',
     failed: 'The pictures could not be worked out.',
-    axis: (name: string) => `sensor ${name}`,
+    axis: (name: string) => `axis ${name}`,
     lines: 'Lines shown',
     numbers: 'Numbers behind the picture',
   },

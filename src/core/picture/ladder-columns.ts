@@ -22,11 +22,14 @@ export interface LadderSize {
   readonly textPx: number;
 }
 
-/** Rails must leave room for four digits; the rest are proportions tried on 328, 400 and 560 px (our own, 2026-12). */
-const RAIL_GAP_TEXTS = 3.2;
-const LANE_TEXTS = 0.85;
-const LABEL_SHARE = 0.4;
-const LABEL_SHARE_WITHOUT_MODES = 0.46;
+/** Rails must leave room for four digits; the rest are proportions tried on 302, 328, 400 and 560 px (our own, 2026-12). */
+const RAIL_GAP_TEXTS = 3;
+const LANE_TEXTS = 0.75;
+const LANE_GAP_PX = 2.5;
+/** The side of the modes never gets less of the width than this, the labels of the forcings never less than that. */
+const LEFT_SHARE = 0.31;
+const LABEL_LEAST_SHARE = 0.24;
+const LABEL_MOST_SHARE = 0.44;
 
 export const ladderColumns = (
   content: LadderContent,
@@ -36,13 +39,15 @@ export const ladderColumns = (
 ): LadderColumns => {
   const { widthPx, textPx } = size;
   const labels = [...content.forcings.map((f) => f.label), ...content.tones.map((t) => t.label)];
-  const hasLeft = content.modes.length > 0;
-  const roomPx = widthPx * (hasLeft ? LABEL_SHARE : LABEL_SHARE_WITHOUT_MODES);
-  const widestPx = Math.max(0, ...labels.map((label) => measure(label, textPx)));
-  const labelRoomPx = Math.min(widestPx + 2, roomPx);
+  const hasLeft = content.modes.length > 0 || content.seenHz !== undefined;
   const markSizePx = textPx * 1.1;
   const laneWidthPx = Math.max(7, textPx * LANE_TEXTS);
-  const laneStepPx = laneWidthPx + 3;
+  const laneStepPx = laneWidthPx + LANE_GAP_PX;
+  const fixedPx = 4 + markSizePx + 5 + laneCount * laneStepPx + textPx * 0.8 + 6 + textPx * RAIL_GAP_TEXTS;
+  const leftPx = widthPx * (hasLeft ? LEFT_SHARE : 0.12);
+  const widestPx = Math.max(0, ...labels.map((label) => measure(label, textPx))) + 2;
+  const mostPx = Math.min(widthPx * LABEL_MOST_SHARE, widthPx - leftPx - fixedPx);
+  const labelRoomPx = Math.min(widestPx, Math.max(widthPx * LABEL_LEAST_SHARE, mostPx));
   const labelPx = widthPx - labelRoomPx - 4;
   const markPx = labelPx - markSizePx - 5;
   const lanesPx = markPx - laneCount * laneStepPx - textPx * 0.8;

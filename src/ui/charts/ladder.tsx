@@ -27,18 +27,20 @@ export interface LadderProps {
   readonly selected?: ReadonlySet<string>;
   /** The item that arrow keys start from. */
   readonly current?: string | undefined;
+  /** Without its zoom buttons, where room is short; wheel, pinch and keys still zoom. */
+  readonly isCompact?: boolean;
   /** Called with the id of a mode, forcing or tone; undefined for none. Without it the ladder is a still picture. */
   readonly onPick?: (id: string | undefined) => void;
 }
 
 const NONE: ReadonlySet<string> = new Set();
 const HEIGHT_PX = 440;
-/** Room between labels of a ladder for every eleven of them; taller text needs a taller ladder. */
-const TALLEST_PX = 900;
+/** Taller would leave the screen; then labels of the least rank go, and zooming brings them back. */
+const TALLEST_PX = 680;
 
-/** Height that gives larger text its room. */
-const fittingHeightPx = (wantedPx: number, textPx: number): number =>
-  Math.min(TALLEST_PX, Math.max(wantedPx, textPx * 34));
+/** Height that gives larger text, and many labels, their room. */
+const fittingHeightPx = (wantedPx: number, textPx: number, labelCount: number): number =>
+  Math.min(TALLEST_PX, Math.max(wantedPx, textPx * 26, textPx * (1.33 * labelCount + 5)));
 
 /** Items in order of frequency, for the arrow keys. */
 const idsUpwards = (content: LadderContent): string[] =>
@@ -63,7 +65,11 @@ export function Ladder(props: LadderProps) {
 
   const picture = useMemo(() => {
     if (!size) return undefined;
-    const heightPx = fittingHeightPx(props.heightPx ?? HEIGHT_PX, size.textPx);
+    const heightPx = fittingHeightPx(
+      props.heightPx ?? HEIGHT_PX,
+      size.textPx,
+      props.heightPx ? 0 : content.forcings.length + content.tones.length,
+    );
     const textPx = Math.min(size.textPx, size.widthPx / 24);
     return ladderPicture(content, {
       widthPx: size.widthPx,
@@ -138,13 +144,15 @@ export function Ladder(props: LadderProps) {
       >
         {still}
       </div>
-      <ZoomTools
-        words={words}
-        of={words.name}
-        isZoomed={isZoomed}
-        onZoom={(closer) => zoom.zoom(closer)}
-        onWhole={() => zoom.whole()}
-      />
+      {!props.isCompact && (
+        <ZoomTools
+          words={words}
+          of={words.name}
+          isZoomed={isZoomed}
+          onZoom={(closer) => zoom.zoom(closer)}
+          onWhole={() => zoom.whole()}
+        />
+      )}
     </div>
   );
 }

@@ -35,7 +35,7 @@ export interface LadderSectionProps {
 }
 
 /** A ladder that stays in sight above the sliders is shorter. */
-const TRYING_HEIGHT_PX = 330;
+const TRYING_HEIGHT_PX = 300;
 
 const currentId = (picked: Picked | undefined): string | undefined => {
   if (picked === undefined) return undefined;
@@ -85,7 +85,7 @@ export function LadderSection(props: LadderSectionProps) {
               selected={selected}
               current={currentId(picked)}
               onPick={pick}
-              {...(tried ? { heightPx: TRYING_HEIGHT_PX } : {})}
+              {...(tried ? { heightPx: TRYING_HEIGHT_PX, isCompact: true } : {})}
             />
           </div>
           {tried ? (

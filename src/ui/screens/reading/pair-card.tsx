@@ -58,7 +58,10 @@ function SeparationCard(props: {
   return (
     <>
       <p class={styles.said}>
-        <VerdictMark verdict={separation.verdict} word={sentenceCase(verdictWord(separation.verdict))} />{' '}
+        <VerdictMark
+          verdict={separation.verdict}
+          word={`${sentenceCase(verdictWord(separation.verdict))}.`}
+        />{' '}
         {sentenceCase(against)} {nearnessWords(separation)}.
       </p>
       <dl class={styles.figures}>

@@ -13,11 +13,11 @@ import { forcingId, forcingVerdict, modeId, toneId, worstOfForcing } from './pai
 import { saidHz, saidMps2, type ReadingUnits } from './reading-units.ts';
 import { likelyDampingRatio, likelyHz, otherCandidatesHz } from './true-frequency.ts';
 
-/** Short name for a mark: people by what they do, everything else by its name. */
+/** Short name for a mark: what tells it from the others first, since a long one is cut at its end. */
 export const shortForcing = (forcing: Forcing): string =>
   forcing.sourceKind === 'footfall' || forcing.sourceKind === 'traffic'
     ? forcing.label
-    : `${forcing.source} ${forcing.label}`.replace(/ band$/, '');
+    : `${forcing.label} ${forcing.source}`.replace(/^band /, '');
 
 const ladderMode = (mode: Mode, index: number, units: ReadingUnits, beforeHz?: number): LadderMode => {
   const isUnsure = mode.fold.verdict === 'undecided';

@@ -1,5 +1,5 @@
 import type { Analysis } from '../../../core/model/analysis.ts';
-import type { Judgement } from '../../../core/model/judgement.ts';
+import type { Judgement, Separation } from '../../../core/model/judgement.ts';
 import type { Source } from '../../../core/model/source.ts';
 import { formatNumber } from '../../../text/number.ts';
 import { formatPercent, formatSpeed } from '../../../text/quantity.ts';
@@ -10,7 +10,7 @@ import { verdictWord } from '../../../text/verdicts.ts';
 import { Button } from '../../components/button.tsx';
 import { VerdictMark } from '../../components/verdict-mark.tsx';
 import { sentenceCase } from './pair-card.tsx';
-import { forcingVerdict } from './pairs.ts';
+import { forcingVerdict, worstOfMode } from './pairs.ts';
 import { saidHz, type ReadingUnits } from './reading-units.ts';
 import { Slider } from './slider.tsx';
 import { likelyDampingRatio, likelyHz } from './true-frequency.ts';
@@ -110,28 +110,44 @@ const severity = (judgement: Judgement, index: number): number => {
   return place === -1 ? SERIOUS.length : place;
 };
 
-/** What came of the change: where the mode is now, the nearest pair, and what it made worse. */
+/** What came of the change: where the mode is now, its nearest pair, a worse pair elsewhere, and what became worse. */
 function TriedResult({ analysis, judgement, shown, tried, units }: TryPanelProps) {
   const { trying } = readingText;
   const before = analysis.modes[tried.modeIndex];
   const now = shown.analysis.modes[tried.modeIndex];
+  const own = worstOfMode(shown.judgement, tried.modeIndex);
   const [worst] = shown.judgement.separations;
-  const forcing = worst && shown.judgement.forcings[worst.forcingIndex];
+  const isElsewhere = worst !== undefined && own !== undefined && worst.verdict !== own.verdict;
   const worse = shown.judgement.forcings.filter(
     (_, index) => severity(shown.judgement, index) < severity(judgement, index),
   );
   return (
     <div class={styles.result} aria-live="polite">
       {before && now && <b>{trying.nowAt(saidHz(units, likelyHz(now)), saidHz(units, likelyHz(before)))}</b>}
-      {worst && forcing && worst.verdict !== 'blind' ? (
-        <span>
-          <VerdictMark verdict={worst.verdict} word={sentenceCase(verdictWord(worst.verdict))} />{' '}
-          {sentenceCase(forcingName(forcing))} {nearnessWords(worst)}.
-        </span>
+      {own ? (
+        <PairLine judgement={shown.judgement} separation={own} units={units} />
       ) : (
         <span>{trying.nothingNear}</span>
       )}
+      {isElsewhere && <PairLine judgement={shown.judgement} separation={worst} units={units} />}
       {worse.length > 0 && <span>{trying.worse(worse.map(forcingName).join(', '))}</span>}
     </div>
+  );
+}
+
+function PairLine(props: {
+  readonly judgement: Judgement;
+  readonly separation: Separation;
+  readonly units: ReadingUnits;
+}) {
+  const { judgement, separation, units } = props;
+  const forcing = judgement.forcings[separation.forcingIndex];
+  if (!forcing) return null;
+  const against = readingText.pair.against(forcingName(forcing), saidHz(units, separation.modeHz));
+  return (
+    <span>
+      <VerdictMark verdict={separation.verdict} word={`${sentenceCase(verdictWord(separation.verdict))}.`} />{' '}
+      {sentenceCase(against)} {nearnessWords(separation)}.
+    </span>
   );
 }

@@ -9,13 +9,16 @@ import { saidHz, type ReadingUnits } from './reading-units.ts';
 import { Section } from './section.tsx';
 import styles from './ways-out-section.module.css';
 
+/** Beyond these the pairs differ too little to be worth another list; the ladder's sliders try any change. */
+const MOST_PAIRS = 6;
+
 /** What would move a pair apart, pair by pair, with what it does to the others. */
 export function WaysOutSection(props: { readonly judgement: Judgement; readonly units: ReadingUnits }) {
   const { judgement, units } = props;
   const pairs = [...new Set(judgement.waysOut.map((way) => way.separationIndex))];
   if (pairs.length === 0) return null;
   const first = pairs.slice(0, 1);
-  const others = pairs.slice(1);
+  const others = pairs.slice(1, MOST_PAIRS);
   return (
     <Section title={readingText.waysOut.title}>
       {first.map((index) => (
