@@ -107,6 +107,28 @@ export function inverseRealTransform(spectrum: HalfSpectrum): Float64Array {
   return samples;
 }
 
+/** Two real signals from their half spectra by one complex inverse transform. Both of the same size. */
+export function inverseTwoReal(a: HalfSpectrum, b: HalfSpectrum): readonly [Float64Array, Float64Array] {
+  const size = a.size;
+  if (b.size !== size) throw new RangeError(`spectra must have one size, got ${size} and ${b.size}`);
+  const full = new Float64Array(2 * size);
+  for (let k = 0; k < size; k++) {
+    const mirrored = 2 * k > size;
+    const bin = mirrored ? size - k : k;
+    const sign = mirrored ? -1 : 1;
+    full[2 * k] = (a.re[bin] as number) - sign * (b.im[bin] as number);
+    full[2 * k + 1] = sign * (a.im[bin] as number) + (b.re[bin] as number);
+  }
+  const out = complexTransform(full, true);
+  const first = new Float64Array(size);
+  const second = new Float64Array(size);
+  for (let i = 0; i < size; i++) {
+    first[i] = out[2 * i] as number;
+    second[i] = out[2 * i + 1] as number;
+  }
+  return [first, second];
+}
+
 /** Bluestein's chirp transform: any length by a circular convolution of power-of-two length. */
 function chirpTransform(data: Float64Array, inverse: boolean): Float64Array {
   const n = data.length / 2;
