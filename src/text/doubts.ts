@@ -182,6 +182,7 @@ const FIGURES: Readonly<Partial<Record<string, (value: number) => string>>> = {
   repeatCount: (value) => `${value} ${value === 1 ? 'repeat' : 'repeats'}`,
   clippedCount: (value) => `${value} samples`,
   durationS: (value) => `${formatNumber(value, 2)} s`,
+  shiftRatio: (value) => `${formatNumber(100 * value, 2)} % on a light rail`,
   stepMps2: (value) => `step ${formatNumber(value, 2)} m/s²`,
 };
 

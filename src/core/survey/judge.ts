@@ -4,6 +4,7 @@ import type { Judgement, Separation, UnpairedVerdict } from '../model/judgement.
 import type { Place } from '../model/place.ts';
 import type { Forcing, Source } from '../model/source.ts';
 import { cautionsFor } from './cautions.ts';
+import { circumstanceDoubts } from './circumstance-doubts.ts';
 import { forcingsOf } from './forcings.ts';
 import { levelFindings } from './level-findings.ts';
 import { seenBand, type SeparationContext } from './separation.ts';
@@ -72,7 +73,8 @@ export function judge(
   const context: SeparationContext = { analysis, machineState: circumstances.machineState, thresholds };
   const { separations, impulsive } = withoutImpulses(separationsOf(forcings, context), forcings);
   const levels = levelFindings(analysis, settings.place);
-  const trust = combineTrust(analysis.doubts, analysis.modes);
+  const doubts = [...analysis.doubts, ...circumstanceDoubts(analysis, circumstances, settings.place)];
+  const trust = combineTrust(doubts, analysis.modes);
   return {
     forcings,
     separations,
@@ -89,7 +91,7 @@ export function judge(
       machineState: circumstances.machineState,
       visibleSway: circumstances.visibleSway,
     }),
-    doubts: analysis.doubts,
+    doubts,
     trust,
   };
 }

@@ -25,7 +25,7 @@ export const DOUBT_WEIGHTS: Readonly<Record<DoubtCode, DoubtWeight>> = {
   'sweep-fast': 'moderate',
   'gravity-scale': 'moderate',
   'tilt-leak': 'moderate',
-  'phone-mass': 'moderate',
+  'phone-mass': 'slight',
   beating: 'moderate',
   'coarse-step': 'moderate',
   'few-taps': 'moderate',
