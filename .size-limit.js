@@ -4,6 +4,7 @@ import { readFileSync } from 'node:fs';
 const page = readFileSync(new URL('dist/index.html', import.meta.url), 'utf8');
 const named = [...page.matchAll(/(?:src|href)="\.\/(assets\/[^"]+)"/g)].map((match) => `dist/${match[1]}`);
 
+// Limits and what became of the first ones: DEVELOPERS.md, "Budgets".
 export default [
   {
     name: 'JavaScript before first use',
@@ -11,11 +12,17 @@ export default [
     limit: '60 kB',
     gzip: true,
   },
-  { name: 'All JavaScript', path: ['dist/assets/*.js', 'dist/sw.js'], limit: '160 kB', gzip: true },
   {
-    name: 'First visit, with everything kept for offline',
-    path: ['dist/**/*', '!dist/_headers', '!dist/.inputs'],
-    limit: '250 kB',
+    name: 'Everything before first use',
+    path: ['dist/index.html', ...named, 'dist/manifest.webmanifest', 'dist/icon.svg'],
+    limit: '70 kB',
+    gzip: true,
+  },
+  { name: 'All JavaScript', path: ['dist/assets/*.js', 'dist/sw.js'], limit: '240 kB', gzip: true },
+  {
+    name: 'Everything kept for offline',
+    path: ['dist/index.html', 'dist/assets/*', 'dist/sw.js', 'dist/*.{svg,txt,webmanifest}'],
+    limit: '270 kB',
     gzip: true,
   },
 ];

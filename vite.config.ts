@@ -100,7 +100,8 @@ function offline() {
       ],
     },
     workbox: {
-      globPatterns: ['**/*.{js,css,html,svg,png,txt,webmanifest}'],
+      // Not the PNG icons: the system fetches those when the app is installed, and keeps them itself.
+      globPatterns: ['**/*.{js,css,html,svg,txt,webmanifest}'],
       navigateFallback: 'index.html',
       cleanupOutdatedCaches: true,
       // The first visit is under the worker's care at once; later versions wait (no skipWaiting).
