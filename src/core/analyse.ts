@@ -1,18 +1,22 @@
 import { ANALYSIS_VERSION } from './model/analysis.ts';
 import type { Analysis, AnalysisSettings, Procedure } from './model/analysis.ts';
-import { failure, success } from './model/outcome.ts';
+import type { Doubt } from './model/doubt.ts';
+import { success } from './model/outcome.ts';
 import type { Outcome } from './model/outcome.ts';
 import type { AnalysisResult } from './model/pictures.ts';
 import type { Recording } from './model/recording.ts';
 import { ambientProcedure } from './modes/ambient.ts';
 import { coastdownProcedure } from './modes/coastdown.ts';
+import { levelsOf } from './modes/levels.ts';
 import type { ProcedureAnswer } from './modes/procedure-answer.ts';
+import { recordingDoubts } from './modes/recording-doubts.ts';
 import { runningProcedure } from './modes/running-procedure.ts';
 import { tapProcedure } from './modes/tap/tap-procedure.ts';
 import { roundedForKeeping } from './modes/rounded-for-keeping.ts';
 import { conditionRecording } from './signal/condition-recording.ts';
 import type { ConditionedSignal } from './signal/condition-recording.ts';
 import { amplitudeSpectrum } from './signal/spectrum.ts';
+import { thinnedTrace } from './signal/trace.ts';
 import { combineTrust } from './survey/trust.ts';
 
 type ProcedureFunction = (signal: ConditionedSignal, settings: AnalysisSettings) => Outcome<ProcedureAnswer>;
@@ -45,7 +49,12 @@ function resultOf(
   procedure: Procedure,
   answer: ProcedureAnswer,
 ): AnalysisResult {
-  const { modes, tones, broadPeaks, tapTimesS, doubts, ringDowns, pass, coastdown } = answer;
+  const { modes, tones, broadPeaks, tapTimesS, ringDowns, pass, coastdown } = answer;
+  // A tap's background tones are not what it is trusted for.
+  const doubts = eachOnce([
+    ...answer.doubts,
+    ...recordingDoubts(signal, modes, procedure === 'tap' ? [] : tones),
+  ]);
   const analysis: Analysis = {
     version: ANALYSIS_VERSION,
     procedure,
@@ -55,6 +64,7 @@ function resultOf(
     modes,
     tones,
     broadPeaks,
+    levels: levelsOf(signal, tones),
     ...(coastdown === undefined ? {} : { coastdown }),
     tapTimesS,
     doubts,
@@ -63,10 +73,14 @@ function resultOf(
   return {
     analysis: roundedForKeeping(analysis),
     pictures: {
-      trace: { timeS: signal.timeS, accelerationMps2: signal.accelerationMps2 },
+      trace: thinnedTrace(signal.timeS, signal.accelerationMps2),
       spectrum: amplitudeSpectrum(signal.grid),
       ringDowns,
       ...(pass === undefined ? {} : { pass }),
     },
   };
 }
+
+/** A code stands once, with the figures of whoever said it first (the procedure before the recording). */
+const eachOnce = (doubts: readonly Doubt[]): Doubt[] =>
+  doubts.filter((doubt, i) => doubts.findIndex((other) => other.code === doubt.code) === i);

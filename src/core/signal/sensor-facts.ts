@@ -8,6 +8,9 @@ const ON_GRID_SHARE = 0.97;
 const FULL_SCALES_G = [2, 4, 8, 16, 32];
 const FULL_SCALE_TOLERANCE = 0.015;
 const STANDARD_GRAVITY_MPS2 = 9.80665;
+/** Values this close to the extreme sit on the rail with it; one alone may be chance. */
+const RAIL_WIDTH_RATIO = 5e-4;
+const RAIL_SAMPLES = 2;
 /** Equal extremes in a row that make a flat top. */
 const FLAT_TOP_SAMPLES = 3;
 /** A mean this large holds gravity, m/s²; phones read 9.2 to 10.2 at rest. */
@@ -72,7 +75,10 @@ function markRail(axis: Float32Array, sign: 1 | -1, stepMps2: number, clipped: U
   );
   const deviation = Math.sqrt(Math.max(0, square - mean * mean));
   const standsOut = extreme - mean > Math.max(4 * deviation, 20 * stepMps2);
-  const least = extreme - Math.max(stepMps2 / 2, 1e-6 * Math.abs(extreme));
+  const least = extreme - Math.max(stepMps2 / 2, RAIL_WIDTH_RATIO * Math.abs(extreme));
+  let atRail = 0;
+  for (let i = 0; i < axis.length; i++) if (sign * axis[i]! >= least) atRail++;
+  if (atRail < RAIL_SAMPLES) return;
   for (let i = 0; i < axis.length;) {
     let end = i;
     while (end < axis.length && sign * (axis[end] as number) >= least) end++;
