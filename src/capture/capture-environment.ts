@@ -3,7 +3,7 @@ import { createAccelerometerSource, hasAccelerometer } from './accelerometer-sou
 import { createMotionEventSource, hasMotionEvents } from './motion-event-source.ts';
 import { watchPermission } from './motion-permission.ts';
 import { watchPage } from './page-watch.ts';
-import { createPracticeSource } from './practice-source.ts';
+import { createLatePracticeSource } from './late-practice-source.ts';
 import { takeRecorderLock } from './recorder-lock.ts';
 import type { SampleSource } from './sensor-source.ts';
 import { holdWakeLock } from './wake-lock.ts';
@@ -33,7 +33,7 @@ export function browserCaptureEnvironment(): CaptureEnvironment {
   return {
     support: supportOf(),
     sources(practice) {
-      if (practice !== undefined) return [createPracticeSource(practice, nowMs)];
+      if (practice !== undefined) return [createLatePracticeSource(practice, nowMs)];
       return [
         ...(hasAccelerometer() ? [createAccelerometerSource(userAgent)] : []),
         createMotionEventSource(userAgent),

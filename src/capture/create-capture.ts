@@ -40,6 +40,8 @@ const TICK_MS = 100;
 const STALL_MS = 500;
 /** No running sensor after this long: there is none, ms. */
 const START_PATIENCE_MS = 3000;
+/** The simulated person taps again when nothing started for so long, s. */
+const ACT_AGAIN_S = 30;
 
 class CaptureSession implements CapturePort {
   readonly #journal: JournalPort;
@@ -54,8 +56,8 @@ class CaptureSession implements CapturePort {
   #answerCheck: ((outcome: Outcome<PhoneCheck>) => void) | undefined;
   #lastTickMs = 0;
   #lastWriteMs = 0;
-  /** The simulated person still has to act: tap, or switch off. */
-  #isActDue = false;
+  /** Sensor time from which the simulated person may act: tap, or switch off. */
+  #actAgainS = 0;
 
   constructor(journal: JournalPort, environment: CaptureEnvironment) {
     this.#journal = journal;
@@ -129,7 +131,7 @@ class CaptureSession implements CapturePort {
       added.forEach((code) => this.#run?.writer?.flag(code));
     }
     if (before.phase === after.phase) return;
-    if (after.phase === 'settling') this.#isActDue = after.options.startBy === 'first-tap';
+    if (after.phase === 'settling') this.#actAgainS = 0;
     if (after.phase === 'recording') this.#beginRecording(after);
     if (after.phase === 'ending') void this.#handOut(before, after.reason);
     if (after.phase === 'refused') {
@@ -237,19 +239,28 @@ class CaptureSession implements CapturePort {
   }
 
   #advance(run: SensorRun): void {
-    run.observed = run.observer.advance();
-    const { isSettled, tapCount, tapAtS } = run.observed;
-    const session = this.#session;
-    const isNewTap = session.phase === 'settling' && tapAtS !== undefined && tapAtS > session.nowS;
-    const newTapAtS = isNewTap ? tapAtS : undefined;
-    this.#dispatch({ type: 'advanced', nowS: run.newestS, isSettled, tapCount, tapAtS: newTapAtS });
-    if (this.#session.phase !== 'settling') return;
-    run.trim();
-    if (isSettled && this.#isActDue) this.#act(run);
+    do {
+      run.observed = run.observer.advance();
+      const { isSettled, tapCount, tapAtS } = run.observed;
+      const session = this.#session;
+      const nowS = run.observer.seenS;
+      const isNewTap = session.phase === 'settling' && tapAtS !== undefined && tapAtS > session.nowS;
+      const newTapAtS = isNewTap ? tapAtS : undefined;
+      this.#dispatch({ type: 'advanced', nowS, isSettled, tapCount, tapAtS: newTapAtS });
+      this.#actIfDue(run, nowS, isSettled);
+    } while (run.observer.isBehind && this.#run === run && this.#session.phase !== 'ending');
+    if (this.#session.phase === 'settling') run.trim();
   }
 
-  #act(run: SensorRun): void {
-    this.#isActDue = false;
+  /** With a start by tap the simulated person taps at rest, and again when that did not start anything. */
+  #actIfDue(run: SensorRun, nowS: number, isSettled: boolean): void {
+    const session = this.#session;
+    if (session.phase !== 'settling' || session.options.startBy !== 'first-tap') return;
+    if (isSettled && nowS >= this.#actAgainS) this.#act(run, nowS);
+  }
+
+  #act(run: SensorRun, nowS: number): void {
+    this.#actAgainS = nowS + ACT_AGAIN_S;
     run.source.act?.();
   }
 
@@ -267,7 +278,7 @@ class CaptureSession implements CapturePort {
     run.writer = new JournalWriter(this.#journal, run.buffer, first, run.meta(), () =>
       this.#dispatch({ type: 'flagged', code: 'storage-failed' }),
     );
-    if (options.startBy !== 'first-tap' || this.#isActDue) this.#act(run);
+    if (options.startBy !== 'first-tap' || this.#actAgainS === 0) this.#act(run, run.newestS);
   }
 
   async #handOut(before: Session, reason: InterruptionCode | undefined): Promise<void> {

@@ -6,6 +6,8 @@ import type { SampleBuffer } from './sample-buffer.ts';
  * person; the analysis finds its taps by itself. Runs in the tick, never in the sensor's handler.
  */
 
+/** What is looked at together, s. */
+const STEP_S = 0.1;
 /** Length of one level, s. */
 const LEVEL_S = 1;
 /** At rest: levels of three seconds in a row within this factor (a steady machine counts as rest). */
@@ -86,9 +88,20 @@ export class MotionObserver {
     this.#reference = this.#means.at(-1);
   }
 
-  /** Looks at the samples that came since the last call. */
+  /** Whether samples wait to be looked at. */
+  get isBehind(): boolean {
+    return this.#next < this.#buffer.count;
+  }
+
+  /** Time of the newest sample looked at, s. */
+  get seenS(): number {
+    return this.#lastS;
+  }
+
+  /** Looks at the next tenth of a second of samples: taps and rest are judged in small steps, however fast they come. */
   advance(): Observed {
-    for (; this.#next < this.#buffer.count; this.#next += 1) this.#look(this.#next);
+    const untilS = this.#next < this.#buffer.count ? this.#buffer.timeAt(this.#next) + STEP_S : 0;
+    for (; this.isBehind && this.#buffer.timeAt(this.#next) < untilS; this.#next += 1) this.#look(this.#next);
     const [level = 0] = this.#levels.slice(-1);
     return {
       levelMps2: level,

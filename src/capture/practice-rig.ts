@@ -6,6 +6,8 @@ import { seededChance, type Chance } from './seeded-chance.ts';
 const STEP_S = 1 / 1920;
 const GRAVITY_MPS2 = 9.81;
 const GAP_S = 0.3;
+/** Finer steps are no rounding: single precision is about that coarse, m/s². */
+const FINEST_STEP_MPS2 = 1e-6;
 /** First tap after the person was told to begin, s. */
 const FIRST_TAP_S = 1.5;
 /** Machine rests this long before it is switched off, s. */
@@ -158,7 +160,7 @@ export class PracticeRig {
   #asSensed(value: number): number {
     const { rangeMps2, stepMps2 } = this.#parameters;
     const clipped = Math.max(-rangeMps2, Math.min(rangeMps2, value));
-    if (stepMps2 <= 0) return clipped;
+    if (stepMps2 < FINEST_STEP_MPS2) return clipped;
     return Math.sign(clipped) * Math.floor(Math.abs(clipped) / stepMps2 + 0.5) * stepMps2;
   }
 }

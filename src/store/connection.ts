@@ -44,7 +44,7 @@ export async function connect(name: string, events: ConnectionEvents = {}): Prom
 
   const openAgain = async (): Promise<Database> => {
     const opened = await openDB<ThrumbookSchema>(name, DATABASE_VERSION, {
-      upgrade: (db, oldVersion, _new, transaction) => migrate(db, oldVersion, transaction as never),
+      upgrade: (db, oldVersion) => migrate(db, oldVersion),
       blocked: () => events.onBlocked?.(),
       blocking: () => {
         isWanted = true;

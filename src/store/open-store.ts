@@ -2,11 +2,9 @@ import type { JournalPort, StorePort } from '../app/ports.ts';
 import { ulid } from '../core/packet/ulid.ts';
 import { connect, type Connection } from './connection.ts';
 import { createErrorLog } from './error-log.ts';
-import { createFactStore } from './fact-store.ts';
+import type { FactPart } from './fact-part.ts';
 import { createJournal } from './journal.ts';
-import { createMergeStore } from './merge-store.ts';
 import { askPersistence, persistence, usageBytes } from './persistence.ts';
-import { preparePhoto } from './photo.ts';
 import { createReadingList } from './reading-list.ts';
 import { browserEnvironment, type StoreEnvironment } from './store-environment.ts';
 
@@ -38,17 +36,22 @@ export async function openStore(options: StoreOptions = {}): Promise<Store> {
   });
   const device = await deviceOf(connection, environment);
   const journal = createJournal(connection, environment);
-  const facts = createFactStore(connection, environment, device);
-  const merge = createMergeStore(connection);
-  const list = createReadingList(connection, (kind) => facts.entities(kind));
+  const part = loadedOnce(async () =>
+    (await import('./fact-part.ts')).createFactPart(connection, environment, device),
+  );
+  const withFacts = async <T>(work: (facts: FactPart) => Promise<T>): Promise<T> => work(await part());
+  const list = createReadingList(connection, (kind) => withFacts((facts) => facts.entities(kind)));
   const otherTabs = tabChannel(name, () => {
     list.forget();
     tell('facts');
   });
 
+  // Now, not at the first save: an update of the app may take the old files away in between.
+  void part().catch(() => {});
+
   /** What follows every change of facts, here and in the other tabs. */
-  const changed = async <T>(change: Promise<T>): Promise<T> => {
-    const result = await change;
+  const changed = async <T>(work: (facts: FactPart) => Promise<T>): Promise<T> => {
+    const result = await withFacts(work);
     list.forget();
     otherTabs.announce();
     tell('facts');
@@ -56,8 +59,6 @@ export async function openStore(options: StoreOptions = {}): Promise<Store> {
   };
 
   return {
-    ...facts,
-    ...merge,
     ...createErrorLog(connection, environment),
     begin: (meta) => journal.begin(meta),
     append: (id, sequence, timeS, accelerationMps2) => journal.append(id, sequence, timeS, accelerationMps2),
@@ -65,19 +66,33 @@ export async function openStore(options: StoreOptions = {}): Promise<Store> {
     recoverable: () => journal.recoverable(),
     recover: (id) => journal.recover(id),
     dropJournal: (id) => journal.dropJournal(id),
-    listReadings: (filter) => list.listReadings(filter),
+    // The summaries are seen to before the first list: see createFactPart.
+    listReadings: async (filter) => (await part(), list.listReadings(filter)),
     async saveReading(draft, recording, saving = {}) {
-      const reading = await changed(facts.saveReading(draft, recording, saving));
+      const reading = await changed((facts) => facts.saveReading(draft, recording, saving));
       if (saving.journalId !== undefined) journal.released(saving.journalId);
       return reading;
     },
-    saveResult: (draft) => changed(facts.saveResult(draft)),
-    edit: (entity, set) => changed(facts.edit(entity, set)),
-    newEntity: (kind, fields) => changed(facts.newEntity(kind, fields)),
-    erase: (id) => changed(facts.erase(id)),
-    preparePhoto,
-    savePhoto: (entity, jpeg, widthPx, heightPx) => changed(facts.savePhoto(entity, jpeg, widthPx, heightPx)),
-    putFacts: (incoming) => changed(merge.putFacts(incoming)),
+    saveResult: (draft) => changed((facts) => facts.saveResult(draft)),
+    openReading: (id) => withFacts((facts) => facts.openReading(id)),
+    edit: (entity, set) => changed((facts) => facts.edit(entity, set)),
+    newEntity: (kind, fields) => changed((facts) => facts.newEntity(kind, fields)),
+    entity: (id) => withFacts((facts) => facts.entity(id)),
+    entities: (kind) => withFacts((facts) => facts.entities(kind)),
+    history: (entity) => withFacts((facts) => facts.history(entity)),
+    erase: (id) => changed((facts) => facts.erase(id)),
+    preparePhoto: async (file) => (await import('./photo.ts')).preparePhoto(file),
+    savePhoto: (entity, jpeg, widthPx, heightPx) =>
+      changed((facts) => facts.savePhoto(entity, jpeg, widthPx, heightPx)),
+    photos: (entity) => withFacts((facts) => facts.photos(entity)),
+    async *facts() {
+      yield* (await part()).facts();
+    },
+    fact: (id) => withFacts((facts) => facts.fact(id)),
+    putFacts: (incoming) => changed((facts) => facts.putFacts(incoming)),
+    rawOf: (id) => withFacts((facts) => facts.rawOf(id)),
+    storedRawOf: (id) => withFacts((facts) => facts.storedRawOf(id)),
+    changesSince: (sequence, limit) => withFacts((facts) => facts.changesSince(sequence, limit)),
     getSetting: (key) => connection.run((database) => database.get('settings', key)),
     putSetting: (key, value) =>
       connection.change(['settings'], 'relaxed', async (change) => {
@@ -95,6 +110,18 @@ export async function openStore(options: StoreOptions = {}): Promise<Store> {
       otherTabs.close();
       connection.close();
     },
+  };
+}
+
+/** Loads at the first call; a failed load is tried again at the next. */
+function loadedOnce<T>(load: () => Promise<T>): () => Promise<T> {
+  let loaded: Promise<T> | undefined;
+  return () => {
+    loaded ??= load().catch((error: unknown) => {
+      loaded = undefined;
+      throw error;
+    });
+    return loaded;
   };
 }
 

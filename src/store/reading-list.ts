@@ -1,7 +1,7 @@
 import type { ReadingFilter, ReadingSummary } from '../app/ports.ts';
 import type { Entity, EntityKind } from '../core/model/fact.ts';
 import type { Connection } from './connection.ts';
-import { isSummary, passesFilter } from './reading-summary.ts';
+import { isSummary, passesFilter } from './summary-filter.ts';
 
 /** All summaries in memory (10,000 are about 3 MB), newest first, so that a filter answers at once. */
 export function createReadingList(

@@ -1,14 +1,12 @@
-import type { DBSchema, IDBPDatabase, IDBPTransaction, StoreNames } from 'idb';
+import type { DBSchema, IDBPDatabase, StoreNames } from 'idb';
 import type { ReadingSummary } from '../app/ports.ts';
-import type { EditFact, FieldValue } from '../core/model/fact.ts';
-import { summaryOf } from './reading-summary.ts';
-import { knownFact } from './fact-row.ts';
+import type { FieldValue } from '../core/model/fact.ts';
 import type { ChunkRow, ErrorRow, FactRow, JournalRow, RawRow } from './rows.ts';
 
 /*
- * The database and its history. A migration is data: what it creates, and what it fills from what is there. A published
- * one never changes; a new one is added at the end (recipe in DEVELOPERS.md). All run in one version-change transaction:
- * after a kill the old state or the new one is there, nothing between.
+ * The database and its history. A migration is data: what it creates. A published one never changes; a new one is added
+ * at the end (recipe in DEVELOPERS.md). All run in one version-change transaction: after a kill the old state or the new
+ * one is there, nothing between. What is derived from facts (summaries) is made anew by its own version, summary-build.ts.
  */
 
 export interface ThrumbookSchema extends DBSchema {
@@ -24,7 +22,6 @@ export interface ThrumbookSchema extends DBSchema {
 }
 
 export type Database = IDBPDatabase<ThrumbookSchema>;
-type Upgrade = IDBPTransaction<ThrumbookSchema, StoreNames<ThrumbookSchema>[], 'versionchange'>;
 
 interface NewStore {
   readonly name: StoreNames<ThrumbookSchema>;
@@ -37,7 +34,6 @@ export interface Migration {
   readonly to: number;
   readonly why: string;
   readonly create: readonly NewStore[];
-  readonly fill?: (upgrade: Upgrade) => Promise<void>;
 }
 
 export const MIGRATIONS: readonly Migration[] = [
@@ -60,22 +56,19 @@ export const MIGRATIONS: readonly Migration[] = [
       { name: 'summaries', keyPath: 'id' },
       { name: 'errors', autoIncrement: true },
     ],
-    fill: fillSummaries,
   },
 ];
 
 export const DATABASE_VERSION = MIGRATIONS.at(-1)!.to;
 
-/** Bring a database from `oldVersion` to the newest. Awaits nothing but the database itself. */
-export async function migrate(
+/** Bring a database from `oldVersion` to the newest. */
+export function migrate(
   database: Database,
   oldVersion: number,
-  upgrade: Upgrade,
   migrations: readonly Migration[] = MIGRATIONS,
-): Promise<void> {
-  for (const migration of migrations.filter(({ to }) => to > oldVersion)) {
-    for (const store of migration.create) createStore(database, store);
-    await migration.fill?.(upgrade);
+): void {
+  for (const { create } of migrations.filter(({ to }) => to > oldVersion)) {
+    for (const store of create) createStore(database, store);
   }
 }
 
@@ -85,17 +78,4 @@ function createStore(database: Database, { name, keyPath, autoIncrement, indexes
     ...(autoIncrement === undefined ? {} : { autoIncrement }),
   });
   for (const [index, path] of Object.entries(indexes)) store.createIndex(index as never, path);
-}
-
-async function fillSummaries(upgrade: Upgrade): Promise<void> {
-  const facts = upgrade.objectStore('facts');
-  const summaries = upgrade.objectStore('summaries');
-  const ids = await facts.index('kind').getAllKeys('reading');
-  for (const id of ids) {
-    const reading = knownFact(await facts.get(id), 'reading');
-    if (reading === undefined) continue;
-    const about = await facts.index('about').getAll(id);
-    const edits = about.map((row) => knownFact(row, 'edit')).filter((edit) => edit !== undefined);
-    await summaries.put(summaryOf(reading, edits as readonly EditFact[]));
-  }
 }

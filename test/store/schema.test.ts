@@ -14,11 +14,10 @@ let serial = 0;
 async function oldDatabase(version: number, readingCount: number): Promise<string> {
   const name = `schema-${(serial += 1)}`;
   const database: IDBPDatabase = await openDB(name, version, {
-    upgrade: (db, old, _new, change) =>
+    upgrade: (db, old) =>
       migrate(
         db as never,
         old,
-        change as never,
         MIGRATIONS.filter(({ to }) => to <= version),
       ),
   });

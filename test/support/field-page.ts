@@ -99,11 +99,10 @@ const field = {
   /** The database as an earlier version of the program left it. */
   async openAsVersion(version: number) {
     const database = await openDB('thrumbook', version, {
-      upgrade: (db, old, _new, transaction) =>
+      upgrade: (db, old) =>
         migrate(
           db as never,
           old,
-          transaction as never,
           MIGRATIONS.filter(({ to }) => to <= version),
         ),
     });
