@@ -1,4 +1,6 @@
 /** Composition root: the only place that knows every edge. */
+// First, so that the order of the layers is stated before any component's styles.
+import './ui/styles/index.css';
 import { render } from 'preact';
 import { createApp, type App } from './app/app.ts';
 import { createNavigation } from './app/navigation.ts';
@@ -11,7 +13,6 @@ import { problemSentence } from './text/problems.ts';
 import { screenText } from './text/screens.ts';
 import { Root } from './ui/root.tsx';
 import { StartFailed } from './ui/start-failed.tsx';
-import './ui/styles/index.css';
 import { applyRememberedTheme } from './ui/theme.ts';
 import { createAnalysisClient } from './worker/client.ts';
 

@@ -34,7 +34,7 @@ export const english = {
     sources: 'Sources',
     handOver: 'Hand over',
     phone: 'This phone',
-    phoneShort: 'Phone',
+    phoneTab: 'Phone',
     skip: 'Skip to the content',
   },
   common: {
@@ -53,7 +53,7 @@ export const english = {
     practice: 'Practice',
     notGiven: 'Not given',
   },
-  practiceStrip: 'Practice rig: a simulated phone on an invented structure',
+  practiceStrip: 'Practice rig: simulated phone',
   dropHere: 'Drop the file here',
   titles: {
     start: '',

@@ -26,7 +26,7 @@ const TABS = [
   },
   { route: { screen: 'sources' }, label: text.sources, icon: IconSources, covers: ['sources', 'source'] },
   { route: { screen: 'hand-over' }, label: text.handOver, icon: IconHandOver, covers: ['hand-over'] },
-  { route: { screen: 'phone' }, label: text.phone, icon: IconPhone, covers: ['phone'] },
+  { route: { screen: 'phone' }, label: text.phoneTab, icon: IconPhone, covers: ['phone'] },
 ] as const satisfies readonly {
   readonly route: Route;
   readonly label: string;

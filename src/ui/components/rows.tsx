@@ -19,7 +19,8 @@ export function Row(props: {
   readonly href: string;
   readonly title: ComponentChildren;
   readonly note?: ComponentChildren;
-  readonly end?: ComponentChildren;
+  /** What was measured, between the title and the note. */
+  readonly figure?: ComponentChildren;
   readonly isCurrent?: boolean;
   /** A check box that selects the row instead of opening it. */
   readonly select?: {
@@ -47,9 +48,9 @@ export function Row(props: {
       >
         <span class={styles.words}>
           <span class={styles.title}>{props.title}</span>
+          {props.figure && <span class={styles.figure}>{props.figure}</span>}
           {props.note && <span class="note">{props.note}</span>}
         </span>
-        {props.end && <span class={styles.end}>{props.end}</span>}
         <span class={styles.on}>
           <ArrowOn />
         </span>

@@ -6,7 +6,13 @@ export function Tally({ count, label }: { readonly count: number; readonly label
   const marks = Array.from({ length: shown }, (_, index) => index);
   const width = Math.max(60, Math.ceil((shown + 1) / 5) * 78);
   return (
-    <svg class={styles.tally} viewBox={`0 0 ${width} 52`} role="img" aria-label={label}>
+    <svg
+      class={styles.tally}
+      viewBox={`0 0 ${width} 52`}
+      preserveAspectRatio="xMinYMid meet"
+      role="img"
+      aria-label={label}
+    >
       {marks.map((index) => {
         const x = Math.floor(index / 5) * 78 + 10 + (index % 5) * 12;
         const isBar = index % 5 === 4;

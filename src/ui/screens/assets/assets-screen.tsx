@@ -6,6 +6,7 @@ import { BottomBar } from '../../components/bottom-bar.tsx';
 import { Button } from '../../components/button.tsx';
 import { IconAdd } from '../../components/icons.tsx';
 import { Page } from '../../components/page.tsx';
+import { PlacementDrawing } from '../../components/placement-drawing.tsx';
 import { useLoaded } from '../../use-loaded.ts';
 import { AddPlaceDialog } from './add-place-dialog.tsx';
 import { isEmptyTree, PlaceTreeRows } from './place-rows.tsx';
@@ -19,6 +20,7 @@ export function AssetsScreen({ app }: { readonly app: App }) {
     <Page title={text.title}>
       {tree && isEmptyTree(tree) && (
         <div class="stack">
+          <PlacementDrawing kind="stair" />
           <p>{text.empty}</p>
           <p class="quiet">{text.emptyNote}</p>
         </div>

@@ -28,17 +28,14 @@ export function ReadingRow(props: {
       title={name}
       note={note}
       {...(props.isCurrent ? { isCurrent: true } : {})}
-      end={
+      figure={
         reading.frequencyHz === undefined ? (
           <span class="note">{screenText.readings.noFrequency}</span>
         ) : (
           <>
             <strong>{formatFrequency(reading.frequencyHz, reading.frequencySdHz, frequencyUnit)}</strong>
-            {reading.dampingRatio !== undefined && (
-              <span class="note" style={{ display: 'block' }}>
-                {formatDamping(reading.dampingRatio, reading.dampingRatioSd)}
-              </span>
-            )}
+            {reading.dampingRatio !== undefined &&
+              ` · ${formatDamping(reading.dampingRatio, reading.dampingRatioSd)}`}
           </>
         )
       }

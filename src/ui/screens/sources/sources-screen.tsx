@@ -26,7 +26,7 @@ export function SourcesScreen({ app }: { readonly app: App }) {
               <a class={styles.kind} href={app.navigation.href({ screen: 'source', id: 'new', kind })}>
                 <IconAdd />
                 <span>
-                  <strong>{sourceKindName(kind)}</strong>
+                  <strong>{capital(sourceKindName(kind))}</strong>
                   <span class="note">{text.kindNotes[kind]}</span>
                 </span>
               </a>
@@ -37,6 +37,8 @@ export function SourcesScreen({ app }: { readonly app: App }) {
     </Page>
   );
 }
+
+const capital = (words: string) => words.charAt(0).toUpperCase() + words.slice(1);
 
 export function SourceRows(props: {
   readonly app: App;
@@ -58,7 +60,7 @@ export function SourceRows(props: {
           key={entry.id}
           href={app.navigation.href({ screen: 'source', id: entry.id })}
           title={entry.source.name}
-          note={`${sourceKindName(entry.source.kind)} · ${placeName(entry)}`}
+          note={`${capital(sourceKindName(entry.source.kind))} · ${placeName(entry)}`}
           isCurrent={entry.id === props.current}
         />
       ))}

@@ -3,7 +3,7 @@ import type { App } from '../../../app/app.ts';
 import type { RecoveredJournal } from '../../../app/ports.ts';
 import { screenText } from '../../../text/screens.ts';
 import { BottomBar } from '../../components/bottom-bar.tsx';
-import { Button } from '../../components/button.tsx';
+import { Button, LinkButton } from '../../components/button.tsx';
 import { FileButton } from '../../components/file-button.tsx';
 import { IconStart } from '../../components/icons.tsx';
 import { Page } from '../../components/page.tsx';
@@ -35,7 +35,11 @@ export function StartScreen({ app }: { readonly app: App }) {
   const roundIds = new Set(inRound.map((reading) => reading.id));
   const earlier = (loaded?.recent ?? []).filter((reading) => !roundIds.has(reading.id));
   return (
-    <Page title={isNew || !loaded ? text.lead : screenText.appName} quietFocus>
+    <Page
+      {...(isNew ? { over: screenText.appName } : {})}
+      title={isNew ? text.lead : screenText.appName}
+      quietFocus
+    >
       <UpdateNote app={app} />
       {loaded?.cut.map((journal) => (
         <CutRecording key={journal.journalId} app={app} journal={journal} />
@@ -43,7 +47,7 @@ export function StartScreen({ app }: { readonly app: App }) {
       {isNew && <Welcome />}
       {inRound.length > 0 && (
         <section class="stack">
-          <div class="row row-apart">
+          <div class="row row-apart row-one">
             <h2>
               {text.round} <span class="quiet">{text.roundNote(inRound.length)}</span>
             </h2>
@@ -69,9 +73,15 @@ export function StartScreen({ app }: { readonly app: App }) {
         </section>
       )}
       <div class="row">
-        {loaded && !isNew && <a href={app.navigation.href({ screen: 'readings' })}>{text.all}</a>}
+        {loaded && !isNew && (
+          <LinkButton kind="quiet" href={app.navigation.href({ screen: 'readings' })}>
+            {text.all}
+          </LinkButton>
+        )}
         <FileButton kind="quiet" label={text.openFile} onFile={(file) => void app.take.openFile(file)} />
-        <a href={app.navigation.href({ screen: 'pace' })}>{text.pace}</a>
+        <LinkButton kind="quiet" href={app.navigation.href({ screen: 'pace' })}>
+          {text.pace}
+        </LinkButton>
       </div>
       <BottomBar>
         <TakeButton app={app} />

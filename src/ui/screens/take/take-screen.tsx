@@ -1,5 +1,5 @@
 /** Take a reading: one step at a time, each saying the one thing to do. */
-import { useEffect } from 'preact/hooks';
+import { useEffect, useState } from 'preact/hooks';
 import type { App } from '../../../app/app.ts';
 import type { Route } from '../../../app/route.ts';
 import { screenText } from '../../../text/screens.ts';
@@ -22,10 +22,18 @@ export function TakeScreen({
   readonly route: Route & { screen: 'take' };
 }) {
   const state = useLive(app.take.state);
+  const [isPlanned, setIsPlanned] = useState(false);
   useEffect(() => {
     // A file that is being worked out came here with its own recording: nothing to prepare.
-    if (state.phase === 'analysing') return;
-    void app.take.prepare(route.spot ? { spot: route.spot } : {}, route.procedure);
+    if (app.take.state.get().phase === 'analysing') return;
+    let isCurrent = true;
+    setIsPlanned(false);
+    void app.take
+      .prepare(route.spot ? { spot: route.spot } : {}, route.procedure)
+      .then(() => isCurrent && setIsPlanned(true));
+    return () => {
+      isCurrent = false;
+    };
   }, [route.spot, route.procedure]);
   useEffect(
     () => () => {
@@ -62,6 +70,6 @@ export function TakeScreen({
         </Page>
       );
     case 'prepare':
-      return <PrepareStep key="prepare" app={app} onLeave={leave} />;
+      return isPlanned ? <PrepareStep key="prepare" app={app} onLeave={leave} /> : null;
   }
 }

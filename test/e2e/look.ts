@@ -1,0 +1,79 @@
+/**
+ * Pictures of every screen at three sizes and three themes, into look/: `npm run look [-- name]`.
+ * Needs the built app (`npm run build`). Everything shown was made on the practice rig, in an invented place.
+ */
+import { mkdirSync } from 'node:fs';
+import { launchBrowser, serveApp } from '../support/browser.ts';
+import { furnish, type Furnished } from '../support/furnish.ts';
+
+const SIZES = [
+  { width: 360, height: 740 },
+  { width: 412, height: 915 },
+  { width: 1280, height: 800 },
+] as const;
+const THEMES = ['light', 'dark', 'sunlight'] as const;
+const FOLDER = 'look';
+
+/** Screens by name and hash; a hash of `undefined` is taken while furnishing. */
+const screensOf = (ids: Furnished): Readonly<Record<string, string>> => ({
+  start: '#/',
+  take: '#/take',
+  reading: `#/reading/${ids.reading}`,
+  readings: '#/readings',
+  trash: '#/readings?trash=1',
+  compare: `#/compare/${ids.earlier}/${ids.reading}`,
+  assets: '#/assets',
+  site: `#/site/${ids.site}`,
+  asset: `#/asset/${ids.asset}`,
+  spot: `#/spot/${ids.spot}`,
+  series: `#/series/${ids.spot}`,
+  sources: '#/sources',
+  source: `#/source/${ids.source}`,
+  'source-new': '#/source/new?kind=wind',
+  'hand-over': '#/hand-over',
+  phone: '#/phone',
+  'phone-check': '#/phone/check',
+  'phone-storage': '#/phone/storage',
+  'phone-about': '#/phone/about',
+  'phone-privacy': '#/phone/privacy',
+  'phone-cautions': '#/phone/cautions',
+  pace: '#/pace?hz=7.4',
+  lost: '#/nowhere',
+});
+
+const wanted = process.argv[2];
+const started = Date.now();
+const app = await serveApp();
+const browser = await launchBrowser({ viewport: SIZES[0] });
+const { page } = browser;
+mkdirSync(FOLDER, { recursive: true });
+
+const shoot = async (name: string, theme: string, width: number, whole: boolean) => {
+  await page.waitForTimeout(120);
+  await page.screenshot({ path: `${FOLDER}/${name}-${width}-${theme}.png`, fullPage: whole });
+};
+
+const ids = await furnish(page, app.url, async (name) => {
+  if (!wanted || name.includes(wanted)) await shoot(name, 'light', SIZES[0].width, false);
+});
+let count = 0;
+for (const [name, hash] of Object.entries(screensOf(ids))) {
+  if (wanted && !name.includes(wanted)) continue;
+  for (const size of SIZES) {
+    await page.setViewportSize(size);
+    await page.goto(`${app.url}${hash}`);
+    await page.getByRole('heading', { level: 1 }).first().waitFor();
+    await page.waitForTimeout(name === 'reading' ? 900 : 250);
+    for (const theme of THEMES) {
+      await page.evaluate((next) => void (document.documentElement.dataset['theme'] = next), theme);
+      await shoot(name, theme, size.width, false);
+      count += 1;
+    }
+  }
+}
+process.stdout.write(
+  `${count} pictures in ${FOLDER}/, ${Math.round((Date.now() - started) / 1000)} s; faults: ${browser.faults.length}\n`,
+);
+for (const fault of browser.faults) process.stdout.write(`${fault}\n`);
+await browser.close();
+await app.stop();

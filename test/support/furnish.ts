@@ -1,0 +1,61 @@
+/** An invented place with sources and visits, made through the screens as a person would, on the practice rig. */
+import type { Page } from 'playwright-core';
+import { recordHere, takePracticeReading } from './app-steps.ts';
+
+/** Ids without their kind, as they stand in the addresses. */
+export interface Furnished {
+  readonly site: string;
+  readonly asset: string;
+  readonly spot: string;
+  readonly source: string;
+  readonly reading: string;
+  readonly earlier: string;
+}
+
+/** Last part of the present hash. */
+const idInAddress = (page: Page): string => new URL(page.url()).hash.split('/').at(-1) ?? '';
+
+/** Simulated time runs this many times faster than the clock. */
+const PACE = 4;
+
+/** @param onState called with a name whenever a state is on screen that no address leads to. */
+export async function furnish(
+  page: Page,
+  url: string,
+  onState: (name: string) => Promise<void> = async () => {},
+): Promise<Furnished> {
+  await page.goto(`${url}?rig=handrail&pace=${PACE}`);
+  await page.getByRole('button', { name: 'Take a reading' }).waitFor();
+  await onState('start-new');
+  await page.goto(`${url}?rig=handrail&pace=${PACE}#/assets`);
+  const site = await addPlace(page, 'Add a place', 'Mill yard', 'Site');
+  const asset = await addPlace(page, 'Add an asset', 'Quay stair, upper flight');
+  const spot = await addPlace(page, 'Add a spot', 'Upper rail, mid-span');
+  const readings: string[] = [];
+  for (const f of ['7.4,11.9', '7.38,11.9', '7.05,11.8']) {
+    await page.goto('about:blank');
+    await page.goto(`${url}?rig=handrail&pace=${PACE}&f=${f}#/take?spot=${spot}`);
+    await recordHere(page);
+    readings.push(idInAddress(page));
+  }
+  await page.goto('about:blank');
+  await page.goto(`${url}?rig=handrail&pace=${PACE}#/source/new?kind=footfall`);
+  await page.getByRole('button', { name: 'Save' }).click();
+  await page.getByRole('link', { name: /^People/ }).first().click();
+  await page.getByRole('heading', { level: 1, name: 'People' }).waitFor();
+  const source = idInAddress(page);
+  await page.goto(`${url}?rig=handrail&pace=${PACE}#/`);
+  await takePracticeReading(page);
+  return { site, asset, spot, source, reading: readings[2] ?? '', earlier: readings[0] ?? '' };
+}
+
+async function addPlace(page: Page, button: string, name: string, kind?: string): Promise<string> {
+  await page.getByRole('button', { name: button }).click();
+  const dialog = page.getByRole('dialog');
+  if (kind) await dialog.getByRole('radio', { name: kind }).check({ force: true });
+  await dialog.getByLabel('Name').fill(name);
+  if (button === 'Add a spot') await dialog.getByLabel('Kind of spot').selectOption('handrail');
+  await dialog.getByRole('button', { name: 'Add' }).click();
+  await page.getByRole('heading', { level: 1, name }).waitFor();
+  return idInAddress(page);
+}
