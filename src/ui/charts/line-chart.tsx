@@ -156,7 +156,7 @@ export function LineChart(props: LineChartProps) {
           />
         )}
       </div>
-      {props.table && <DataTable {...props.table} />}
+      {props.table && <DataTable of={name} {...props.table} />}
     </div>
   );
 }

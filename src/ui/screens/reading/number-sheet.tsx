@@ -173,22 +173,31 @@ const checkText = (check: Mode['halfPower'] | undefined): string => {
   return 'refusal' in check ? refusalSentence(check.refusal) : formatDamping(check.dampingRatio);
 };
 
-const ModeTable = ({ analysis, units }: { readonly analysis: Analysis; readonly units: ReadingUnits }) => (
-  <DataTable
-    summary={readingText.modes(analysis.modes.length)}
-    head={readingText.modeHead}
-    rows={analysis.modes.map((mode) => [
-      saidHz(units, likelyHz(mode), mode.frequencySdHz),
-      formatDamping(likelyDampingRatio(mode), mode.dampingRatioSd),
-      saidMps2(units, mode.amplitudeMps2),
-      directionWord(mode.verticalShare),
-      checkText(mode.halfPower),
-      checkText(mode.logDecrement),
-      `${saidHz(units, mode.frequencyHz)}, ${readingText.fold(mode.fold.verdict)}`,
-      readingText.method(mode.method),
-    ])}
-  />
-);
+/** A column a mode: on a phone four columns fit, eight do not. */
+function ModeTable({ analysis, units }: { readonly analysis: Analysis; readonly units: ReadingUnits }) {
+  const { modes } = analysis;
+  const row = (name: string, said: (mode: Mode) => string) => [name, ...modes.map(said)];
+  const words = readingText.modeRows;
+  return (
+    <DataTable
+      summary={readingText.modes(modes.length)}
+      head={['', ...modes.map((_, index) => readingText.modeNumber(index + 1))]}
+      rows={[
+        row(words.frequency, (mode) => saidHz(units, likelyHz(mode), mode.frequencySdHz)),
+        row(words.damping, (mode) => formatDamping(likelyDampingRatio(mode), mode.dampingRatioSd)),
+        row(words.largest, (mode) => saidMps2(units, mode.amplitudeMps2)),
+        row(words.direction, (mode) => directionWord(mode.verticalShare)),
+        row(words.halfPower, (mode) => checkText(mode.halfPower)),
+        row(words.logDecrement, (mode) => checkText(mode.logDecrement)),
+        row(
+          words.fold,
+          (mode) => `${saidHz(units, mode.frequencyHz)}, ${readingText.fold(mode.fold.verdict)}`,
+        ),
+        row(words.method, (mode) => readingText.method(mode.method)),
+      ]}
+    />
+  );
+}
 
 const ToneTable = ({
   analysis,

@@ -1,8 +1,8 @@
-import type { Analysis } from '../../../core/model/analysis.ts';
+import type { Analysis, Mode } from '../../../core/model/analysis.ts';
 import type { Judgement, Separation } from '../../../core/model/judgement.ts';
 import { foldedFrequencyHz } from '../../../core/picture/folded-frequency.ts';
 import { formatInterval } from '../../../text/number.ts';
-import { formatFrequencyRange } from '../../../text/quantity.ts';
+import { formatDamping, formatFrequencyRange } from '../../../text/quantity.ts';
 import { readingText } from '../../../text/reading-screen.ts';
 import { nearnessWords } from '../../../text/sentence.ts';
 import { forcingName, forcingOrigin } from '../../../text/sources.ts';
@@ -10,9 +10,10 @@ import { unpairedText, verdictText, verdictWord } from '../../../text/verdicts.t
 import { VerdictMark } from '../../components/verdict-mark.tsx';
 import { timesText } from './amplification-text.tsx';
 import styles from './pair-card.module.css';
+import { keptTogether } from './kept-together.ts';
 import { pickedSeparation, type Picked } from './pairs.ts';
 import { saidHz, saidMps2, type ReadingUnits } from './reading-units.ts';
-import { likelyHz } from './true-frequency.ts';
+import { likelyDampingRatio, likelyHz } from './true-frequency.ts';
 
 interface PairCardProps {
   readonly analysis: Analysis;
@@ -37,18 +38,37 @@ function CardContent({ analysis, judgement, picked, units }: PairCardProps) {
   if (picked.kind === 'tone') return <ToneCard {...{ analysis, judgement, units }} index={picked.index} />;
   const separation = pickedSeparation(judgement, picked);
   if (separation)
-    return <SeparationCard {...{ judgement, separation, units }} rateHz={analysis.recording.rateHz} />;
+    return (
+      <>
+        {picked.kind === 'mode' && <ModeLine mode={analysis.modes[picked.index]} units={units} />}
+        <SeparationCard {...{ judgement, separation, units }} />
+      </>
+    );
   if (picked.kind === 'forcing')
     return <ForcingCard {...{ judgement, units }} index={picked.index} rateHz={analysis.recording.rateHz} />;
-  const mode = analysis.modes[picked.kind === 'mode' ? picked.index : picked.mode];
-  return mode ? <p>{readingText.pair.modeAlone(saidHz(units, likelyHz(mode), mode.frequencySdHz))}</p> : null;
+  return (
+    <>
+      <ModeLine mode={analysis.modes[picked.kind === 'mode' ? picked.index : picked.mode]} units={units} />
+      <p>{readingText.pair.modeAlone}</p>
+    </>
+  );
+}
+
+function ModeLine({ mode, units }: { readonly mode: Mode | undefined; readonly units: ReadingUnits }) {
+  if (mode === undefined) return null;
+  const frequency = keptTogether(saidHz(units, likelyHz(mode), mode.frequencySdHz));
+  const damping = keptTogether(formatDamping(likelyDampingRatio(mode), mode.dampingRatioSd));
+  return (
+    <p>
+      <b>{readingText.pair.mode(frequency, damping)}</b>
+    </p>
+  );
 }
 
 function SeparationCard(props: {
   readonly judgement: Judgement;
   readonly separation: Separation;
   readonly units: ReadingUnits;
-  readonly rateHz: number;
 }) {
   const { separation, judgement, units } = props;
   const forcing = judgement.forcings[separation.forcingIndex];
