@@ -12,8 +12,10 @@ const LARGEST_UNDERSTATEMENT = 0.05;
 
 /** Decimal places at which ± has one digit (two when it begins with 1), rounded so that it hardly understates. */
 function roundedHalfWidth(halfWidth: number): { readonly value: number; readonly places: number } {
-  const exponent = Math.floor(Math.log10(halfWidth));
-  const leading = Math.floor(halfWidth / 10 ** exponent + 1e-9);
+  // By the figure that two digits would show: 0.196 is 0.20 and begins with 2.
+  const twoDigits = Number(halfWidth.toPrecision(2));
+  const exponent = Math.floor(Math.log10(twoDigits) + 1e-12);
+  const leading = Math.floor(twoDigits / 10 ** exponent + 1e-9);
   const places = leading === 1 ? 1 - exponent : -exponent;
   const step = 10 ** -places;
   const nearest = Math.round(halfWidth / step) * step;

@@ -92,6 +92,7 @@ const SOURCE_REASONS: Readonly<Record<string, string>> = {
 
 function badSource(facts: Facts): string {
   const field = text(facts, 'field');
+  if (field === '') return 'This source cannot be used.';
   const where = facts['name'] === undefined ? '' : `${text(facts, 'name')}: `;
   const source =
     whole(facts, 'row') === undefined || facts['row'] === 0 ? '' : `Source ${whole(facts, 'row')}: `;

@@ -55,6 +55,15 @@ function afterwards(way: WayOut): string {
     : ` Then ${still}${way.verdictAfter}${amplified}.`;
 }
 
+/** Names told in full; the rest are counted. */
+const LONGEST_LIST_COUNT = 3;
+function listed(names: readonly string[]): string {
+  const once = [...new Set(names)];
+  const rest = once.length - LONGEST_LIST_COUNT;
+  const told = rest > 0 ? [...once.slice(0, LONGEST_LIST_COUNT), `${rest} more`] : once;
+  return told.length < 2 ? told.join('') : `${told.slice(0, -1).join(', ')} and ${told.at(-1)}`;
+}
+
 function sideEffects(way: WayOut, judgement: Judgement): string {
   const worse = way.sideEffects.flatMap((index) => {
     const separation = judgement.separations[index];
@@ -65,9 +74,8 @@ function sideEffects(way: WayOut, judgement: Judgement): string {
     const forcing = judgement.forcings[index];
     return forcing ? [forcingName(forcing)] : [];
   });
-  const nearer = worse.length === 0 ? '' : ` But it comes nearer to ${[...new Set(worse)].join(' and ')}.`;
-  const sits =
-    mounts.length === 0 ? '' : ` But the mounts would sit near ${[...new Set(mounts)].join(' and ')}.`;
+  const nearer = worse.length === 0 ? '' : ` But it comes nearer to ${listed(worse)}.`;
+  const sits = mounts.length === 0 ? '' : ` But the mounts would sit near ${listed(mounts)}.`;
   return nearer + sits;
 }
 

@@ -2,6 +2,14 @@ import type { Separation, Verdict } from '../model/judgement.ts';
 import type { Forcing } from '../model/source.ts';
 import { separationOf, type SeparationContext } from './separation.ts';
 
+/** A rise of the amplification below this is none. Our own bound. */
+const NOTICED_RISE_RATIO = 1.05;
+
+/** A pair gets worse when its verdict does and its response grows (more damping widens the zones and worsens nothing). */
+export const isWorse = (before: Separation, after: Separation): boolean =>
+  VERDICT_RANK[after.verdict] > VERDICT_RANK[before.verdict] &&
+  after.amplification.interval[1] > NOTICED_RISE_RATIO * before.amplification.interval[1];
+
 /** Worse is higher; blind stands above apart because it is not known to be good. */
 export const VERDICT_RANK: Readonly<Record<Verdict, number>> = {
   apart: 0,

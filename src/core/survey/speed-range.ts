@@ -8,7 +8,7 @@ import {
   frequencySpreadRatio,
 } from './mode-intervals.ts';
 import { isStoppedAgainstRunning, separationOf } from './separation.ts';
-import { VERDICT_RANK } from './separations.ts';
+import { isWorse } from './separations.ts';
 import { AIM_MARGIN_RATIO, type WaysOutContext } from './ways-out-context.ts';
 import { zonesFor } from './zones.ts';
 
@@ -129,7 +129,7 @@ function outcomeAtSpeed(separation: Separation, forcing: Forcing, speedRpm: numb
     const same =
       other.source === forcing.source && isOfShaft(context.forcings[other.forcingIndex] as Forcing);
     if (!same || other === separation) return [];
-    return VERDICT_RANK[again(other).verdict] > VERDICT_RANK[other.verdict] ? [index] : [];
+    return isWorse(other, again(other)) ? [index] : [];
   });
   return {
     nearestSpeedRpm: speedRpm,

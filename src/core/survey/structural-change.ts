@@ -18,7 +18,9 @@ function changedMode(mode: Mode, change: StructuralChange): Mode {
     frequencyHz: mode.frequencyHz * scale,
     frequencySdHz: mode.frequencySdHz * scale,
     dampingRatio: damping,
-    dampingRatioSd: mode.dampingRatioSd * (damping / mode.dampingRatio),
+    // A damping that is aimed at has no uncertainty of measurement.
+    dampingRatioSd:
+      change.dampingRatio === undefined ? mode.dampingRatioSd * (damping / mode.dampingRatio) : 0,
     fold: { ...mode.fold, candidatesHz: mode.fold.candidatesHz.map((candidateHz) => candidateHz * scale) },
   };
 }

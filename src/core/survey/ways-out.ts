@@ -1,4 +1,5 @@
 /** Changes that would move a coincident or close pair apart; each is judged again with the change made. */
+import type { Analysis } from '../model/analysis.ts';
 import type { Interval } from '../model/interval.ts';
 import type { Separation, WayOut } from '../model/judgement.ts';
 import type { Forcing } from '../model/source.ts';
@@ -6,7 +7,7 @@ import { dampingForAmplification } from './amplification.ts';
 import { isolationWay } from './isolation.ts';
 import { dampingInterval, frequencyInterval, frequencySpreadRatio } from './mode-intervals.ts';
 import { separationOf } from './separation.ts';
-import { VERDICT_RANK } from './separations.ts';
+import { isWorse } from './separations.ts';
 import { speedWay } from './speed-range.ts';
 import { changedAnalysis, type StructuralChange } from './structural-change.ts';
 import { AIM_MARGIN_RATIO, type WaysOutContext } from './ways-out-context.ts';
@@ -43,7 +44,7 @@ function pairOf(separationIndex: number, context: WaysOutContext): Pair {
 
 /** Judges the pair again, and every other pair of the same mode, after a change. */
 function outcomeOf(pair: Pair, change: StructuralChange, context: WaysOutContext) {
-  const changed = { ...context, analysis: changedAnalysis(context.analysis, change) };
+  const changed = { ...context, analysis: seeingAll(changedAnalysis(context.analysis, change)) };
   const again = (separation: Separation): Separation =>
     separationOf(
       separation.modeIndex,
@@ -54,7 +55,7 @@ function outcomeOf(pair: Pair, change: StructuralChange, context: WaysOutContext
   const after = again(pair.separation);
   const sideEffects = context.separations.flatMap((other, index) => {
     if (index === pair.separationIndex || other.modeIndex !== change.modeIndex) return [];
-    return VERDICT_RANK[again(other).verdict] > VERDICT_RANK[other.verdict] ? [index] : [];
+    return isWorse(other, again(other)) ? [index] : [];
   });
   return {
     verdictAfter: after.verdict,
@@ -63,10 +64,16 @@ function outcomeOf(pair: Pair, change: StructuralChange, context: WaysOutContext
   };
 }
 
+/** What is planned is judged as if all were seen: blindness belongs to a recording, not to a change. */
+function seeingAll(analysis: Analysis): Analysis {
+  const { coastdown: _, ...rest } = analysis;
+  return { ...rest, recording: { ...analysis.recording, usableBandHz: [0, Number.MAX_VALUE] } };
+}
+
 /** Stiffer, so that the whole forcing lies below: f' = forcing / apart ratio, factor (f'/f)². */
 function stiffnessWay(pair: Pair, context: WaysOutContext): WayOut | undefined {
   const targetHz = aim(pair.forcing.frequencyHz[1] / pair.apart[0], 1);
-  const factor: Interval = [(targetHz / pair.modeHz[1]) ** 2, (targetHz / pair.modeHz[0]) ** 2];
+  const factor: Interval = [Math.max(1, (targetHz / pair.modeHz[1]) ** 2), (targetHz / pair.modeHz[0]) ** 2];
   if (!(factor[1] > 1) || !Number.isFinite(factor[1])) return undefined;
   const change = { modeIndex: pair.separation.modeIndex, stiffnessFactor: factor[1] };
   return {
@@ -83,7 +90,7 @@ function stiffnessWay(pair: Pair, context: WaysOutContext): WayOut | undefined {
 function massWay(pair: Pair, context: WaysOutContext): WayOut | undefined {
   if (!Number.isFinite(pair.apart[1])) return undefined;
   const targetHz = aim(pair.forcing.frequencyHz[0] / pair.apart[1], -1);
-  const factor: Interval = [(pair.modeHz[0] / targetHz) ** 2, (pair.modeHz[1] / targetHz) ** 2];
+  const factor: Interval = [Math.max(1, (pair.modeHz[0] / targetHz) ** 2), (pair.modeHz[1] / targetHz) ** 2];
   if (!(factor[1] > 1)) return undefined;
   const change = { modeIndex: pair.separation.modeIndex, massFactor: factor[1] };
   return {
