@@ -24,10 +24,15 @@ export interface Pass {
 const TRACKED_SHARE = 0.48;
 /** A rising line this much clearer than a falling one (mean ln of power over floor) is a folded sweep or a run-up. */
 const RISING_MARGIN = 0.25;
-/** Residual over the sensor's noise (variance) at which no further start is tried. */
-const CLEAN_RATIO = 1.15;
-/** Orders of the polynomial through the track: the lower one holds where the line is faint. */
-const TRACK_ORDERS = [2, 3];
+/** Ways to lay a first sweep through the track. Above the mode the line is not hidden by the mode ringing on. */
+const TRACK_STARTS = [
+  { windowS: TRACK_WINDOWS_S[0], aboveShare: 1.03, order: 2 },
+  { windowS: TRACK_WINDOWS_S[1], aboveShare: 1.03, order: 2 },
+  { windowS: TRACK_WINDOWS_S[0], aboveShare: 0, order: 3 },
+  { windowS: TRACK_WINDOWS_S[1], aboveShare: 0, order: 2 },
+] as const;
+/** Two starts that end within this ratio of residual variance have found the same answer. */
+const CONFIRMED = 1.002;
 /** Clarity below which a point of the track counts for nothing. */
 const CLEAR_POINT = 2;
 /** Scatter of the tracked frequency, Hz, beyond which a point is an outlier. */
@@ -55,17 +60,20 @@ export function findPass(conditioned: ConditionedSignal): Outcome<Pass> {
     return failure('folded-sweep', { rateHz: facts.rateHz, highestHz: facts.rateHz / 2 });
   const guess = guessFromWholePass(grid, [1, highestHz]);
   if (!guess) return failure('no-pass', { durationS });
-  const noise = noiseVariance(conditioned);
   let best: Outcome<Pass> | undefined;
-  for (const windowS of TRACK_WINDOWS_S)
-    for (const order of TRACK_ORDERS) {
-      const track = windowS === TRACK_WINDOWS_S[0] ? falling : trackLine(grid, highestHz, 'falling', windowS);
-      if (!track) continue;
-      const pass = fitted(conditioned, trackPolynomial(track, order), guess);
-      if (!pass.ok) best ??= pass;
-      else if (!best?.ok || pass.value.fit.residualVariance < best.value.fit.residualVariance) best = pass;
-      if (best?.ok && best.value.fit.residualVariance < CLEAN_RATIO * noise) return best;
+  for (const { windowS, aboveShare, order } of TRACK_STARTS) {
+    const track = windowS === TRACK_WINDOWS_S[0] ? falling : trackLine(grid, highestHz, 'falling', windowS);
+    if (!track) continue;
+    const pass = fitted(conditioned, trackPolynomial(track, aboveShare * guess.frequencyHz, order), guess);
+    if (!pass.ok) {
+      best ??= pass;
+      continue;
     }
+    const isConfirmed =
+      best?.ok && pass.value.fit.residualVariance > best.value.fit.residualVariance / CONFIRMED;
+    if (!best?.ok || pass.value.fit.residualVariance < best.value.fit.residualVariance) best = pass;
+    if (isConfirmed && pass.value.fit.residualVariance < best.value.fit.residualVariance * CONFIRMED) break;
+  }
   return best ?? failure('no-pass', { durationS });
 }
 
@@ -79,13 +87,15 @@ function noiseVariance(conditioned: ConditionedSignal): number {
 }
 
 /** Bent line through the clear points of a track. */
-function trackPolynomial(track: LineTrack, order: number): Sweep {
+function trackPolynomial(track: LineTrack, aboveHz: number, order: number): Sweep {
   const first = track.timeS[0] as number;
   const last = track.timeS[track.timeS.length - 1] as number;
   const centreS = (first + last) / 2;
   const halfS = (last - first) / 2;
   const u = track.timeS.map((t) => (t - centreS) / halfS);
-  const weights = track.clarity.map((c) => Math.max(0, c - CLEAR_POINT));
+  const weights = track.clarity.map((c, k) =>
+    (track.frequencyHz[k] as number) > aboveHz ? Math.max(0, c - (aboveHz > 0 ? 0 : CLEAR_POINT)) : 0,
+  );
   return {
     centreS,
     halfS,

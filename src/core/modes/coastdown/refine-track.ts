@@ -1,10 +1,9 @@
-import { polynomialAt, weightedPolynomial } from './polynomial-fit.ts';
+import { weightedPolynomial } from './polynomial-fit.ts';
 import { speedAt, sweepColumns } from './sweep-response.ts';
 import type { Sweep } from './sweep-response.ts';
 
-/** Length of the blocks whose phases are compared, s. */
-const BLOCK_S = 0.35;
-const ROUNDS = 10;
+/** Lengths of the blocks whose phases are compared, round by round, s: short ones catch large errors, long ones small. */
+const BLOCKS_S = [0.35, 0.35, 0.35, 0.35, 0.7, 0.7, 1.4, 1.4, 2.8, 2.8];
 
 /**
  * Brings a rough sweep within reach of the fit: the response expected from it is compared block by block with what was
@@ -19,8 +18,9 @@ export function refineSweep(
   dampingRatio: number,
 ): Sweep {
   let sweep = start;
-  for (let round = 0; round < ROUNDS; round++) {
-    const blocks = comparedBlocks(timeS, samples, sweep, frequencyHz, dampingRatio);
+  BLOCKS_S.forEach((blockS, round) => {
+    const blocks = comparedBlocks(timeS, samples, sweep, frequencyHz, dampingRatio, blockS);
+    if (blocks.length <= 2 * sweep.speedHz.length) return;
     const u: number[] = [];
     const speed: number[] = [];
     const weights: number[] = [];
@@ -38,9 +38,7 @@ export function refineSweep(
     const order = sweep.speedHz.length - 1;
     const correction = weightedPolynomial(u, speed, weights, round < 3 ? Math.min(order, round) : order);
     sweep = { ...sweep, speedHz: sweep.speedHz.map((c, j) => c + (correction[j] ?? 0)) };
-    const largest = Math.max(...u.map((at) => Math.abs(polynomialAt(correction, at))));
-    if (round >= 3 && largest < 0.002) break;
-  }
+  });
   return sweep;
 }
 
@@ -58,13 +56,14 @@ function comparedBlocks(
   sweep: Sweep,
   frequencyHz: number,
   dampingRatio: number,
+  blockS: number,
 ): Block[] {
   const { re, im } = sweepColumns(timeS, sweep, frequencyHz, dampingRatio);
   const blocks: Block[] = [];
   let i = 0;
   while (i < timeS.length) {
     const startS = timeS[i] as number;
-    const lengthS = Math.max(BLOCK_S, 1.5 / Math.max(0.5, speedAt(sweep, startS)));
+    const lengthS = Math.max(blockS, 1.5 / Math.max(0.5, speedAt(sweep, startS)));
     let sumRe = 0;
     let sumIm = 0;
     let energy = 0;
