@@ -95,8 +95,8 @@ export function speedSeriesSentence(series: SpeedSeries): string {
 }
 
 const WHOSE: Readonly<Record<ToneOrigin['whose'], string>> = {
-  machine: 'gone with the machine off: it is this machine’s',
-  elsewhere: 'still there with the machine off: it comes from elsewhere',
-  both: 'weaker with the machine off: part of it comes from elsewhere',
+  machine: 'Gone with the machine off: it is this machine’s.',
+  elsewhere: 'Still there with the machine off: it comes from elsewhere.',
+  both: 'Weaker with the machine off: part of it comes from elsewhere.',
 };
 export const toneOriginSentence = (origin: ToneOrigin): string => WHOSE[origin.whose];

@@ -44,7 +44,7 @@ const REASONS: Readonly<Record<LevelReason, string>> = {
 export const levelReason = (reason: LevelReason): string => REASONS[reason];
 
 /** The crowd that each class presumes (HIVOSS traffic classes, from memory, .85; EN 1990 note to A2.4.3.2). */
-export const PRESUMED_CROWD: Readonly<Partial<Record<Criterion, string>>> = {
+const PRESUMED_CROWD: Readonly<Partial<Record<Criterion, string>>> = {
   'en-1990': 'The designer’s traffic for the bridge; 0.4 m/s² horizontal for exceptional crowds.',
   hivoss:
     'Each class presumes its traffic: TC1 15 persons on the deck, TC2 0.2, TC3 0.5, TC4 1.0 and TC5 1.5 persons per m² (check against the standard).',
@@ -88,5 +88,7 @@ export function levelSentence(finding: LevelFinding): string {
   const origin = finding.classOf === undefined ? finding.origin : `${finding.origin}, ${finding.classOf}`;
   const check = finding.certain ? '' : ` (${CHECK_THE_STANDARD})`;
   const band = `needs ${formatInterval(finding.bandHz, 3)} Hz`;
-  return `${criterionName(finding.criterion)}: ${measureName(finding.measure)}${value}, ${outcome(finding)}${because}. Source: ${origin}${check}; ${band}.`;
+  const presumed = finding.reasons.includes('loading-not-presumed') && PRESUMED_CROWD[finding.criterion];
+  const crowd = presumed ? ` ${presumed}` : '';
+  return `${criterionName(finding.criterion)}: ${measureName(finding.measure)}${value}, ${outcome(finding)}${because}.${crowd} Source: ${origin}${check}; ${band}.`;
 }

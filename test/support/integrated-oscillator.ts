@@ -20,7 +20,9 @@ interface OdexSolver {
     ) => void,
   ): { readonly y: readonly number[]; readonly outcome: number };
 }
-const { Solver } = createRequire(import.meta.url)('odex') as { Solver: new (n: number) => OdexSolver };
+/** The package carries no types of its own that our compiler settings accept. */
+const require = createRequire(import.meta.url);
+const { Solver } = require('odex') as { Solver: new (n: number) => OdexSolver };
 
 function solver(): OdexSolver {
   const made = new Solver(2);

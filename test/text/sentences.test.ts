@@ -18,7 +18,7 @@ import { IMPOSSIBLE_REASONS } from '../../src/core/survey/impossible-source.ts';
 import { SHAPE_REASONS } from '../../src/core/survey/parse-sources.ts';
 import { judge } from '../../src/core/survey/judge.ts';
 import { forcingsOf } from '../../src/core/survey/forcings.ts';
-import { nextStepSentence } from '../../src/text/assets.ts';
+import { nextStepSentence, speedSeriesSentence, toneOriginSentence } from '../../src/text/assets.ts';
 import { cautionText } from '../../src/text/cautions.ts';
 import { doubtText } from '../../src/text/doubts.ts';
 import { INDICATIVE_LINE } from '../../src/text/indicative.ts';
@@ -31,7 +31,7 @@ import { forcingName, forcingOrigin, knownByName, sourceKindName } from '../../s
 import { specialistText } from '../../src/text/specialist.ts';
 import { unpairedText, verdictText } from '../../src/text/verdicts.ts';
 import { wayOutName, wayOutSentence } from '../../src/text/ways-out.ts';
-import { analysisOf, modeAt, toneAt, valueOf } from '../support/survey-analysis.ts';
+import { analysisOf, levelsOf, modeAt, toneAt, valueOf } from '../support/survey-analysis.ts';
 
 const SENTENCE = /^[A-Z0-9].*[.]$/s;
 
@@ -236,6 +236,23 @@ describe('levels and ways out in words', () => {
     ).toBe(
       'ISO 20816-3, machine vibration on bearing housings: rms velocity 3.1 mm/s, at least zone C, because the phone sees only part of the band that this criterion needs. Source: ISO 20816-3:2022, group 2, rigid support; needs 10.0 to 1000 Hz.',
     );
+  });
+  it('name the crowd that a class presumes when it was not there', () => {
+    const bridge = analysisOf('ambient', { levels: levelsOf({ verticalPeakMps2: 0.6, bandHz: [0.25, 28] }) });
+    const [en] = judge(bridge, [], {}, { place: { kind: 'footbridge' } }).levels;
+    expect(levelSentence(en!)).toBe(
+      'EN 1990, footbridge comfort: peak vertical acceleration 0.60 m/s², not assessed, because the crowd or walker that the criterion presumes was not there. The designer’s traffic for the bridge; 0.4 m/s² horizontal for exceptional crowds. Source: EN 1990 A2.4.3.2; needs 1.00 to 5.00 Hz.',
+    );
+  });
+  it('tell whose tone it is and what a series of speeds shows', () => {
+    expect(toneOriginSentence({ toneIndex: 0, remainingRatio: 0, whose: 'machine' })).toBe(
+      'Gone with the machine off: it is this machine’s.',
+    );
+    const series = { order: 1, points: [], missingRpm: [] };
+    const findings = (['rising', 'falling', 'flat'] as const).map((finding) =>
+      speedSeriesSentence({ ...series, finding }),
+    );
+    expect(findings.every((sentence) => SENTENCE.test(sentence))).toBe(true);
   });
   it('tell a way out with what follows', () => {
     const tap = analysisOf('tap', { modes: [modeAt(7.42, 0.011)] });
