@@ -17,7 +17,7 @@ const QUIET_MPS2 = 0.04;
 /** Turn of the mean between two seconds above which the phone is still being moved, m/s²: about 1.5 degrees. */
 const STILL_MPS2 = 0.25;
 /** A tap stands out by this factor over the shaking just before it, and over the level at rest. */
-const TAP_OVER_BEFORE = 2;
+const TAP_OVER_BEFORE = 1.6;
 const TAP_OVER_REST = 4;
 /** Weakest thing counted as a tap, m/s², and steps of the rounding. */
 const TAP_FLOOR_MPS2 = 0.12;
@@ -26,7 +26,7 @@ const TAP_FLOOR_STEPS = 2.5;
 const TAP_DEAD_S = 0.4;
 /** "Just before" ends this long ago, s (a tap needs some samples to rise), and fades with this time constant, s. */
 const RISE_S = 0.06;
-const MEMORY_S = 0.3;
+const MEMORY_S = 1;
 /** Time constant of the mean that carries gravity, s. */
 const MEAN_S = 0.7;
 /** Amplitude that the fit needs over the rounding step (platform facts: decays are fitted above 3 steps). */
@@ -71,6 +71,8 @@ export class MotionObserver {
   #lastExtreme = 0;
   #isClipped = false;
   #stepMps2 = 0;
+  /** Level at rest, while at rest. */
+  #restLevel: number | undefined;
 
   constructor(buffer: SampleBuffer) {
     this.#buffer = buffer;
@@ -105,7 +107,7 @@ export class MotionObserver {
     const [level = 0] = this.#levels.slice(-1);
     return {
       levelMps2: level,
-      isSettled: this.#isSettled(),
+      isSettled: this.#restLevel !== undefined,
       tapCount: this.#tapCount,
       tapAtS: this.#tapAtS,
       isClipped: this.#isClipped,
@@ -194,6 +196,7 @@ export class MotionObserver {
     this.#secondCount = 0;
     this.#secondFromS = timeS;
     this.#measureStep(index);
+    this.#judgeRest();
   }
 
   /** Rounding step from the newest 4 s; once found it stays, because a quiet phone shows too few values. */
@@ -205,13 +208,21 @@ export class MotionObserver {
     if (found > 0) this.#stepMps2 = found;
   }
 
-  #isSettled(): boolean {
+  /** Rest is reached when the level no longer falls, and left when it rises or the phone turns: it may fall further. */
+  #judgeRest(): void {
     const [before, middle, now] = this.#levels.slice(-3);
-    if (before === undefined || middle === undefined || now === undefined) return false;
-    if (distance(this.#means.at(-1)!, this.#means.at(-2)!) > STILL_MPS2) return false;
-    if (Math.max(now, middle) < QUIET_MPS2 + 0.6 * this.#stepMps2) return true;
+    if (before === undefined || middle === undefined || now === undefined) return;
+    const quiet = QUIET_MPS2 + 0.6 * this.#stepMps2;
+    const isTurning = distance(this.#means.at(-1)!, this.#means.at(-2)!) > STILL_MPS2;
+    if (this.#restLevel !== undefined) {
+      const isRising = now > STEADY_RATIO * Math.max(this.#restLevel, quiet);
+      this.#restLevel = isRising || isTurning ? undefined : Math.min(this.#restLevel, now);
+      return;
+    }
     const levels = [before, middle, now];
-    return Math.max(...levels) < STEADY_RATIO * Math.min(...levels);
+    const isSteady =
+      Math.max(...levels) < STEADY_RATIO * Math.min(...levels) || Math.max(now, middle) < quiet;
+    if (isSteady && !isTurning) this.#restLevel = now;
   }
 
   #hasMoved(): boolean {
