@@ -55,17 +55,18 @@ const CONDITIONS: Readonly<Record<Condition, string>> = {
 };
 export const conditionName = (condition: Condition): string => CONDITIONS[condition];
 
-/** "Frequency down 6.1 % (3 to 9 %): changed." or "no change shown"; never "unchanged". */
-export function changeSentence(name: string, change: QuantityChange): string {
-  const percent = (ratio: number): string => formatNumber(100 * (ratio - 1), 2);
-  const range = `${percent(change.interval[0])} to ${percent(change.interval[1])} %`;
-  const way = change.ratio < 1 ? 'down' : 'up';
-  const size = formatNumber(Math.abs(100 * (change.ratio - 1)), 2);
-  const floor =
-    change.floor === 'own' ? 'the scatter of this spot’s own visits' : 'what a repeat usually scatters';
-  return change.changed
-    ? `${name} ${way} ${size} % (${range}): changed, beyond ${floor}.`
-    : `${name}: no change shown (${range}), within ${floor}.`;
+/** "Frequency: 6.8 % lower (4.1 to 9.4 %), more than visits usually scatter." What is not shown is never called the same. */
+export function changeSentence(name: string, change: QuantityChange | undefined): string {
+  if (!change) return `${name}: not found in both.`;
+  const { ratio, interval, changed } = change;
+  const percent = (value: number): string => formatNumber(100 * Math.abs(value - 1), 2);
+  const scatter = change.floor === 'own' ? 'this spot’s own visits scatter' : 'visits usually scatter';
+  const hidden = interval[1] - 1 > 1 - interval[0] ? interval[1] : interval[0];
+  if (!changed)
+    return `${name}: no change shown beyond what ${scatter}; up to ${percent(hidden)} % could hide.`;
+  const [near, far] = ratio < 1 ? [interval[1], interval[0]] : interval;
+  const direction = ratio < 1 ? 'lower' : 'higher';
+  return `${name}: ${percent(ratio)} % ${direction} (${percent(near)} to ${percent(far)} %), more than ${scatter}.`;
 }
 
 /** What differs in the conditions of two visits, for beside the change. */

@@ -24,7 +24,7 @@ describe('visit to visit', () => {
     expect(modes[0]!.frequency).toMatchObject({ changed: false, floor: 'practice' });
     expect(modes[0]!.damping.changed).toBe(false);
     expect(changeSentence('Frequency', modes[0]!.frequency)).toMatch(
-      /^Frequency: no change shown \(−?\d.* %\), within what a repeat usually scatters\.$/,
+      /^Frequency: no change shown beyond what visits usually scatter; up to \d\.\d % could hide\.$/,
     );
   });
   it('calls changed what lies beyond, with its interval', () => {
@@ -33,8 +33,9 @@ describe('visit to visit', () => {
     expect(frequency.interval[1]).toBeLessThan(1);
     expect(damping.changed).toBe(true);
     expect(changeSentence('Frequency', frequency)).toMatch(
-      /^Frequency down 6\.8 % .*: changed, beyond what a repeat usually scatters\.$/,
+      /^Frequency: 6\.8 % lower \(\d\.\d to \d\.\d %\), more than visits usually scatter\.$/,
     );
+    expect(changeSentence('Damping', undefined)).toBe('Damping: not found in both.');
   });
   it('uses the spot’s own scatter from five visits on', () => {
     const steady = [7.4, 7.402, 7.398, 7.401, 7.399].map((hz, index) => visit('x'.repeat(index + 1), hz));
