@@ -72,6 +72,46 @@ export const readingText = {
   doubtCount: (n: number) => (n === 0 ? 'no doubts' : count(n, 'doubt', 'doubts')),
   tapCount: (n: number) => count(n, 'tap', 'taps'),
 
+  noMode: {
+    tap: {
+      title: 'What that means',
+      meaning:
+        'Nothing rang clearly enough to be told from noise. It may be stiff, heavily damped, or ring above what this phone sees; the verdict on sources is open, not clear.',
+      todo: [
+        'Tap harder, with the fist or a rubber mallet, and wait for quiet between taps.',
+        'Lay the phone where it moves most: mid-span, the free end, the corner far from supports.',
+        'Fix the phone with putty or a strap, and tap in the other direction too.',
+      ],
+    },
+    ambient: {
+      title: 'What that means',
+      meaning:
+        'Wind, traffic and people did not shake it enough to show a mode in this time. The verdict on sources is open, not clear.',
+      todo: [
+        'Record longer: ten minutes instead of five.',
+        'Lay the phone nearer to the middle of the span.',
+        'Tap it, or let it ring after a bounce, and take a tap reading.',
+      ],
+    },
+    coastdown: {
+      title: 'What that means',
+      meaning:
+        'No resonance stood out in the range the machine passed through. One above its running speed, or below where it was lost, would not show.',
+      todo: [
+        'Start recording before it is switched off, and let it run out until it stands still.',
+        'With the machine locked out, tap the spot.',
+      ],
+    },
+    running: {
+      title: 'What that means',
+      meaning:
+        'A running machine shows its own lines, which says how strongly it shakes, not what rings by itself.',
+      todo: [
+        'Stop it, lock it out, and tap this spot: then the speeds to keep out of can be told.',
+        'Or record while it slows down, from before it is switched off.',
+      ],
+    },
+  },
   numbers: 'Numbers',
   frequency: 'natural frequency',
   damping: 'damping ratio',

@@ -35,6 +35,9 @@ export interface LadderProps {
 
 const NONE: ReadonlySet<string> = new Set();
 const HEIGHT_PX = 440;
+/** On a laptop there is room for finer steps. */
+const WIDE_HEIGHT_PX = 520;
+const WIDE_PX = 400;
 /** Taller would leave the screen; then labels of the least rank go, and zooming brings them back. */
 const TALLEST_PX = 680;
 
@@ -66,7 +69,7 @@ export function Ladder(props: LadderProps) {
   const picture = useMemo(() => {
     if (!size) return undefined;
     const heightPx = fittingHeightPx(
-      props.heightPx ?? HEIGHT_PX,
+      props.heightPx ?? (size.widthPx < WIDE_PX ? HEIGHT_PX : WIDE_HEIGHT_PX),
       size.textPx,
       props.heightPx ? 0 : content.forcings.length + content.tones.length,
     );

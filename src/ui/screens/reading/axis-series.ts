@@ -13,10 +13,19 @@ export const axisSeries = (
   axes: readonly AxisName[],
   values: readonly ArrayLike<number>[],
   scale: number,
+  /** Strokes tell sparse lines apart; in a dense trace they only blur. */
+  isDense = false,
 ): PlotSeries[] =>
   axes.flatMap((name, index) => {
     const own = values[index];
     if (!own) return [];
     const scaled = scale === 1 ? own : Float64Array.from(own, (value) => value * scale);
-    return [{ label: readingText.plots.axis(name), values: scaled, ...LOOK[name] }];
+    return [
+      {
+        label: readingText.plots.axis(name),
+        values: scaled,
+        ...LOOK[name],
+        ...(isDense ? { kind: 'line' } : {}),
+      },
+    ];
   });

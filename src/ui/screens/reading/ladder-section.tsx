@@ -69,6 +69,35 @@ export function LadderSection(props: LadderSectionProps) {
     analysis.modes.length > 0 &&
     (judgement.forcings.length > 0 || sources.some((source) => presentSpeedRpm(source) !== undefined));
 
+  const { newSource } = props;
+  const shownMode = Math.min(modeIndex, Math.max(0, analysis.modes.length - 1));
+  // not drawn again while a slider moves: nothing in it changes then
+  const words = useMemo(
+    () => (
+      <div class={styles.words}>
+        <NumberSheet
+          analysis={analysis}
+          judgement={judgement}
+          units={units}
+          modeIndex={shownMode}
+          onMode={(index) => setPicked({ kind: 'mode', index })}
+        />
+        <Section title={readingText.pair.list}>
+          <PairList
+            analysis={analysis}
+            judgement={judgement}
+            picked={picked}
+            units={units}
+            newSource={newSource}
+            onPick={setPicked}
+          />
+        </Section>
+        <WaysOutSection judgement={judgement} units={units} />
+      </div>
+    ),
+    [analysis, judgement, units, picked, shownMode, newSource],
+  );
+
   return (
     <div class={styles.section}>
       <div class={styles.picture}>
@@ -114,26 +143,7 @@ export function LadderSection(props: LadderSectionProps) {
           )}
         </section>
       </div>
-      <div class={styles.words}>
-        <NumberSheet
-          analysis={analysis}
-          judgement={judgement}
-          units={units}
-          modeIndex={Math.min(modeIndex, Math.max(0, analysis.modes.length - 1))}
-          onMode={(index) => setPicked({ kind: 'mode', index })}
-        />
-        <Section title={readingText.pair.list}>
-          <PairList
-            analysis={analysis}
-            judgement={judgement}
-            picked={picked}
-            units={units}
-            newSource={props.newSource}
-            onPick={setPicked}
-          />
-        </Section>
-        <WaysOutSection judgement={judgement} units={units} />
-      </div>
+      {words}
     </div>
   );
 }

@@ -146,13 +146,26 @@ function ModeFigures(props: {
 function ToneFigures({ analysis, units }: NumberSheetProps) {
   const tone = analysis.tones[0];
   const { levels } = analysis;
+  const per = toUnit(1, units.frequency);
+  const scale = toUnit(1, units.acceleration);
   return (
     <>
       {tone && (
         <>
-          <Figure value={saidHz(units, likelyHz(tone), tone.frequencySdHz)} note={readingText.tone} />
           <Figure
-            value={saidMps2(units, tone.amplitudeMps2, tone.amplitudeSdMps2)}
+            value={
+              <Measured value={likelyHz(tone) * per} sd={tone.frequencySdHz * per} unit={units.frequency} />
+            }
+            note={readingText.tone}
+          />
+          <Figure
+            value={
+              <Measured
+                value={tone.amplitudeMps2 * scale}
+                sd={tone.amplitudeSdMps2 * scale}
+                unit={units.acceleration}
+              />
+            }
             note={readingText.toneAmplitude}
           />
         </>

@@ -14,6 +14,7 @@ import { HistorySection } from './history-section.tsx';
 import { keptTogether } from './kept-together.ts';
 import { LadderSection } from './ladder-section.tsx';
 import { LevelsSection } from './levels-section.tsx';
+import { NoModeAdvice } from './no-mode-advice.tsx';
 import { NotesSection } from './notes-section.tsx';
 import { PlotSections } from './plot-sections.tsx';
 import styles from './reading-body.module.css';
@@ -41,6 +42,7 @@ const placeText = (view: ReadingView): string => {
 export function ReadingBody({ view, cases, links, units }: BodyProps) {
   const { reading } = view;
   const analysis = currentAnalysis(view);
+  const isRunning = analysis.procedure === 'running';
   const sources = useMemo(() => view.sources.map(({ source }) => source), [view.sources]);
   const judgement = useMemo(() => view.judge(analysis, sources), [view, analysis, sources]);
   return (
@@ -59,6 +61,7 @@ export function ReadingBody({ view, cases, links, units }: BodyProps) {
       <div class={styles.body}>
         <StateStrips view={view} cases={cases} />
         <VerdictLead analysis={analysis} judgement={judgement} units={units} />
+        {!isRunning && <NoModeAdvice analysis={analysis} />}
         <SpecialistCall reasons={judgement.specialist} />
         <LadderSection
           analysis={analysis}
@@ -69,6 +72,7 @@ export function ReadingBody({ view, cases, links, units }: BodyProps) {
           newSource={links.newSource(reading._id)}
         />
         <p class="note">{PLUS_MINUS_NOTE}</p>
+        {isRunning && <NoModeAdvice analysis={analysis} />}
         <ConflictChoice view={view} cases={cases} />
         <div class={styles.columns}>
           <DoubtsSection analysis={analysis} judgement={judgement} />

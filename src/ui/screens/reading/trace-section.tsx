@@ -41,7 +41,7 @@ export function TraceSection(props: {
       xLabel: words.x,
       wholeX: [timeS[0] ?? 0, timeS.at(-1) ?? 1],
       yLabel: words.y(units.acceleration),
-      series: axisSeries(axes, accelerationMps2, toUnit(1, units.acceleration)),
+      series: axisSeries(axes, accelerationMps2, toUnit(1, units.acceleration), true),
       marks: analysis.tapTimesS.map((at, index) => ({
         at,
         label: String(index + 1),

@@ -4,6 +4,7 @@ import { readingText } from '../../../text/reading-screen.ts';
 import { sourcesSentence } from '../../../text/sentence.ts';
 import { verdictWord } from '../../../text/verdicts.ts';
 import { VerdictMark } from '../../components/verdict-mark.tsx';
+import { allDoubts } from './all-doubts.ts';
 import { AmplificationText } from './amplification-text.tsx';
 import { sentenceCase } from './pair-card.tsx';
 import type { ReadingUnits } from './reading-units.ts';
@@ -32,7 +33,8 @@ export function VerdictLead(props: {
         {sentence ?? readingText.pair.none} {isWorth && <AmplificationText separation={worst} />}
       </p>
       <p class={styles.trust}>
-        {readingText.trust[trust]} {readingText.trustName}, {readingText.doubtCount(judgement.doubts.length)}.
+        {readingText.trust[trust]} {readingText.trustName},{' '}
+        {readingText.doubtCount(allDoubts(analysis).length)}.
       </p>
     </div>
   );
