@@ -11,10 +11,14 @@ export interface FreeDecay extends Segment {
 export const CONTACT_SAMPLE_PRICE = 8;
 
 /**
- * A tap changes the motion by at least this share of its energy (14 % of its amplitude): smaller jumps are how far a
+ * A tap changes the motion by at least this share of its energy (22 % of its amplitude): smaller jumps are how far a
  * real structure is from a linear one. Our own choice, tried on measured beams.
  */
-const LEAST_JUMP_SHARE = 0.02;
+const LEAST_JUMP_SHARE = 0.05;
+
+/** Least share of the strongest tap's fall while the modes are still being found, and after. */
+export const COARSE = 0.05;
+export const FINE = 0.0005;
 
 export interface TapSearch {
   /** Longest contact left out, s. */
@@ -47,7 +51,8 @@ export function findTaps(
     { decay: whole, split: bestSplit(signal, whole, components, axisWeights, search) },
   ];
   let strongest = 0;
-  for (let count = 0; count < TAP_LIMIT; count++) {
+  const limit = search.relativeThreshold >= COARSE ? COARSE_TAP_LIMIT : TAP_LIMIT;
+  for (let count = 0; count < limit; count++) {
     const at = indexOfLargest(splits.map((s) => s.split?.gain ?? 0));
     const { decay, split } = splits[at]!;
     if (split === undefined || split.gain < Math.max(search.threshold, search.relativeThreshold * strongest))
@@ -75,14 +80,10 @@ export function findTaps(
   );
 }
 
-/** What precedes the first tap is silence or handling: no decay to learn from, unless it is all there is. */
-export function used(decays: readonly FreeDecay[]): readonly FreeDecay[] {
-  const tapped = decays.filter((d) => d.onset !== undefined);
-  return tapped.length > 0 ? tapped : decays;
-}
-
 /** More than this many taps is not a tap test. */
 export const TAP_LIMIT = 40;
+/** Nor more than this while modes are still missing: they make up for each other. */
+const COARSE_TAP_LIMIT = 14;
 
 /** Each border searched again between its neighbours; borders that no longer pay are taken away. */
 export function refineBorders(

@@ -44,17 +44,49 @@ function startsBeside(
   const whole = [{ start: 0, end: signal.timeS.length }];
   const rough = strongestDecay(signal, left, whole, rateHz, weights);
   if (rough === undefined) return [];
-  return strongestOnsets({ ...signal, y: left }, rough.component.angularRadPerS, weights)
+  const singles = strongestOnsets({ ...signal, y: left }, rough.component.angularRadPerS, weights)
     .map((onset) => localSearch(input, left, tones, onset, noise))
     .filter((single) => single !== undefined)
-    .map((single) => ({ single, gain: likelihoodGain(left, single) }))
-    .sort((a, b) => b.gain - a.gain)
-    .slice(0, STARTS_KEPT)
-    .map(({ single }) => single);
+    .map((single) => startOf(left, single, noise));
+  const most = Math.max(...singles.map(({ gain }) => gain));
+  const cleanest = singles
+    .filter(({ gain }) => gain > LEAST_GAIN_SHARE * most)
+    .sort((a, b) => a.excess - b.excess);
+  const likeliest = singles.sort((a, b) => b.likelihood - a.likelihood);
+  const first = cleanest[0];
+  return [first, likeliest.find((start) => start !== first)]
+    .filter((start) => start !== undefined)
+    .map(({ search }) => search);
 }
 
-/** Likeliest starts kept; the second is tried only when the first leads nowhere. */
-const STARTS_KEPT = 2;
+/** Starts that explain less than this share of the most are not looked at. */
+const LEAST_GAIN_SHARE = 0.1;
+
+interface Start {
+  readonly search: RingDownSearch;
+  /** Energy explained, in noise variances. */
+  readonly gain: number;
+  /** Residual variance over the quiet one: a line fitted across several taps leaves most of the motion. */
+  readonly excess: number;
+  readonly likelihood: number;
+}
+
+function startOf(left: readonly Float64Array[], search: RingDownSearch, noise: readonly number[]): Start {
+  const { start, end } = search.decays[0]!;
+  const { rss } = search.fit.evaluation;
+  let gain = 0;
+  let excess = 0;
+  let likelihood = 0;
+  left.forEach((y, a) => {
+    let square = 0;
+    for (let i = start; i < end; i++) square += y[i]! * y[i]!;
+    gain += (square - rss[a]!) / noise[a]!;
+    excess += search.fit.variance[a]! / noise[a]! / left.length;
+    // Logarithm of the likelihood ratio against none, noise unknown.
+    likelihood += (end - start) * Math.log((square + 1e-30) / (rss[a]! + 1e-30));
+  });
+  return { search, gain, excess, likelihood };
+}
 
 /** The decay that begins at a given onset, fitted alone over two time constants. */
 function localSearch(
@@ -77,18 +109,6 @@ function localSearch(
     noise.map((v) => 1 / v),
   );
   return peak && refit(signal, local, [...tones, peak.component], noise);
-}
-
-/** Logarithm of the likelihood ratio of the fit against none, noise unknown: long poor fits lose to short good ones. */
-function likelihoodGain(left: readonly Float64Array[], search: RingDownSearch): number {
-  const { start, end } = search.decays[0]!;
-  let gain = 0;
-  left.forEach((y, a) => {
-    let square = 0;
-    for (let i = start; i < end; i++) square += y[i]! * y[i]!;
-    gain += (end - start) * Math.log((square + 1e-30) / (search.fit.evaluation.rss[a]! + 1e-30));
-  });
-  return gain;
 }
 
 /** A line that falls less than this over the whole record is steady: a tone. */

@@ -1,7 +1,8 @@
 import type { Component, DecaySignal, Segment } from './decay-model.ts';
 import { bayesCost } from './bayes-cost.ts';
-import { used } from './find-taps.ts';
 import { fitDecays } from './fit-decays.ts';
+import type { DecayFit } from './fit-decays.ts';
+import { amplitudeAtStart } from './mode-estimate.ts';
 import { residuals } from './modelled-signal.ts';
 import { found } from './ring-down-state.ts';
 import type { RingDownSearch, SearchInput } from './ring-down-state.ts';
@@ -18,20 +19,36 @@ export function withOneMore(
 ): RingDownSearch | undefined {
   const { signal, rateHz } = input;
   if (current.fit.components.length >= COMPONENT_LIMIT) return undefined;
-  const segments = used(current.decays);
+  const segments = current.fitted;
   const residual = residuals(signal, segments, current.fit);
   const weights = current.fit.variance.map((v) => 1 / v);
   const peak = strongestDecay(signal, residual, segments, rateHz, weights);
   if (peak === undefined) return undefined;
   const trial = fitDecays(signal, segments, [...current.fit.components, peak.component], noise);
-  if (areTooClose(signal, segments, trial.components)) return undefined;
+  if (areTooClose(signal, segments, trial.components) || isWeakNeighbour(segments, trial)) return undefined;
   if (bayesCost(signal, segments, trial) >= bayesCost(signal, segments, current.fit)) return undefined;
-  return found(current.decays, trial, noise);
+  return found(current.decays, segments, trial, noise);
 }
 
 /** Two lines nearer than these shares of one over the longest decay are one line to a single decay, to several. */
 const CLOSEST_IN_ONE_DECAY = 0.5;
 const CLOSEST_IN_SEVERAL = 0.2;
+
+/** In one decay alone a weak line near a strong one is what the strong one's own amplitude dependence looks like. */
+const NEIGHBOUR_SHARE = 0.15;
+const WEAK_SHARE = 0.35;
+
+function isWeakNeighbour(segments: readonly Segment[], trial: DecayFit): boolean {
+  if (segments.length > 1) return false;
+  const amplitudes = trial.components.map((_, k) => amplitudeAtStart(trial, 0, k));
+  return trial.components.some((a, i) =>
+    trial.components.some(
+      (b, j) =>
+        Math.abs(a.angularRadPerS / b.angularRadPerS - 1) < NEIGHBOUR_SHARE &&
+        amplitudes[i]! < WEAK_SHARE * amplitudes[j]!,
+    ),
+  );
+}
 
 /** What softening or a poor start looks like: a second line inside the resolution of the first. */
 function areTooClose(

@@ -1,7 +1,7 @@
 import { linearColumnCount, parameterCount, parameterIndex } from './decay-model.ts';
 import type { Component, DecaySignal } from './decay-model.ts';
 import { bayesCost, recordCost } from './bayes-cost.ts';
-import { TAP_LIMIT, findTaps, used } from './find-taps.ts';
+import { COARSE, FINE, TAP_LIMIT, findTaps } from './find-taps.ts';
 import { firstRingDowns } from './first-ring-downs.ts';
 import { fitDecays } from './fit-decays.ts';
 import { withOneMore } from './one-more-component.ts';
@@ -13,11 +13,8 @@ import type { RingDownSearch, SearchInput } from './ring-down-state.ts';
 const FALSE_TAP_CHANCE = 1e-4;
 /** Rounds of taps and shapes in turn. */
 const SETTLE_LIMIT = 4;
-/** Least share of the strongest tap while the modes are still being found, and after. */
-const COARSE = 0.05;
 const LOWEST_HZ = 0.4;
 const LARGEST_DAMPING_RATIO = 0.3;
-const FINE = 0.0005;
 
 /** Finds taps, modes and tones of a tap record, alternately, each with what is known of the others. */
 export function searchRingDowns(input: SearchInput): RingDownSearch | undefined {
@@ -41,9 +38,9 @@ function searchFrom(input: SearchInput, start: RingDownSearch, noise: readonly n
 /** Residual above this many times the quiet stretches' variance: another start may do better. */
 const NOISE_EXCESS = 1.4;
 
-function leavesOnlyNoise({ fit, quietVariance, tapCount }: RingDownSearch): boolean {
+function leavesOnlyNoise({ fit, quietVariance }: RingDownSearch): boolean {
   const sum = (values: readonly number[]): number => values.reduce((a, b) => a + b, 0);
-  return tapCount < TAP_LIMIT && sum(fit.variance) < NOISE_EXCESS * sum(quietVariance);
+  return sum(fit.variance) < NOISE_EXCESS * sum(quietVariance);
 }
 
 /** Steps taken at most: each adds a component, or looks for weaker taps. */
@@ -95,7 +92,8 @@ function withTones(signal: DecaySignal, search: RingDownSearch): RingDownSearch 
     return falls ? component : asTone(component);
   });
   if (named.every((component, k) => component === components[k])) return search;
-  return found(search.decays, fitDecays(signal, used(search.decays), named, variance), search.quietVariance);
+  const fit = fitDecays(signal, search.fitted, named, variance);
+  return found(search.decays, search.fitted, fit, search.quietVariance);
 }
 
 const asTone = (component: Component): Component => ({ ...component, kind: 'tone', decayPerS: 0 });
@@ -105,7 +103,7 @@ function prune(input: SearchInput, start: RingDownSearch, noise: readonly number
   const { signal } = input;
   let current = start;
   while (current.fit.components.length > 1) {
-    const segments = used(current.decays);
+    const segments = current.fitted;
     const whole = bayesCost(signal, segments, current.fit);
     const fewer = current.fit.components.map((_, k) => {
       const rest = current.fit.components.filter((__, j) => j !== k);
@@ -119,7 +117,7 @@ function prune(input: SearchInput, start: RingDownSearch, noise: readonly number
     );
     const best = costs.indexOf(Math.min(...costs));
     if (costs[best]! >= whole) break;
-    current = settle(signal, found(current.decays, fewer[best]!.fit, noise), noise, FINE);
+    current = settle(signal, found(current.decays, segments, fewer[best]!.fit, noise), noise, FINE);
   }
   return current;
 }

@@ -8,7 +8,7 @@ import { foldOfMode, foldOfTone } from '../fold.ts';
 import type { ProcedureAnswer } from '../procedure-answer.ts';
 import { linearColumnCount, parameterIndex } from './decay-model.ts';
 import type { DecaySignal } from './decay-model.ts';
-import { TAP_LIMIT, used } from './find-taps.ts';
+import { TAP_LIMIT } from './find-taps.ts';
 import type { FreeDecay } from './find-taps.ts';
 import type { DecayFit } from './fit-decays.ts';
 import { halfPowerOfDecay } from './half-power.ts';
@@ -70,7 +70,7 @@ function answerOf(
   signal: DecaySignal,
   search: RingDownSearch,
 ): Outcome<ProcedureAnswer> {
-  const decays = used(search.decays);
+  const decays = search.fitted;
   const { fit } = search;
   const left = residuals(signal, decays, fit);
   const largest = Math.max(...signal.y.map((y) => y.reduce((m, v) => Math.max(m, Math.abs(v)), 0)));
@@ -78,7 +78,7 @@ function answerOf(
   const estimates = modeIndexes
     .map((k) => ({ k, estimate: modeEstimate(signal, decays, fit, k) }))
     .filter(({ estimate }) => isAnswer(estimate, fit, largest))
-    .sort((a, b) => Math.max(...b.estimate.amplitudesMps2) - Math.max(...a.estimate.amplitudesMps2));
+    .sort((a, b) => ringEnergy(b.estimate) - ringEnergy(a.estimate));
   if (estimates.length === 0) return failure(search.tapCount === 0 ? 'no-taps' : 'no-decay');
   const strongest = fit.components[estimates[0]!.k]!;
   const explained = explainedShare(
@@ -132,6 +132,10 @@ function explainedShare(
   const freedom = Math.max(count - decays.length * linearColumnCount(componentCount), 1);
   return whole > 0 ? 1 - (Math.max(unexplained, 0) * count) / freedom / whole : 0;
 }
+
+/** Strength of a mode: energy of its strongest ring-down, amplitude² over decay rate; a brief rattle is no strong mode. */
+const ringEnergy = ({ amplitudesMps2, dampingRatio, frequencyHz }: ModeEstimate): number =>
+  Math.max(...amplitudesMps2) ** 2 / (dampingRatio * frequencyHz);
 
 function isAnswer(estimate: ModeEstimate, fit: DecayFit, largestMps2: number): boolean {
   const noise = Math.sqrt(fit.variance.reduce((a, b) => a + b, 0) / fit.variance.length);
