@@ -11,6 +11,8 @@ const SINE_PEAK_S = 2;
 /** What is left out around a folded or undecided tone: its wandering and so many reciprocal durations. */
 const LEFT_OUT_RESOLUTIONS = 3;
 const LEFT_OUT_SHARE = 0.005;
+/** Rounding of the transforms. */
+const NO_VELOCITY_MPS = 1e-12;
 /** Velocity is not given when less than this share of the acceleration's power is left after leaving tones out. */
 const LEAST_LEFT_POWER = 0.25;
 
@@ -100,7 +102,7 @@ function integratedLevels(
   const largest = (values: readonly number[]): number => Math.max(...values);
   const velocityRmsMps = largest(velocities.map(rms));
   // Nothing stood out of the floor: no velocity rather than a zero.
-  if (!(velocityRmsMps > 0)) return {};
+  if (velocityRmsMps < NO_VELOCITY_MPS) return {};
   const velocityPeakMps = largest(velocities.map(peak));
   return {
     velocityRmsMps,

@@ -32,18 +32,15 @@ export function straightLine(samples: ArrayLike<number>): Float64Array {
   return Float64Array.from({ length: n }, (_, i) => mean + slope * (i - centre));
 }
 
-/** Mean over 2·half + 1 samples; beyond the ends the signal is continued by point reflection about its end mean. */
+/** Mean over 2·half + 1 samples; beyond the ends the signal is continued by point reflection about its end. */
 function movingMean(samples: ArrayLike<number>, half: number): Float64Array {
   const n = samples.length;
-  const edge = Math.min(n, Math.max(1, Math.round(half / 3)));
-  let first = 0;
-  let last = 0;
-  for (let i = 0; i < edge; i++) {
-    first += samples[i] as number;
-    last += samples[n - 1 - i] as number;
-  }
-  first /= edge;
-  last /= edge;
+  const edge = Math.min(n, Math.max(2, half));
+  // Value at the very end by a straight line through the last samples: a ramp then stays a ramp.
+  const head = straightLine(Array.from({ length: edge }, (_, i) => samples[i]!));
+  const tail = straightLine(Array.from({ length: edge }, (_, i) => samples[n - edge + i]!));
+  const first = head[0]!;
+  const last = tail[edge - 1]!;
   const at = (i: number): number => {
     if (i < 0) return 2 * first - (samples[Math.min(n - 1, -i)] as number);
     if (i >= n) return 2 * last - (samples[Math.max(0, 2 * n - 2 - i)] as number);

@@ -14,8 +14,9 @@ const LOSS_COST_PERIODS = 2;
 const LATENESS_LIMIT_PERIODS = 1.5;
 /** Memory of the running lateness, samples. */
 const LATENESS_MEMORY_SAMPLES = 16;
-/** Samples over which the first estimate of the period is taken. */
-const PERIOD_SPAN_SAMPLES = 64;
+/** Samples over which the first estimate of the period is taken, and the share of such means that must lie closest together. */
+const PERIOD_SPAN_SAMPLES = 16;
+const DENSEST_SHARE = 0.4;
 
 export interface SampleCount {
   /** Counter of each sample, strictly increasing, 0 first; length n. */
@@ -51,10 +52,20 @@ function firstPeriod(timeS: Float64Array): number {
   const n = timeS.length;
   const span = Math.min(PERIOD_SPAN_SAMPLES, Math.max(1, Math.floor(n / 4)));
   const means: number[] = [];
-  const stride = Math.max(1, Math.floor(span / 4));
+  const stride = Math.max(1, Math.floor(span / 4), Math.floor(n / 20_000));
   for (let i = 0; i + span < n; i += stride)
     means.push(((timeS[i + span] as number) - (timeS[i] as number)) / span);
-  return median(means);
+  return densest(means);
+}
+
+/** Middle of the shortest interval that holds a share of the values: losses lengthen some spans and shorten none. */
+function densest(values: readonly number[]): number {
+  const sorted = Float64Array.from(values).sort();
+  const held = Math.max(1, Math.ceil(DENSEST_SHARE * sorted.length));
+  let best = 0;
+  for (let i = 0; i + held <= sorted.length; i++)
+    if (sorted[i + held - 1]! - sorted[i]! < sorted[best + held - 1]! - sorted[best]!) best = i;
+  return (sorted[best]! + sorted[best + held - 1]!) / 2;
 }
 
 /** Least-squares period of stamps against counts, s. */

@@ -6,11 +6,16 @@ import { median } from './sample-counter.ts';
 export const SHORT_INTERVAL_SHARE = 0.7;
 /** Up to this share of equal readings two rows apart, equal neighbours are told from chance. Our choice. */
 const CHANCE_LIMIT_SHARE = 0.05;
-/** Equal neighbours beyond three times chance and this share: the sensor is polled (18 % measured in browsers). */
-const POLLED_SHARE = 0.02;
-/** Up to this chance every equal neighbour after a short interval is a repeat; above, only when most short intervals show one. */
-const NO_CHANCE_SHARE = 0.005;
-const MOST_SHORT_SHARE = 0.5;
+/**
+ * Equal neighbours beyond this share and this many times chance: the sensor is polled (18 % measured in browsers).
+ * Smooth rounded motion makes neighbours equal up to 2³ times as often as samples two apart.
+ */
+const POLLED_SHARE = 0.05;
+const POLLED_EXCESS = 12;
+/** Equal neighbours must be this much commoner after a short interval than after an ordinary one to be repeats, not chance. */
+const SHORT_EXCESS = 6;
+/** ... and beyond this share of the short intervals. */
+const LEAST_SHORT_SHARE = 0.01;
 
 export interface Screening {
   /** Indexes of the rows kept, increasing. */
@@ -35,13 +40,14 @@ export function screenSamples(recording: Pick<Recording, 'timeS' | 'acceleration
   }
   const equal = (a: number, b: number): boolean => accelerationMps2.every((axis) => axis[a] === axis[b]);
   const chance = equalShare(rows, 2, equal);
-  const isPolled = chance < CHANCE_LIMIT_SHARE && equalShare(rows, 1, equal) > POLLED_SHARE + 3 * chance;
+  const isPolled =
+    chance < CHANCE_LIMIT_SHARE && equalShare(rows, 1, equal) > POLLED_SHARE + POLLED_EXCESS * chance;
   const limitS = SHORT_INTERVAL_SHARE * medianInterval(rows, timeS);
   const isShort = (r: number): boolean =>
     (timeS[rows[r] as number] as number) - (timeS[rows[r - 1] as number] as number) < limitS;
-  const dropsShort =
-    chance < NO_CHANCE_SHARE ||
-    (chance < CHANCE_LIMIT_SHARE && equalShare(rows, 1, equal, isShort) > MOST_SHORT_SHARE);
+  const shortShare = equalShare(rows, 1, equal, isShort);
+  const ordinaryShare = equalShare(rows, 1, equal, (r) => !isShort(r));
+  const dropsShort = shortShare > LEAST_SHORT_SHARE && shortShare > SHORT_EXCESS * ordinaryShare;
   const kept: number[] = [];
   for (let r = 0; r < rows.length; r++) {
     const i = rows[r] as number;

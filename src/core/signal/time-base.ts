@@ -12,7 +12,9 @@ const NO_CLOCK_PERIODS = 0.6;
 const NEGLIGIBLE_SCATTER_S = 1e-4;
 /** Log-likelihood range over the shares below which the record does not tell (chi-square 6 on one degree of freedom). */
 const TELLING_LOG_LIKELIHOOD = 3;
-/** Shares within this (or three standard deviations, but at most twice this) of 0 or 1 are taken as 0 or 1. */
+/** All true or all late is kept unless another share is better by this log likelihood (two standard deviations). */
+const SIMPLE_LOG_LIKELIHOOD = 2;
+/** Shares this near 0 or 1 are taken as 0 or 1. */
 const SNAP_SHARE = 0.05;
 /** Lines used for the decision, and how far a line must stand out of the median density. */
 const LINES_USED = 4;
@@ -143,16 +145,17 @@ function estimateTrueShare(
 }
 
 function refinedShare(total: Float64Array, best: number): number {
+  const top = total[best] as number;
+  if (top - (total[total.length - 1] as number) < SIMPLE_LOG_LIKELIHOOD) return 1;
+  if (top - (total[0] as number) < SIMPLE_LOG_LIKELIHOOD) return 0;
   const stepShare = 1 / (SHARES.length - 1);
   const middle = Math.max(1, Math.min(total.length - 2, best));
   const [a, b, c] = [total[middle - 1], total[middle], total[middle + 1]] as [number, number, number];
   const bend = a - 2 * b + c;
   const shift = bend < 0 ? (0.5 * (a - c)) / bend : 0;
   const share = Math.max(0, Math.min(1, (middle + Math.max(-1, Math.min(1, shift))) * stepShare));
-  const sd = bend < 0 ? stepShare / Math.sqrt(-bend) : stepShare;
-  const reach = Math.max(SNAP_SHARE, Math.min(2 * SNAP_SHARE, 3 * sd));
-  if (share > 1 - reach) return 1;
-  return share < reach ? 0 : share;
+  if (share > 1 - SNAP_SHARE) return 1;
+  return share < SNAP_SHARE ? 0 : share;
 }
 
 interface Line {
