@@ -18,7 +18,9 @@ export class SampleBuffer {
   /** Samples so far. */
   count = 0;
 
+  /** What is not finite is no sample. */
   push(timeS: number, x: number, y: number, z: number): void {
+    if (!Number.isFinite(timeS + x + y + z)) return;
     const at = this.count % BLOCK_COUNT;
     const index = (this.count - at) / BLOCK_COUNT;
     const block = this.#blocks[index] ?? this.#grow();

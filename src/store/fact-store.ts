@@ -74,7 +74,7 @@ export function createFactStore(
 
   const store: FactStore = {
     async saveReading(draft, recording, { label, journalId }) {
-      const raw = encodeRaw(recording);
+      const raw = soundRaw(recording);
       const [packed, rawSha256] = await Promise.all([gzip(raw), sha256Of(raw)]);
       const fact = sound<ReadingFact>({
         ...storedNumbers(wellFormedValue(draft as unknown as FieldValue) as unknown as ReadingDraft),
@@ -208,6 +208,14 @@ function sound<T extends Fact>(fact: T): T {
   if (parsed.ok && parsed.value.known) return fact;
   const where = parsed.ok ? 'version' : String(parsed.problem.facts['path']);
   throw new TypeError(`fact ${fact._id} is malformed at "${where}"`);
+}
+
+/** Raw v1 that its own reader takes. @throws TypeError otherwise, e.g. for samples that are not finite. */
+function soundRaw(recording: Recording): Uint8Array {
+  const raw = encodeRaw(recording);
+  const decoded = decodeRaw(raw);
+  if (!decoded.ok) throw new TypeError(`recording is malformed: ${String(decoded.problem.facts['part'])}`);
+  return raw;
 }
 
 export async function addFact(change: Change, fact: Fact, revision?: string): Promise<void> {

@@ -6,6 +6,7 @@ import type { ChunkRow, JournalRow } from './rows.ts';
 import { StoreError } from './store-error.ts';
 import type { StoreEnvironment } from './store-environment.ts';
 
+const AXES: readonly unknown[] = ['x', 'y', 'z'];
 /** A Web Lock per journal: held while its tab lives, so that a start elsewhere does not take it for a crash. */
 const LOCK_PREFIX = 'thrumbook-journal:';
 
@@ -81,7 +82,7 @@ export function createJournal(connection: Connection, environment: StoreEnvironm
     recover(journalId) {
       return connection.run(async (database) => {
         const row = await database.get('journals', journalId);
-        if (row === undefined) throw new StoreError('damaged');
+        if (row === undefined || !isSoundRow(row)) throw new StoreError('damaged');
         return recordingOf(row, await chunksOf(database, journalId));
       });
     },
@@ -111,6 +112,21 @@ async function chunksOf(
   return rows.filter(isSound);
 }
 
+/** A journal row as it was written: what is read back is not trusted. */
+function isSoundRow(row: JournalRow): boolean {
+  const { startedAt, sensor, axes, flags } = row as Partial<JournalRow>;
+  return (
+    typeof startedAt === 'string' &&
+    typeof sensor?.source === 'string' &&
+    typeof sensor.practice === 'boolean' &&
+    Array.isArray(axes) &&
+    axes.length > 0 &&
+    new Set(axes).size === axes.length &&
+    axes.every((axis) => AXES.includes(axis)) &&
+    Array.isArray(flags)
+  );
+}
+
 /** A chunk as it was written: equal lengths, typed arrays. Anything else is left out. */
 function isSound(row: ChunkRow): boolean {
   const { timeS, accelerationMps2 } = row as Partial<ChunkRow>;
@@ -125,7 +141,7 @@ function described(row: JournalRow, chunks: readonly ChunkRow[]): RecoveredJourn
   const sampleCount = chunks.reduce((sum, { timeS }) => sum + timeS.length, 0);
   const firstS = chunks[0]?.timeS[0] ?? 0;
   const lastS = chunks.at(-1)?.timeS.at(-1) ?? firstS;
-  return { journalId: row.id, startedAt: row.startedAt, sampleCount, durationS: lastS - firstS };
+  return { journalId: row.id, startedAt: String(row.startedAt), sampleCount, durationS: lastS - firstS };
 }
 
 function recordingOf(row: JournalRow, chunks: readonly ChunkRow[]): Recording {
