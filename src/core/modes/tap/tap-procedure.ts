@@ -16,6 +16,7 @@ import { logDecrementOfDecay } from './log-decrement.ts';
 import { directionOf, amplitudeAtStart, modeEstimate, naturalFrequencyHz } from './mode-estimate.ts';
 import type { ModeEstimate } from './mode-estimate.ts';
 import { decayAlone, residuals } from './modelled-signal.ts';
+import { fitRounded, isStepCoarse } from './rounding-likelihood.ts';
 import { searchRingDowns } from './ring-down-search.ts';
 import type { RingDownSearch } from './ring-down-state.ts';
 
@@ -24,11 +25,11 @@ const FEWEST_SAMPLES = 64;
 /** A mode must stand out of the noise by this many standard deviations of a sample at its strongest tap... */
 const LEAST_AMPLITUDE_SDS = 3;
 /** ...and its damping must be known to this relative standard deviation, else it is no answer. */
-const LARGEST_DAMPING_SPREAD = 0.5;
+const LARGEST_DAMPING_SPREAD = 0.3;
 /** ...its frequency to this one... */
 const LARGEST_FREQUENCY_SPREAD = 0.02;
-/** Above this damping nothing rings that a tap test could read: under three half cycles are left above a tenth. */
-const LARGEST_DAMPING_RATIO = 0.25;
+/** Above this damping nothing rings that a tap test could read: a tenth is left after two and a half cycles. */
+const LARGEST_DAMPING_RATIO = 0.15;
 /** Two lines that cancel each other have amplitudes beyond anything measured. */
 const LARGEST_AMPLITUDE_FACTOR = 3;
 /** Share of the motion under the ring-downs that the fit must explain; below, it is not free decay. */
@@ -71,7 +72,8 @@ function answerOf(
   search: RingDownSearch,
 ): Outcome<ProcedureAnswer> {
   const decays = search.fitted;
-  const { fit } = search;
+  const isRounded = isStepCoarse(search.fit.variance, conditioned.facts.stepMps2);
+  const fit = isRounded ? fitRounded(signal, decays, search.fit, conditioned.facts.stepMps2) : search.fit;
   const left = residuals(signal, decays, fit);
   const largest = Math.max(...signal.y.map((y) => y.reduce((m, v) => Math.max(m, Math.abs(v)), 0)));
   const modeIndexes = fit.components.flatMap((c, k) => (c.kind === 'mode' ? [k] : []));
@@ -86,12 +88,12 @@ function answerOf(
     decays,
     left,
     strongest.decayPerS,
-    search.quietVariance,
+    search.quietVariance.map((v, a) => v + (conditioned.facts.stepMps2[a] ?? 0) ** 2 / 12),
     fit.components.length,
   );
   if (explained < LEAST_EXPLAINED_SHARE) return failure('no-decay', { explainedShare: explained });
   const modes = estimates.map(({ k, estimate }) =>
-    modeOf({ conditioned, signal, decays, fit, left, k, estimate, tapCount: search.tapCount }),
+    modeOf({ conditioned, signal, decays, fit, left, k, estimate, isRounded }),
   );
   return success({
     modes,
@@ -156,7 +158,7 @@ interface ModeContext {
   readonly left: readonly Float64Array[];
   readonly k: number;
   readonly estimate: ModeEstimate;
-  readonly tapCount: number;
+  readonly isRounded: boolean;
 }
 
 function modeOf(context: ModeContext): Mode {
@@ -184,7 +186,7 @@ function modeOf(context: ModeContext): Mode {
     amplitudeMps2: Math.max(...estimate.amplitudesMps2),
     direction,
     ...(upShare === undefined ? {} : { verticalShare: Math.min(upShare, 1) }),
-    method: 'ring-down-fit',
+    method: context.isRounded ? 'ring-down-fit-rounding-aware' : 'ring-down-fit',
     eventCount: Math.max(decays.filter((_, s) => amplitudeAtStart(fit, s, k) > 0).length, 1),
     ...checks,
     fold,
