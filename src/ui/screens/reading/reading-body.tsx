@@ -47,7 +47,11 @@ export function ReadingBody({ view, cases, links, units }: BodyProps) {
   const judgement = useMemo(() => view.judge(analysis, sources), [view, analysis, sources]);
   return (
     <Page
-      title={keptTogether(headlineSentence(analysis, { frequencyUnit: units.frequency }))}
+      title={
+        <span class={styles.title}>
+          {keptTogether(headlineSentence(analysis, { frequencyUnit: units.frequency }))}
+        </span>
+      }
       over={
         <span class={styles.over}>
           <span>{placeText(view)}</span>
