@@ -2,7 +2,7 @@ import type { ConditionedSignal } from '../../signal/condition-recording.ts';
 import { failure, success } from '../../model/outcome.ts';
 import type { Outcome } from '../../model/outcome.ts';
 import { fitCoastdown } from './fit-coastdown.ts';
-import type { CoastdownFit, PassSamples } from './fit-coastdown.ts';
+import type { CoastdownFit, CoastdownPoint, PassSamples } from './fit-coastdown.ts';
 import { TRACK_WINDOWS_S, trackLine } from './line-track.ts';
 import type { LineTrack } from './line-track.ts';
 import { guessFromWholePass } from './pass-spectrum.ts';
@@ -39,7 +39,8 @@ const CLEAR_POINT = 2;
 const TRACK_SCATTER_HZ = 0.4;
 /** Fitting goes down through the mode from above: ends of the windows, speed over natural frequency. */
 const UPPER_END = 1.08;
-const LOWER_ENDS = [1.02, 0.95, 0.85, 0.7];
+const UPPER_ENDS = [1.02, 0.95];
+const LOWER_ENDS = [0.85, 0.7];
 const WIDE_WINDOW = [0.5, 2] as const;
 /** What a pass must cover to be answered (study, section 12). */
 export const COVERED_WINDOW = [0.65, 1.4] as const;
@@ -60,21 +61,47 @@ export function findPass(conditioned: ConditionedSignal): Outcome<Pass> {
     return failure('folded-sweep', { rateHz: facts.rateHz, highestHz: facts.rateHz / 2 });
   const guess = guessFromWholePass(grid, [1, highestHz]);
   if (!guess) return failure('no-pass', { durationS });
-  let best: Outcome<Pass> | undefined;
+  const start = bestStart(conditioned, falling, guess);
+  return start
+    ? fitted(conditioned, start, guess)
+    : incomplete(conditioned, trackPolynomial(falling, 0, 2), guess);
+}
+
+/** A sweep fitted above the mode. */
+interface UpperFit {
+  readonly sweep: Sweep;
+  readonly variance: number;
+}
+
+/** Sweeps fitted above the mode from several tracks; two that agree are believed. */
+function bestStart(conditioned: ConditionedSignal, falling: LineTrack, guess: PassGuess): Sweep | undefined {
+  const { grid, facts, timeS } = conditioned;
+  let best: UpperFit | undefined;
   for (const { windowS, aboveShare, order } of TRACK_STARTS) {
-    const track = windowS === TRACK_WINDOWS_S[0] ? falling : trackLine(grid, highestHz, 'falling', windowS);
+    const track =
+      windowS === TRACK_WINDOWS_S[0]
+        ? falling
+        : trackLine(grid, TRACKED_SHARE * facts.rateHz, 'falling', windowS);
     if (!track) continue;
-    const pass = fitted(conditioned, trackPolynomial(track, aboveShare * guess.frequencyHz, order), guess);
-    if (!pass.ok) {
-      best ??= pass;
-      continue;
-    }
-    const isConfirmed =
-      best?.ok && pass.value.fit.residualVariance > best.value.fit.residualVariance / CONFIRMED;
-    if (!best?.ok || pass.value.fit.residualVariance < best.value.fit.residualVariance) best = pass;
-    if (isConfirmed && pass.value.fit.residualVariance < best.value.fit.residualVariance * CONFIRMED) break;
+    const rough = trackPolynomial(track, aboveShare * guess.frequencyHz, order);
+    const window = windowOf(timeS, rough, guess.frequencyHz, [UPPER_END, WIDE_WINDOW[1]]);
+    if (!window) continue;
+    const upper = upperSweep(conditioned, rebased(rough, timeS, window, 2), guess, window);
+    const ratio = best ? upper.variance / best.variance : Infinity;
+    if (ratio < 1) best = upper;
+    best ??= upper;
+    if (Math.abs(Math.log(ratio)) < Math.log(CONFIRMED)) break;
   }
-  return best ?? failure('no-pass', { durationS });
+  return best?.sweep;
+}
+
+function incomplete(conditioned: ConditionedSignal, sweep: Sweep, guess: PassGuess): Outcome<never> {
+  const { timeS } = conditioned;
+  return failure('pass-incomplete', {
+    startHz: speedAt(sweep, timeS[0] as number),
+    endHz: Math.max(0, speedAt(sweep, timeS[timeS.length - 1] as number)),
+    frequencyHz: guess.frequencyHz,
+  });
 }
 
 /** Variance a sample of the sensor's own noise has, mean over the axes, m²/s⁴. */
@@ -103,18 +130,10 @@ function trackPolynomial(track: LineTrack, aboveHz: number, order: number): Swee
   };
 }
 
-function fitted(conditioned: ConditionedSignal, track: Sweep, guess: PassGuess): Outcome<Pass> {
-  const { timeS } = conditioned;
-  const { frequencyHz } = guess;
-  const startHz = speedAt(track, timeS[0] as number);
-  const endHz = speedAt(track, timeS[timeS.length - 1] as number);
-  const incomplete = failure('pass-incomplete', { startHz, endHz, frequencyHz });
-  const upper = windowOf(timeS, track, frequencyHz, [UPPER_END, WIDE_WINDOW[1]]);
-  if (!upper) return incomplete;
-  const sweep = upperSweep(conditioned, rebased(track, timeS, upper, 2), guess, upper);
+function fitted(conditioned: ConditionedSignal, sweep: Sweep, guess: PassGuess): Outcome<Pass> {
   const first = lowered(conditioned, sweep, guess);
-  const wide = first && windowOf(timeS, first.sweep, first.frequencyHz, WIDE_WINDOW);
-  if (!wide) return incomplete;
+  const wide = first && windowOf(conditioned.timeS, first.sweep, first.frequencyHz, WIDE_WINDOW);
+  if (!wide) return incomplete(conditioned, sweep, guess);
   const fit = bestOrder(conditioned, first, wide);
   return success({ fit, samples: cut(conditioned, wide), guess, noiseVariance: noiseVariance(conditioned) });
 }
@@ -125,35 +144,47 @@ function upperSweep(
   sweep: Sweep,
   guess: PassGuess,
   window: readonly [number, number],
-): Sweep {
+): UpperFit {
   const samples = cut(conditioned, window);
   const along = samples.timeS.map((_, k) =>
     samples.axes.reduce((sum, axis, a) => sum + (axis[k] as number) * (guess.direction[a] as number), 0),
   );
   const { frequencyHz, dampingRatio } = guess;
   const refined = refineSweep(samples.timeS, along, sweep, frequencyHz, dampingRatio);
-  return fitCoastdown(samples, { frequencyHz, dampingRatio, sweep: refined }, { isModeHeld: true }).sweep;
+  const fit = fitCoastdown(samples, { frequencyHz, dampingRatio, sweep: refined }, { isModeHeld: true });
+  return { sweep: fit.sweep, variance: fit.residualVariance };
 }
 
 /** Goes down through the mode step by step, so that the phase is never lost. */
 function lowered(conditioned: ConditionedSignal, sweep: Sweep, guess: PassGuess): CoastdownFit | undefined {
-  let best: CoastdownFit | undefined;
+  let first: CoastdownFit | undefined;
   for (const factor of DAMPING_FACTORS) {
-    let at = { frequencyHz: guess.frequencyHz, dampingRatio: guess.dampingRatio * factor, sweep };
-    let fit: CoastdownFit | undefined;
-    for (const end of LOWER_ENDS) {
-      const window = windowOf(conditioned.timeS, at.sweep, at.frequencyHz, [end, WIDE_WINDOW[1]]);
-      if (!window) break;
-      fit = fitCoastdown(
-        cut(conditioned, window),
-        { ...at, sweep: rebased(at.sweep, conditioned.timeS, window, 2) },
-        { isModeHeld: end > 1, mostSteps: 8 },
-      );
-      at = { frequencyHz: fit.frequencyHz, dampingRatio: fit.dampingRatio, sweep: fit.sweep };
-    }
-    if (fit && (!best || fit.residualVariance < best.residualVariance)) best = fit;
+    const fit = through(
+      conditioned,
+      { ...guess, dampingRatio: guess.dampingRatio * factor, sweep },
+      UPPER_ENDS,
+    );
+    if (fit && (!first || fit.residualVariance < first.residualVariance)) first = fit;
   }
-  return best;
+  return first && (through(conditioned, first, LOWER_ENDS) ?? first);
+}
+
+function through(
+  conditioned: ConditionedSignal,
+  start: CoastdownPoint,
+  ends: readonly number[],
+): CoastdownFit | undefined {
+  let at = start;
+  let fit: CoastdownFit | undefined;
+  for (const end of ends) {
+    const window = windowOf(conditioned.timeS, at.sweep, at.frequencyHz, [end, WIDE_WINDOW[1]]);
+    if (!window) break;
+    const sweep = rebased(at.sweep, conditioned.timeS, window, 2);
+    const point = { frequencyHz: at.frequencyHz, dampingRatio: at.dampingRatio, sweep };
+    fit = fitCoastdown(cut(conditioned, window), point, { isModeHeld: end > 1, mostSteps: 8 });
+    at = fit;
+  }
+  return fit;
 }
 
 /** Indexes [from, to) of the samples while the machine is within the window, around the passage. */

@@ -24,9 +24,20 @@ export interface SweepColumns {
 const LONGEST_STEP_RAD = 2.2;
 /** A sweep that would need more has run away from any recording. */
 const MOST_STEPS = 16;
-/** Gauss-Legendre nodes and weights, four points, on 0..1 (Abramowitz & Stegun 25.4.30). */
-const NODES = [0.06943184420297371, 0.33000947820757187, 0.6699905217924281, 0.9305681557970262];
-const WEIGHTS = [0.17392742256872692, 0.32607257743127307, 0.32607257743127307, 0.17392742256872692];
+/** Gauss-Legendre rules on 0..1 (Abramowitz & Stegun 25.4.30), each good to 2e-6 up to its turning in rad. */
+const RULES = [
+  { mostRad: 0.4, nodes: [0.21132486540518713, 0.7886751345948129], weights: [0.5, 0.5] },
+  {
+    mostRad: 1.2,
+    nodes: [0.1127016653792583, 0.5, 0.8872983346207417],
+    weights: [0.2777777777777778, 0.4444444444444444, 0.2777777777777778],
+  },
+  {
+    mostRad: Infinity,
+    nodes: [0.06943184420297371, 0.33000947820757187, 0.6699905217924281, 0.9305681557970262],
+    weights: [0.17392742256872692, 0.32607257743127307, 0.32607257743127307, 0.17392742256872692],
+  },
+] as const;
 
 export function speedAt(sweep: Sweep, timeS: number): number {
   const u = (timeS - sweep.centreS) / sweep.halfS;
@@ -92,17 +103,18 @@ export function sweepColumns(
       const turning = Math.abs(w - lIm) * (t - before);
       const steps = Math.min(MOST_STEPS, Math.max(1, Math.ceil(turning / LONGEST_STEP_RAD)));
       const h = (t - before) / steps;
+      const { nodes, weights } = ruleFor(turning / steps);
       for (let s = 0; s < steps; s++) {
         const to = s === steps - 1 ? t : before + h;
         const phaseTo = sweepPhase(sweep, to);
         const length = to - before;
         let gRe = 0;
         let gIm = 0;
-        for (let q = 0; q < 4; q++) {
-          const at = before + (NODES[q] as number) * length;
+        for (let q = 0; q < nodes.length; q++) {
+          const at = before + (nodes[q] as number) * length;
           const speedHere = speedAt(sweep, at);
           const angle = lIm * (to - at) + sweepPhase(sweep, at) - phaseTo;
-          const size = (WEIGHTS[q] as number) * length * speedHere * speedHere * Math.exp(lRe * (to - at));
+          const size = (weights[q] as number) * length * speedHere * speedHere * Math.exp(lRe * (to - at));
           gRe += size * Math.cos(angle);
           gIm += size * Math.sin(angle);
         }
@@ -132,6 +144,10 @@ export function sweepColumns(
     decayIm[k] = decay * Math.sin(lIm * (t - first));
   }
   return { re, im, decayRe, decayIm };
+}
+
+function ruleFor(turningRad: number): (typeof RULES)[number] {
+  return RULES.find((rule) => turningRad < rule.mostRad) ?? RULES[2];
 }
 
 /** Pole's share in the turning frame where it follows steadily: a/(iw - l) minus its first correction for the sweep. */
