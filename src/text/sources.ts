@@ -1,4 +1,8 @@
+import type { FoldedForcing } from '../core/model/folded-forcing.ts';
+import type { Separation } from '../core/model/judgement.ts';
 import type { FootfallActivity, Forcing, KnownBy, SourceKind } from '../core/model/source.ts';
+import { formatInterval } from './number.ts';
+import { formatFrequencyRange } from './quantity.ts';
 
 const ORDINALS = ['zeroth', 'first', 'second', 'third', 'fourth', 'fifth', 'sixth', 'seventh', 'eighth'];
 export const ordinalWord = (order: number): string => ORDINALS[order] ?? `${order}th`;
@@ -92,6 +96,25 @@ export function forcingName(forcing: Forcing): string {
     case 'band':
       return forcing.order === 1 ? of : `the ${ordinalWord(forcing.order)} harmonic of ${of}`;
   }
+}
+
+const EDGES: Readonly<Record<FoldedForcing['edge'], string>> = {
+  'half-rate': ', at half the sampling rate, where its size cannot be read',
+  zero: ', next to zero, where its size cannot be read',
+  none: '',
+};
+
+/** Told before recording: what this phone would show in the wrong place. */
+export function foldedForcingSentence(folded: FoldedForcing): string {
+  const name = forcingName(folded.forcing);
+  const where = formatFrequencyRange(folded.imageHz, 'Hz', 2);
+  return `${name.charAt(0).toUpperCase()}${name.slice(1)} lies above what this phone samples: it would show at ${where}${EDGES[folded.edge]}.`;
+}
+
+/** Vortex shedding at a mode: the wind speed that does it, and the Scruton number where the mass is known. */
+export function windSentence(wind: NonNullable<Separation['wind']>): string {
+  const speed = `Vortices shed at this mode in a wind of ${formatInterval(wind.criticalSpeedMps, 2)} m/s.`;
+  return wind.scrutonRatio ? `${speed} Scruton number ${formatInterval(wind.scrutonRatio, 2)}.` : speed;
 }
 
 /** Where its numbers come from, with the warning where they are less than sure. */

@@ -16,6 +16,10 @@ import { INTERRUPTION_CODES } from '../../src/core/model/recording.ts';
 import { FORCING_ROLES, KNOWN_BY, SOURCE_KINDS, type Source } from '../../src/core/model/source.ts';
 import { IMPOSSIBLE_REASONS } from '../../src/core/survey/impossible-source.ts';
 import { SHAPE_REASONS } from '../../src/core/survey/parse-sources.ts';
+import { foldedForcings } from '../../src/core/survey/folded-images.ts';
+import { DEFAULT_THRESHOLDS } from '../../src/core/survey/thresholds.ts';
+import { thresholdText } from '../../src/text/thresholds.ts';
+import type { Thresholds } from '../../src/core/model/thresholds.ts';
 import { judge } from '../../src/core/survey/judge.ts';
 import { forcingsOf } from '../../src/core/survey/forcings.ts';
 import { nextStepSentence, speedSeriesSentence, toneOriginSentence } from '../../src/text/assets.ts';
@@ -27,7 +31,14 @@ import { criterionName, levelReason, levelSentence, measureName } from '../../sr
 import { problemSentence } from '../../src/text/problems.ts';
 import { refusalSentence } from '../../src/text/refusals.ts';
 import { headlineSentence, verdictSentence } from '../../src/text/sentence.ts';
-import { forcingName, forcingOrigin, knownByName, sourceKindName } from '../../src/text/sources.ts';
+import {
+  foldedForcingSentence,
+  forcingName,
+  forcingOrigin,
+  knownByName,
+  sourceKindName,
+  windSentence,
+} from '../../src/text/sources.ts';
 import { specialistText } from '../../src/text/specialist.ts';
 import { unpairedText, verdictText } from '../../src/text/verdicts.ts';
 import { wayOutName, wayOutSentence } from '../../src/text/ways-out.ts';
@@ -64,6 +75,10 @@ describe('every closed code', () => {
       ...DOUBT_CODES.map((code) => doubtText(code).name),
     ];
     expect(names.every((name) => name.length > 2)).toBe(true);
+  });
+  it('that the person may set has its origin', () => {
+    for (const key of Object.keys(DEFAULT_THRESHOLDS) as (keyof Thresholds)[])
+      expect(thresholdText(key).origin).toMatch(SENTENCE);
   });
   it('of a refused source has its own words', () => {
     for (const reason of [...IMPOSSIBLE_REASONS, ...SHAPE_REASONS])
@@ -129,6 +144,22 @@ describe('forcings in words', () => {
   it('have a name for every role', () => {
     const [forcing] = valueOf(forcingsOf([{ name: 'x', kind: 'band', frequencyHz: 3 }]));
     for (const role of FORCING_ROLES) expect(forcingName({ ...forcing!, role }).length).toBeGreaterThan(0);
+  });
+  it('are told before recording where they would show folded', () => {
+    const list = valueOf(
+      forcingsOf([
+        { name: 'blower', kind: 'machine', speedRpm: 3550, toleranceRatio: 0, bladeCount: 5, orders: [1] },
+      ]),
+    );
+    expect(foldedForcings(list, 60).map(foldedForcingSentence)).toEqual([
+      'The running speed of blower lies above what this phone samples: it would show at 0.83 Hz, next to zero, where its size cannot be read.',
+      'The blade pass of blower lies above what this phone samples: it would show at 4.2 Hz.',
+    ]);
+  });
+  it('tell the wind that sheds vortices at a mode', () => {
+    expect(windSentence({ criticalSpeedMps: [4.762, 5.556], scrutonRatio: [6.4, 6.4] })).toBe(
+      'Vortices shed at this mode in a wind of 4.8 to 5.6 m/s. Scruton number 6.4.',
+    );
   });
   it('say to check what is not sure', () => {
     const [road] = valueOf(forcingsOf([{ name: 'street', kind: 'traffic' }]));

@@ -1,3 +1,4 @@
+import type { FoldedForcing } from '../model/folded-forcing.ts';
 import type { Interval } from '../model/interval.ts';
 import type { Forcing } from '../model/source.ts';
 
@@ -20,14 +21,6 @@ export function imageBandHz(bandHz: Interval, rateHz: number): Interval {
 
 /** Within this share of half the rate (or of zero) a line beats against the sampling and its amplitude cannot be read. Our own bound. */
 export const EDGE_SHARE = 0.03;
-
-export interface FoldedForcing {
-  readonly forcing: Forcing;
-  /** Where this phone would show it. */
-  readonly imageHz: Interval;
-  /** At half the rate or at zero: its amplitude cannot be read at all. */
-  readonly edge: 'half-rate' | 'zero' | 'none';
-}
 
 /** Forcings that lie, at least in part, above half the rate (or on it), with where they would appear: told before recording. */
 export function foldedForcings(forcings: readonly Forcing[], rateHz: number): readonly FoldedForcing[] {

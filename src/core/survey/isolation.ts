@@ -20,8 +20,8 @@ export const frequencyFromDeflectionHz = (deflectionM: number): number =>
   Math.sqrt(STANDARD_GRAVITY_MPS2 / deflectionM) / (2 * Math.PI);
 
 /** Mount frequency for a wanted undamped transmissibility T = 1/(r² - 1): f / sqrt(1 + 1/T). */
-export const mountFrequencyHz = (forcingHz: number, wantedTransmissibility: number): number =>
-  forcingHz / Math.sqrt(1 + 1 / wantedTransmissibility);
+export const mountFrequencyHz = (forcingHz: number, wantedTransmissibilityRatio: number): number =>
+  forcingHz / Math.sqrt(1 + 1 / wantedTransmissibilityRatio);
 
 /** Range of the transmissibility over a band of forcing, mounts of unknown damping. */
 function transmissibilityRange(forcingHz: Interval, mountHz: number): Interval {
@@ -41,8 +41,8 @@ export function isolationWay(separationIndex: number, context: WaysOutContext): 
   const separation = context.separations[separationIndex] as Separation;
   const forcing = context.forcings[separation.forcingIndex] as Forcing;
   if (!ISOLATED_KINDS.includes(forcing.sourceKind) && forcing.amplificationKind !== 'base') return undefined;
-  const { wantedTransmissibility, apartBelowRatio, apartAboveRatio } = context.thresholds;
-  const mountHz = mountFrequencyHz(forcing.frequencyHz[0], wantedTransmissibility);
+  const { wantedTransmissibilityRatio, apartBelowRatio, apartAboveRatio } = context.thresholds;
+  const mountHz = mountFrequencyHz(forcing.frequencyHz[0], wantedTransmissibilityRatio);
   const factor = transmissibilityRange(forcing.frequencyHz, mountHz);
   const [low, high] = separation.amplification.interval;
   const deflection = staticDeflectionM(mountHz);

@@ -9,7 +9,7 @@ import {
   frequencyInterval,
   frequencySpreadRatio,
 } from './mode-intervals.ts';
-import type { Thresholds } from './thresholds.ts';
+import type { Thresholds } from '../model/thresholds.ts';
 import { criticalWindSpeedMps, scrutonNumber } from './wind.ts';
 import { zonesFor } from './zones.ts';
 import { logDecrement } from './damping-measures.ts';

@@ -2,7 +2,7 @@ import type { Circumstances } from '../model/fact.ts';
 import type { Trust } from '../model/doubt.ts';
 import type { LevelFinding, Separation, SpecialistReason } from '../model/judgement.ts';
 import type { Forcing } from '../model/source.ts';
-import type { Thresholds } from './thresholds.ts';
+import type { Thresholds } from '../model/thresholds.ts';
 
 export interface SpecialistFacts {
   readonly circumstances: Partial<Circumstances>;
@@ -21,7 +21,7 @@ function isStrongCoincidence(facts: SpecialistFacts, kinds: readonly Forcing['so
   return facts.separations.some(
     ({ verdict, amplification, forcingIndex }) =>
       verdict === 'coincident' &&
-      amplification.interval[1] > facts.thresholds.specialistAmplification &&
+      amplification.interval[1] > facts.thresholds.specialistAmplificationRatio &&
       kinds.includes((facts.forcings[forcingIndex] as Forcing).sourceKind),
   );
 }

@@ -1,19 +1,4 @@
-/** What the person may set. Every default with its origin. */
-export interface Thresholds {
-  /** Coincident within this of 1, or within the half-power band where that is wider. */
-  readonly coincidentRatio: number;
-  /** Apart at or below this ratio, and at or above the other. */
-  readonly apartBelowRatio: number;
-  readonly apartAboveRatio: number;
-  /** Relative half-width (95 %) for holding a mode found at rest against a running machine. */
-  readonly stoppedRunningRatio: number;
-  /** Amplification from which a coincidence with people or a machine calls for a specialist. */
-  readonly specialistAmplification: number;
-  /** Amplification that the damping way out aims at. */
-  readonly wantedAmplification: number;
-  /** Transmissibility that the isolation way out aims at. */
-  readonly wantedTransmissibility: number;
-}
+import type { Thresholds } from '../model/thresholds.ts';
 
 export const DEFAULT_THRESHOLDS: Thresholds = {
   /** Common practice, no source: what a speed, a load or a season moves by itself. */
@@ -25,11 +10,11 @@ export const DEFAULT_THRESHOLDS: Thresholds = {
   /** Common practice, no source: bearing film, preload, temperature and fill move a machine's mode by a few per cent. */
   stoppedRunningRatio: 0.05,
   /** Common practice, no source: five times the static effect is past what tidy operation hides. */
-  specialistAmplification: 5,
+  specialistAmplificationRatio: 5,
   /** As above: below it the pair is a nuisance at most. */
-  wantedAmplification: 5,
+  wantedAmplificationRatio: 5,
   /** Mounts at a third of the forcing frequency, undamped: 1/8 (derived). */
-  wantedTransmissibility: 0.125,
+  wantedTransmissibilityRatio: 0.125,
 };
 
 /**
@@ -43,9 +28,9 @@ export function thresholdsWith(own: Partial<Thresholds> = {}): Thresholds {
     apartBelowRatio: [0.3, 0.95],
     apartAboveRatio: [1.05, 3],
     stoppedRunningRatio: [0, 0.3],
-    specialistAmplification: [1, 100],
-    wantedAmplification: [1, 100],
-    wantedTransmissibility: [0.01, 0.9],
+    specialistAmplificationRatio: [1, 100],
+    wantedAmplificationRatio: [1, 100],
+    wantedTransmissibilityRatio: [0.01, 0.9],
   };
   for (const key of Object.keys(bounds) as (keyof Thresholds)[]) {
     const [low, high] = bounds[key];

@@ -108,7 +108,7 @@ const aim = (targetHz: number, direction: 1 | -1): number => targetHz * (1 + dir
 /** Damping that holds the amplification to the wanted value; the pair stays as near as it was. */
 function dampingWay(pair: Pair, context: WaysOutContext): WayOut | undefined {
   const { separation, forcing } = pair;
-  const wanted = context.thresholds.wantedAmplification;
+  const wanted = context.thresholds.wantedAmplificationRatio;
   if (separation.amplification.interval[1] <= wanted) return undefined;
   const kind = forcing.amplificationKind;
   const needed = dampingForAmplification(kind, separation.ratio, wanted, forcing.cycleCount);

@@ -1,6 +1,6 @@
 import type { Interval } from '../model/interval.ts';
 import type { AmplificationKind } from '../model/source.ts';
-import type { Thresholds } from './thresholds.ts';
+import type { Thresholds } from '../model/thresholds.ts';
 
 /** Ratios that count as coincident, and the ratios beyond which a pair is apart, for one mode and kind of forcing. */
 export interface Zones {

@@ -229,7 +229,7 @@ describe('thresholds', () => {
     expect(() => thresholdsWith({ coincidentRatio: 0.15, apartBelowRatio: 0.9 })).toThrow(
       /reaches into apart/,
     );
-    expect(() => thresholdsWith({ wantedAmplification: Number.NaN })).toThrow(RangeError);
+    expect(() => thresholdsWith({ wantedAmplificationRatio: Number.NaN })).toThrow(RangeError);
   });
 });
 

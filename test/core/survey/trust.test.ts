@@ -71,7 +71,9 @@ describe('call a specialist', () => {
     expect(judge(damped, [walking]).specialist).toEqual([]);
     const press = { name: 'press', kind: 'machine', speedRpm: 1200 } as const;
     expect(judge(calm, [press]).specialist).toEqual(['coincident-machine']);
-    expect(judge(calm, [press], {}, { thresholds: { specialistAmplification: 100 } }).specialist).toEqual([]);
+    expect(
+      judge(calm, [press], {}, { thresholds: { specialistAmplificationRatio: 100 } }).specialist,
+    ).toEqual([]);
   });
   it('for poor trust only where something is at stake', () => {
     const poor = { doubts: doubts('poor-fit') };
