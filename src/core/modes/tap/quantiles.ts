@@ -9,7 +9,12 @@ export function studentQuantile95(freedom: number): number {
   const tabled = STUDENT_95[freedom - 1];
   if (tabled !== undefined) return tabled;
   const z = 1.959964;
-  return z + (z ** 3 + z) / (4 * freedom) + (5 * z ** 5 + 16 * z ** 3 + 3 * z) / (96 * freedom ** 2);
+  return (
+    z +
+    (z ** 3 + z) / (4 * freedom) +
+    (5 * z ** 5 + 16 * z ** 3 + 3 * z) / (96 * freedom ** 2) +
+    (3 * z ** 7 + 19 * z ** 5 + 17 * z ** 3 - 15 * z) / (384 * freedom ** 3)
+  );
 }
 
 /** t(0.975) for 1 to 5 degrees of freedom; standard table (e.g. Abramowitz & Stegun, table 26.10). */

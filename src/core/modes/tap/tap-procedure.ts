@@ -22,6 +22,8 @@ import type { RingDownSearch } from './ring-down-state.ts';
 
 /** Fewer samples than this hold no ring-down worth fitting. */
 const FEWEST_SAMPLES = 64;
+/** Smallest full scale of a phone's sensor, ±2 g, less what gravity takes: below, equal extreme values are rounding. */
+const LEAST_FULL_SCALE_MPS2 = 9.8;
 /** A mode must stand out of the noise by this many standard deviations of a sample at its strongest tap... */
 const LEAST_AMPLITUDE_SDS = 3;
 /** ...and its damping must be known to this relative standard deviation, else it is no answer. */
@@ -48,7 +50,8 @@ export function tapProcedure(
   const { facts } = conditioned;
   if (signal.timeS.length < FEWEST_SAMPLES)
     return failure('too-short', { durationS: facts.durationS, sampleCount: facts.sampleCount });
-  if (facts.clippedCount > signal.timeS.length / 4)
+  const largest = Math.max(...signal.y.map((y) => y.reduce((m, v) => Math.max(m, Math.abs(v)), 0)));
+  if (facts.clippedCount > signal.timeS.length / 4 && largest > LEAST_FULL_SCALE_MPS2)
     return failure('clipped-throughout', { clippedCount: facts.clippedCount });
   const search = searchRingDowns({ signal, rateHz: facts.rateHz, stepMps2: facts.stepMps2 });
   if (search === undefined) return failure('no-motion');
