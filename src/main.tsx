@@ -2,7 +2,7 @@
 // First, so that the order of the layers is stated before any component's styles.
 import './ui/styles/index.css';
 import { render } from 'preact';
-import { createApp, type App } from './app/app.ts';
+import { createApp } from './app/app.ts';
 import { createNavigation } from './app/navigation.ts';
 import { createOfflineUpdates } from './app/offline-updates.ts';
 import { createCapture } from './capture/create-capture.ts';
@@ -27,16 +27,15 @@ async function assemble(place: HTMLElement): Promise<void> {
   const isOff = (await store.getSetting('offline')) === 'off';
   const navigation = createNavigation(window);
   const practice = new URLSearchParams(location.search).has('rig') ? location.search : undefined;
-  let app: App | undefined;
   const update = createOfflineUpdates({
     container: navigator.serviceWorker,
     locks: navigator.locks,
     recorderLock: RECORDER_LOCK,
     reload: () => location.reload(),
     isOff,
-    onError: (error) => app?.noteError(error),
+    onError: (error) => store.noteError(errorText(error)),
   });
-  app = await createApp({
+  const app = await createApp({
     about: { version: __APP_VERSION__, commit: __APP_COMMIT__, analysisVersion: ANALYSIS_VERSION },
     navigation,
     capture: createCapture({ journal: store }),
@@ -44,8 +43,8 @@ async function assemble(place: HTMLElement): Promise<void> {
     store,
     update,
     readRecording: async (file) => {
-      const { readCsv } = await import('./core/packet/read-csv.ts');
-      return readCsv(await file.text(), { name: file.name });
+      const { readRecordingFile } = await import('./app/read-recording-file.ts');
+      return readRecordingFile(file);
     },
     receivePacket: () => navigation.go({ screen: 'hand-over' }),
     problemSentence,
@@ -56,11 +55,12 @@ async function assemble(place: HTMLElement): Promise<void> {
       ...(practice ? { practice } : {}),
     },
   });
-  const made = app;
-  addEventListener('error', (event) => made.noteError(event.error ?? event.message));
-  addEventListener('unhandledrejection', (event) => made.noteError(event.reason));
+  addEventListener('error', (event) => app.noteError(event.error ?? event.message));
+  addEventListener('unhandledrejection', (event) => app.noteError(event.reason));
   store.onChange((what) => {
-    if (what === 'closed') made.notices.show(screenText.storeClosed, { tone: 'failure' });
+    if (what === 'closed') app.notices.show(screenText.storeClosed, { tone: 'failure' });
   });
-  render(<Root app={made} />, place);
+  render(<Root app={app} />, place);
 }
+
+const errorText = (error: unknown) => (error instanceof Error ? error.message : String(error));

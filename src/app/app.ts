@@ -116,15 +116,20 @@ export async function createApp(parts: AppParts): Promise<App> {
       if (reading.sensor.source !== 'file')
         settings.change({ lastProcedure: reading.procedure, mounting: reading.circumstances.mounting });
       void store.askPersistence();
-      navigation.replace({ screen: 'reading', id: reading._id });
+      const opened = { screen: 'reading', id: reading._id } as const;
+      if (navigation.route.get().screen === 'take') navigation.replace(opened);
+      else
+        notices.show(screenText.take.kept, {
+          action: { label: screenText.common.open, run: () => navigation.go(opened) },
+        });
     },
   });
+  let { practice } = environment;
   const take: Take = {
     ...flow,
     async prepare(where, procedure) {
       const now = settings.get();
       flow.reset();
-      const practice = flow.plan.get().practice ?? environment.practice;
       const known = await places.whereabouts(where);
       const plan = planTake(procedure ?? now.lastProcedure, known, now.mounting, practice);
       const kind = known.place ? {} : { spotKind: now.lastSpotKind ?? 'other' };
@@ -132,8 +137,12 @@ export async function createApp(parts: AppParts): Promise<App> {
     },
     again: ({ spot, procedure }) => navigation.go({ screen: 'take', procedure, ...(spot ? { spot } : {}) }),
     next: ({ procedure }) => navigation.go({ screen: 'take', procedure }),
-    usePractice: () => flow.plan.set({ ...flow.plan.get(), practice: environment.practice ?? DEFAULT_RIG }),
+    usePractice() {
+      practice = environment.practice ?? DEFAULT_RIG;
+      flow.plan.set({ ...flow.plan.get(), practice });
+    },
     leavePractice() {
+      practice = undefined;
       const { practice: _, ...plan } = flow.plan.get();
       flow.plan.set(plan);
     },

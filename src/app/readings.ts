@@ -6,12 +6,13 @@ import type { Outcome } from '../core/model/outcome.ts';
 import type { AnalysisResult } from '../core/model/pictures.ts';
 import type { Recording } from '../core/model/recording.ts';
 import type { Source } from '../core/model/source.ts';
+import type { judge } from '../core/survey/judge.ts';
 import type { Notices } from './notices.ts';
 import { textField, type PlaceIds, type Places, type Whereabouts } from './places.ts';
 import type { AnalysisPort, OpenedReading, ReadingFilter, ReadingSummary, StorePort } from './ports.ts';
 
 /** `judge` of core/survey, loaded when the first reading is opened. */
-export type JudgeReading = typeof import('../core/survey/judge.ts').judge;
+export type JudgeReading = typeof judge;
 
 export interface Readings {
   list(filter?: ReadingFilter): Promise<readonly ReadingSummary[]>;
@@ -64,7 +65,7 @@ export function createReadings(
   notices: Notices,
   words: ReadingsWords,
 ): Readings {
-  const judge = async () => (await import('../core/survey/judge.ts')).judge;
+  const loadJudge = async () => (await import('../core/survey/judge.ts')).judge;
   const mark = (ids: readonly string[], trashed: boolean) =>
     Promise.all(ids.map((id) => store.edit(id, { trashed })));
 
@@ -82,10 +83,10 @@ export function createReadings(
         at: new Date().toISOString(),
       });
     },
-    judge,
+    judge: loadJudge,
     async judgementOf(opened, sources) {
       const { place } = await readings.whereabouts(opened);
-      const judgeNow = await judge();
+      const judgeNow = await loadJudge();
       return judgeNow(currentAnalysis(opened), sources, opened.reading.circumstances, place ? { place } : {});
     },
     async edit(entity, set, said) {

@@ -25,7 +25,7 @@ const spotKinds = {
   other: 'Something else',
 } as const;
 
-export const english = {
+const english = {
   appName: 'Thrumbook',
   tabs: {
     label: 'Main',
@@ -45,6 +45,7 @@ export const english = {
     add: 'Add',
     remove: 'Move to trash',
     undo: 'Undo',
+    open: 'Open',
     done: 'Done',
     edit: 'Edit',
     optional: 'optional',
@@ -108,7 +109,8 @@ export const english = {
   start: {
     lead: 'Lay the phone on it, tap it, and know how it rings.',
     take: 'Take a reading',
-    practice: 'Try it on a practice rig',
+    practice: 'Practice rig',
+    leavePractice: 'Leave the practice rig',
     openFile: 'Open a recording',
     round: 'This round',
     roundNote: (n: number) => count(n, 'reading', 'readings'),
@@ -181,6 +183,7 @@ export const english = {
     cutNote: (seconds: number) => `${seconds} s were recorded before that.`,
     useCut: 'Use what there is',
     dropCut: 'Drop it, take it again',
+    kept: 'The reading is kept.',
     unsaved: 'The reading could not be kept',
     unsavedNote: 'It is still in memory. Make room on the phone, then try again.',
     retry: 'Try again',

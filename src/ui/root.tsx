@@ -6,6 +6,7 @@ import type { Route } from '../app/route.ts';
 import type { Theme } from '../app/settings.ts';
 import { Boundary } from './boundary.tsx';
 import { Later } from './later.tsx';
+import type { ListName } from './list-name.ts';
 import { LostScreen } from './screens/lost-screen.tsx';
 import { StartScreen } from './screens/start/start-screen.tsx';
 import { TakeScreen } from './screens/take/take-screen.tsx';
@@ -61,7 +62,6 @@ function listFor(app: App, route: Route): ComponentChildren {
   );
 }
 
-export type ListName = 'readings' | 'places' | 'sources';
 const LISTS: Partial<Record<Route['screen'], ListName>> = {
   reading: 'readings',
   site: 'places',

@@ -41,7 +41,10 @@ export async function furnish(
   await page.goto('about:blank');
   await page.goto(`${url}?rig=handrail&pace=${PACE}#/source/new?kind=footfall`);
   await page.getByRole('button', { name: 'Save' }).click();
-  await page.getByRole('link', { name: /^People/ }).first().click();
+  await page
+    .getByRole('link', { name: /^People/ })
+    .first()
+    .click();
   await page.getByRole('heading', { level: 1, name: 'People' }).waitFor();
   const source = idInAddress(page);
   await page.goto(`${url}?rig=handrail&pace=${PACE}#/`);

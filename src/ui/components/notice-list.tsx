@@ -1,17 +1,23 @@
 import { useEffect } from 'preact/hooks';
-import type { Notice } from '../../app/notices.ts';
 import styles from './notice-list.module.css';
+
+export interface ShownNotice {
+  readonly id: number;
+  readonly text: string;
+  readonly tone: 'plain' | 'failure';
+  readonly action?: { readonly label: string; readonly run: () => void };
+}
 
 /** Long enough to read and to reach an undo with a glove; hovering or focusing keeps it. */
 const STAY_MS = 8000;
 
 /** Messages above the foot of the screen: polite ones wait for a pause in speech, failures do not. */
 export function NoticeList(props: {
-  readonly notices: readonly Notice[];
+  readonly notices: readonly ShownNotice[];
   readonly closeLabel: string;
   readonly onDismiss: (id: number) => void;
 }) {
-  const says = (tone: Notice['tone']) =>
+  const says = (tone: ShownNotice['tone']) =>
     props.notices
       .filter((notice) => notice.tone === tone)
       .map((notice) => <Item key={notice.id} notice={notice} {...props} />);
@@ -28,7 +34,7 @@ export function NoticeList(props: {
 }
 
 function Item(props: {
-  readonly notice: Notice;
+  readonly notice: ShownNotice;
   readonly closeLabel: string;
   readonly onDismiss: (id: number) => void;
 }) {

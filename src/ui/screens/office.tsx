@@ -1,7 +1,7 @@
 /** Screens that are not needed before the first reading: one part of the program, loaded when first opened. */
 import type { App } from '../../app/app.ts';
 import type { Route } from '../../app/route.ts';
-import type { ListName } from '../root.tsx';
+import type { ListName } from '../list-name.ts';
 import { Later } from '../later.tsx';
 import { AssetScreen } from './assets/asset-screen.tsx';
 import { AssetsScreen } from './assets/assets-screen.tsx';

@@ -68,7 +68,11 @@ async function historyOf(app: App, opened: OpenedReading | undefined): Promise<r
   return all.filter((entry): entry is OpenedReading => entry !== undefined).map(toVisit);
 }
 
-const changeOf = ({ before, after, history }: Pair) => visitChange(toVisit(before), toVisit(after), history);
+/** Modes in the order of their strength in the earlier reading. */
+const changeOf = ({ before, after, history }: Pair) => {
+  const change = visitChange(toVisit(before), toVisit(after), history);
+  return { ...change, modes: [...change.modes].sort((a, b) => a.earlierIndex - b.earlierIndex) };
+};
 
 function Sentences(pair: Pair) {
   const strongest = changeOf(pair).modes[0];

@@ -119,12 +119,15 @@ const toSurveyVisit = (opened: OpenedReading): SurveyVisit => ({
   circumstances: opened.reading.circumstances,
 });
 
+const strongest = <T extends { readonly earlierIndex: number }>(modes: readonly T[]): T | undefined =>
+  [...modes].sort((a, b) => a.earlierIndex - b.earlierIndex)[0];
+
 /** The strongest mode of the last visit against the first. */
 function changeSince(opened: readonly OpenedReading[]): string {
   const history = opened.map(toSurveyVisit).filter((visit) => visit.analysis.modes.length > 0);
   const first = history[0];
   const last = history.at(-1);
-  const change = first && last ? visitChange(first, last, history).modes[0] : undefined;
+  const change = first && last ? strongest(visitChange(first, last, history).modes) : undefined;
   return changeSentence(text.frequencySince, change?.frequency);
 }
 

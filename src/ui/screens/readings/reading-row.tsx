@@ -33,9 +33,15 @@ export function ReadingRow(props: {
           <span class="note">{screenText.readings.noFrequency}</span>
         ) : (
           <>
-            <strong>{formatFrequency(reading.frequencyHz, reading.frequencySdHz, frequencyUnit)}</strong>
-            {reading.dampingRatio !== undefined &&
-              ` · ${formatDamping(reading.dampingRatio, reading.dampingRatioSd)}`}
+            <strong class="one-line">
+              {formatFrequency(reading.frequencyHz, reading.frequencySdHz, frequencyUnit)}
+            </strong>
+            {reading.dampingRatio !== undefined && (
+              <span class="one-line quiet">
+                {' '}
+                {formatDamping(reading.dampingRatio, reading.dampingRatioSd)}
+              </span>
+            )}
           </>
         )
       }

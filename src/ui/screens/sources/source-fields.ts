@@ -69,3 +69,10 @@ export const SOURCE_FIELDS: Readonly<Record<SourceKind, readonly SourceField[]>>
 
 /** Kinds whose speed or frequency was read somewhere, so that how it was known matters. */
 export const HAS_KNOWN_BY: readonly SourceKind[] = ['machine', 'belt', 'mains', 'band'];
+
+/** What the forcings cannot do without, asked first; the rest waits until someone opens it. */
+export const isFirst = (field: SourceField): boolean =>
+  (field.type === 'measure' && field.isNeeded === true) ||
+  (field.type === 'choice' && field.values[0] !== '') ||
+  field.key === 'bladeCount' ||
+  field.key === 'paceHz';

@@ -18,7 +18,7 @@ import { useLoaded } from '../../use-loaded.ts';
 import { LostScreen } from '../lost-screen.tsx';
 import { ForcingLadder } from './forcing-ladder.tsx';
 import { draftToData, emptyDraft, sourceToDraft, type SourceDraft } from './source-draft.ts';
-import { HAS_KNOWN_BY, SOURCE_FIELDS } from './source-fields.ts';
+import { HAS_KNOWN_BY, isFirst, SOURCE_FIELDS, type SourceField } from './source-fields.ts';
 import { SourceFieldInput } from './source-field-input.tsx';
 
 const text = officeText.sources;
@@ -61,6 +61,15 @@ function SourceForm(props: {
   const problem = parsed.ok ? undefined : problemSentence(parsed.problem);
   const change = (key: string, value: string) =>
     setDraft({ ...draft, typed: { ...draft.typed, [key]: value } });
+  const fields = (list: readonly SourceField[]) =>
+    list.map((field) => (
+      <SourceFieldInput
+        key={field.key}
+        field={field}
+        value={draft.typed[field.key] ?? ''}
+        onChange={(value) => change(field.key, value)}
+      />
+    ));
   const leave = () =>
     app.navigation.back(route.reading ? { screen: 'reading', id: route.reading } : { screen: 'sources' });
   const save = async () => {
@@ -87,38 +96,34 @@ function SourceForm(props: {
           }
         : {})}
     >
-      <div class="stack">
-        <TextField
-          label={`${text.name} (${screenText.common.optional})`}
-          value={draft.name}
-          note={text.nameNote(kindName)}
-          onInput={(name) => setDraft({ ...draft, name })}
-        />
-        {SOURCE_FIELDS[draft.kind].map((field) => (
-          <SourceFieldInput
-            key={field.key}
-            field={field}
-            value={draft.typed[field.key] ?? ''}
-            onChange={(value) => change(field.key, value)}
-          />
-        ))}
-        {HAS_KNOWN_BY.includes(draft.kind) && (
-          <SelectField
-            label={text.knownBy}
-            note={text.knownByNote}
-            value={draft.knownBy}
-            options={[
-              { value: '', label: screenText.common.notGiven },
-              ...KNOWN_BY.map((value) => ({ value, label: knownByName(value) })),
-            ]}
-            onChange={(knownBy) => setDraft({ ...draft, knownBy })}
-          />
-        )}
-        <PlaceSelect app={app} value={place} onChange={setPlace} />
-      </div>
+      <div class="stack">{fields(SOURCE_FIELDS[draft.kind].filter(isFirst))}</div>
       {problem && isTried && <p role="alert">{problem}</p>}
-      {parsed.ok && <Preview source={parsed.value} />}
-      {!parsed.ok && <p class="quiet">{text.previewLater}</p>}
+      {parsed.ok ? <Preview source={parsed.value} /> : <p class="quiet">{text.previewLater}</p>}
+      <details open={known !== undefined}>
+        <summary>{text.more}</summary>
+        <div class="stack">
+          <TextField
+            label={`${text.name} (${screenText.common.optional})`}
+            value={draft.name}
+            note={text.nameNote(kindName)}
+            onInput={(name) => setDraft({ ...draft, name })}
+          />
+          <PlaceSelect app={app} value={place} onChange={setPlace} />
+          {HAS_KNOWN_BY.includes(draft.kind) && (
+            <SelectField
+              label={text.knownBy}
+              note={text.knownByNote}
+              value={draft.knownBy}
+              options={[
+                { value: '', label: screenText.common.notGiven },
+                ...KNOWN_BY.map((value) => ({ value, label: knownByName(value) })),
+              ]}
+              onChange={(knownBy) => setDraft({ ...draft, knownBy })}
+            />
+          )}
+          {fields(SOURCE_FIELDS[draft.kind].filter((field) => !isFirst(field)))}
+        </div>
+      </details>
       <BottomBar>
         <Button onClick={leave}>{screenText.common.cancel}</Button>
         <Button kind="main" onClick={() => void save()}>

@@ -1,4 +1,5 @@
 /** Start: take a reading, this round, what came last. */
+import { useState } from 'preact/hooks';
 import type { App } from '../../../app/app.ts';
 import type { RecoveredJournal } from '../../../app/ports.ts';
 import { screenText } from '../../../text/screens.ts';
@@ -21,6 +22,8 @@ const text = screenText.start;
 const RECENT_COUNT = 6;
 
 export function StartScreen({ app }: { readonly app: App }) {
+  const { round } = useLive(app.settings);
+  const [dropped, setDropped] = useState(0);
   const loaded = useLoaded(
     app.store,
     async () => ({
@@ -28,7 +31,7 @@ export function StartScreen({ app }: { readonly app: App }) {
       recent: (await app.readings.list()).slice(0, RECENT_COUNT),
       cut: await app.store.recoverable(),
     }),
-    [],
+    [round, dropped],
   );
   const isNew = loaded?.recent.length === 0;
   const inRound = loaded?.round.readings ?? [];
@@ -42,12 +45,17 @@ export function StartScreen({ app }: { readonly app: App }) {
     >
       <UpdateNote app={app} />
       {loaded?.cut.map((journal) => (
-        <CutRecording key={journal.journalId} app={app} journal={journal} />
+        <CutRecording
+          key={journal.journalId}
+          app={app}
+          journal={journal}
+          onDropped={() => setDropped((count) => count + 1)}
+        />
       ))}
       {isNew && <Welcome />}
       {inRound.length > 0 && (
         <section class="stack">
-          <div class="row row-apart row-one">
+          <div class="row row-apart">
             <h2>
               {text.round} <span class="quiet">{text.roundNote(inRound.length)}</span>
             </h2>
@@ -79,6 +87,7 @@ export function StartScreen({ app }: { readonly app: App }) {
           </LinkButton>
         )}
         <FileButton kind="quiet" label={text.openFile} onFile={(file) => void app.take.openFile(file)} />
+        <PracticeSwitch app={app} />
         <LinkButton kind="quiet" href={app.navigation.href({ screen: 'pace' })}>
           {text.pace}
         </LinkButton>
@@ -91,26 +100,21 @@ export function StartScreen({ app }: { readonly app: App }) {
 }
 
 function TakeButton({ app }: { readonly app: App }) {
-  const { practice } = useLive(app.take.plan);
-  const mayHaveSensor = app.capture.support !== 'none';
-  const take = () => app.navigation.go({ screen: 'take' });
   return (
-    <>
-      {!practice && !mayHaveSensor && (
-        <Button
-          onClick={() => {
-            app.take.usePractice();
-            take();
-          }}
-        >
-          {text.practice}
-        </Button>
-      )}
-      <Button kind="main" onClick={take}>
-        <IconStart />
-        {text.take}
-      </Button>
-    </>
+    <Button kind="main" onClick={() => app.navigation.go({ screen: 'take' })}>
+      <IconStart />
+      {text.take}
+    </Button>
+  );
+}
+
+/** Without a sensor, or before a real structure: the simulated phone, and the way out of it. */
+function PracticeSwitch({ app }: { readonly app: App }) {
+  const { practice } = useLive(app.take.plan);
+  return (
+    <Button kind="quiet" onClick={() => (practice ? app.take.leavePractice() : app.take.usePractice())}>
+      {practice ? text.leavePractice : text.practice}
+    </Button>
   );
 }
 
@@ -130,7 +134,13 @@ function Welcome() {
   );
 }
 
-function CutRecording({ app, journal }: { readonly app: App; readonly journal: RecoveredJournal }) {
+function CutRecording(props: {
+  readonly app: App;
+  readonly journal: RecoveredJournal;
+  readonly onDropped: () => void;
+}) {
+  const { app, journal } = props;
+  const drop = () => void app.store.dropJournal(journal.journalId).then(props.onDropped);
   const recover = () => {
     app.navigation.go({ screen: 'take' });
     void app.take.recover(journal);
@@ -141,7 +151,7 @@ function CutRecording({ app, journal }: { readonly app: App; readonly journal: R
       <p>{text.recoverNote(Math.round(journal.durationS), dayAndTime(journal.startedAt))}</p>
       <div class="row">
         <Button onClick={recover}>{text.recover}</Button>
-        <Button kind="quiet" onClick={() => void app.store.dropJournal(journal.journalId)}>
+        <Button kind="quiet" onClick={drop}>
           {text.dropRecovered}
         </Button>
       </div>
