@@ -2,6 +2,7 @@
 import uPlot from 'uplot';
 import 'uplot/dist/uPlot.min.css';
 import type { Interval } from '../../core/model/interval.ts';
+import { movedRange, rangeShare } from '../../core/picture/moved-range.ts';
 import { attachGestures } from './attach-gestures.ts';
 import type { PlotPalette } from './plot-palette.ts';
 import type { PlotSeries, PlotSpec } from './plot-spec.ts';
@@ -25,8 +26,6 @@ export interface PlotEvents {
   readonly onRange: (range: Interval) => void;
 }
 
-/** Closest view: this share of the whole, or of a decade on a logarithmic axis. */
-const CLOSEST_SHARE = 0.004;
 const DOT_PX = 3.5;
 const DASHES: Readonly<Record<PlotSeries['kind'], number[] | undefined>> = {
   line: undefined,
@@ -134,27 +133,6 @@ const marked = (plot: uPlot, spec: PlotSpec, palette: PlotPalette) => {
   ctx.restore();
 };
 
-const forward = (value: number, isLog: boolean | undefined) => (isLog ? Math.log10(value) : value);
-const backward = (value: number, isLog: boolean | undefined) => (isLog ? 10 ** value : value);
-
-/** The range that results when `range` is scaled about a value and moved, never outside the whole. */
-export function movedRange(
-  range: Interval,
-  whole: Interval,
-  change: { readonly factor?: number; readonly about?: number; readonly shift?: number },
-  isLog?: boolean,
-): Interval {
-  const [low, high] = range.map((value) => forward(value, isLog)) as [number, number];
-  const [lowest, highest] = whole.map((value) => forward(value, isLog)) as [number, number];
-  const about = change.about === undefined ? (low + high) / 2 : forward(change.about, isLog);
-  const smallest = (highest - lowest) * CLOSEST_SHARE;
-  const width = Math.min(highest - lowest, Math.max(smallest, (high - low) / (change.factor ?? 1)));
-  const share = (about - low) / (high - low);
-  const wanted = about - share * width + (change.shift ?? 0) * width;
-  const start = Math.min(highest - width, Math.max(lowest, wanted));
-  return [backward(start, isLog), backward(start + width, isLog)];
-}
-
 /** Draws a plot into an element; the element keeps its height. */
 export function drawPlot(
   host: HTMLElement,
@@ -180,7 +158,7 @@ export function drawPlot(
         points: { size: 7, width: 1.5 },
       },
       scales: {
-        x: { time: false, distr: spec.isLogX ? 3 : 1, range: () => [range[0], range[1]] },
+        x: { time: false, range: () => [range[0], range[1]] },
         y: {
           distr: spec.isLogY ? 3 : 1,
           ...(spec.rangeY ? { range: [spec.rangeY[0], spec.rangeY[1]] as uPlot.Range.MinMax } : {}),
@@ -204,25 +182,22 @@ export function drawPlot(
     plot.setScale('x', { min: next[0], max: next[1] });
     events.onRange(next);
   };
-  const isZoomed = () =>
-    forward(range[1], spec.isLogX) - forward(range[0], spec.isLogX) <
-    (forward(spec.wholeX[1], spec.isLogX) - forward(spec.wholeX[0], spec.isLogX)) * 0.999;
+  const isZoomed = () => rangeShare(range, spec.wholeX) < 0.999;
   const detach = attachGestures(host, {
     along: 'x',
     isZoomed,
     zoomAt: (factor, clientX) => {
       const about = plot.posToVal(clientX - plot.over.getBoundingClientRect().left, 'x');
-      setRange(movedRange(range, spec.wholeX, { factor, about }, spec.isLogX));
+      setRange(movedRange(range, spec.wholeX, { factor, about }));
     },
-    panBy: (pixels) =>
-      setRange(movedRange(range, spec.wholeX, { shift: -pixels / plot.over.clientWidth }, spec.isLogX)),
+    panBy: (pixels) => setRange(movedRange(range, spec.wholeX, { shift: -pixels / plot.over.clientWidth })),
     began: () => undefined,
     dragged: () => undefined,
   });
   return {
     range: () => range,
     setRange,
-    zoom: (factor) => setRange(movedRange(range, spec.wholeX, { factor }, spec.isLogX)),
+    zoom: (factor) => setRange(movedRange(range, spec.wholeX, { factor })),
     resize: (widthPx) => plot.setSize({ width: widthPx, height: size.heightPx }),
     show: (index, isShown) => {
       if (plot.series[index + 1]?.show !== isShown) plot.setSeries(index + 1, { show: isShown });

@@ -21,7 +21,6 @@ export interface PlotMark {
 export interface PlotSpec {
   readonly x: ArrayLike<number>;
   readonly xLabel: string;
-  readonly isLogX?: boolean;
   readonly wholeX: Interval;
   readonly yLabel: string;
   readonly isLogY?: boolean;

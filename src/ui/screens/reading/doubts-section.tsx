@@ -8,7 +8,7 @@ import { Section } from './section.tsx';
 
 /** Every reason not to trust the reading fully: what it means, what to do. */
 export function DoubtsSection(props: { readonly analysis: Analysis; readonly judgement: Judgement }) {
-  const doubts = allDoubts(props.analysis);
+  const doubts = allDoubts(props.analysis, props.judgement);
   const words = readingText.doubts;
   return (
     <Section

@@ -17,8 +17,8 @@ import { Section } from './section.tsx';
 import { TryPanel } from './try-panel.tsx';
 import { WaysOutSection } from './ways-out-section.tsx';
 import {
-  changedAnalysis,
-  changedSources,
+  triedAnalysis,
+  triedSources,
   isNothingTried,
   nothingTried,
   presentSpeedRpm,
@@ -54,8 +54,8 @@ export function LadderSection(props: LadderSectionProps) {
   const isTried = tried !== undefined && !isNothingTried(tried);
   const shown = useMemo(() => {
     if (!isTried) return { analysis, judgement };
-    const changed = changedAnalysis(analysis, tried);
-    return { analysis: changed, judgement: judge(changed, changedSources(sources, tried)) };
+    const changed = triedAnalysis(analysis, tried);
+    return { analysis: changed, judgement: judge(changed, triedSources(sources, tried)) };
   }, [analysis, judgement, sources, judge, tried, isTried]);
   const content = useMemo(
     () =>

@@ -35,7 +35,7 @@ export function NumberSheet(props: NumberSheetProps) {
         {mode ? <ModeFigures mode={mode} analysis={analysis} units={units} /> : <ToneFigures {...props} />}
         <Figure
           value={readingText.trust[judgement.trust]}
-          note={`${readingText.trustName}, ${readingText.doubtCount(allDoubts(analysis).length)}`}
+          note={`${readingText.trustName}, ${readingText.doubtCount(allDoubts(analysis, judgement).length)}`}
         />
       </dl>
       {analysis.modes.length > 0 && <ModeTable analysis={analysis} units={units} />}

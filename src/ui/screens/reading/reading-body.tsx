@@ -18,7 +18,7 @@ import { NoModeAdvice } from './no-mode-advice.tsx';
 import { NotesSection } from './notes-section.tsx';
 import { PlotSections } from './plot-sections.tsx';
 import styles from './reading-body.module.css';
-import type { ReadingPageProps } from './reading-page.tsx';
+import type { ReadingPageProps } from './reading-page-props.ts';
 import { currentAnalysis, type ReadingView } from './reading-use-cases.ts';
 import { RedoSection } from './redo-section.tsx';
 import { SensorSection } from './sensor-section.tsx';

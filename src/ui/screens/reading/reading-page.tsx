@@ -2,15 +2,8 @@ import { useEffect, useMemo, useState } from 'preact/hooks';
 import { Page } from '../../components/page.tsx';
 import { readingText } from '../../../text/reading-screen.ts';
 import { ReadingBody } from './reading-body.tsx';
-import type { ReadingUnits } from './reading-units.ts';
-import type { OpenedView, ReadingLinks, ReadingUseCases } from './reading-use-cases.ts';
-
-export interface ReadingPageProps {
-  readonly id: string;
-  readonly cases: ReadingUseCases;
-  readonly links: ReadingLinks;
-  readonly units: ReadingUnits;
-}
+import type { ReadingPageProps } from './reading-page-props.ts';
+import type { OpenedView } from './reading-use-cases.ts';
 
 /** Opens the reading and follows its changes; says in words when there is nothing to show. */
 export function ReadingPage({ id, cases, links, units }: ReadingPageProps) {

@@ -13,15 +13,9 @@ import { sentenceCase } from './pair-card.tsx';
 import { forcingVerdict, worstOfMode } from './pairs.ts';
 import { saidHz, type ReadingUnits } from './reading-units.ts';
 import { Slider } from './slider.tsx';
-import { likelyDampingRatio, likelyHz } from './true-frequency.ts';
+import { likelyHz } from './true-frequency.ts';
 import styles from './try-panel.module.css';
-import {
-  followedDampingRatio,
-  isNothingTried,
-  nothingTried,
-  presentSpeedRpm,
-  type TriedChange,
-} from './what-if.ts';
+import { isNothingTried, nothingTried, presentSpeedRpm, type TriedChange } from './what-if.ts';
 
 /** Ends of the sliders: what a repair may reach (our own choice; beyond it the structure is another one). */
 const STIFFNESS: readonly [number, number] = [0.4, 5];
@@ -45,7 +39,8 @@ export function TryPanel(props: TryPanelProps) {
   const { analysis, sources, tried, units, onChange } = props;
   const { trying } = readingText;
   const mode = analysis.modes[tried.modeIndex];
-  if (!mode) return null;
+  const now = props.shown.analysis.modes[tried.modeIndex];
+  if (!mode || !now) return null;
   const times = (factor: number) =>
     Math.abs(factor - 1) < 1e-9 ? trying.asMeasured : trying.times(formatNumber(factor, 3));
   return (
@@ -70,9 +65,9 @@ export function TryPanel(props: TryPanelProps) {
       />
       <Slider
         label={trying.change('damping')}
-        value={tried.dampingRatio ?? followedDampingRatio(mode, tried)}
+        value={now.dampingRatio}
         range={DAMPING}
-        rest={likelyDampingRatio(mode)}
+        rest={mode.dampingRatio}
         said={(ratio) => formatPercent(ratio)}
         onChange={(dampingRatio) => onChange({ ...tried, dampingRatio })}
       />

@@ -34,7 +34,7 @@ export function VerdictLead(props: {
       </p>
       <p class={styles.trust}>
         {readingText.trust[trust]} {readingText.trustName},{' '}
-        {readingText.doubtCount(allDoubts(analysis).length)}.
+        {readingText.doubtCount(allDoubts(analysis, judgement).length)}.
       </p>
     </div>
   );

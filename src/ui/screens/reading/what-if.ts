@@ -1,4 +1,5 @@
-import type { Analysis, Mode } from '../../../core/model/analysis.ts';
+import { changedAnalysis } from '../../../app/survey-desk.ts';
+import type { Analysis } from '../../../core/model/analysis.ts';
 import type { Source } from '../../../core/model/source.ts';
 
 /** A change that is being tried, on one mode and on the speeds of sources; 1 and absent mean as measured. */
@@ -25,31 +26,14 @@ export const isNothingTried = (change: TriedChange): boolean =>
   change.dampingRatio === undefined &&
   Object.keys(change.speedsRpm).length === 0;
 
-/** Damping ratio after the change with the damper left as it is: zeta = c / (2 sqrt(k m)). */
-export const followedDampingRatio = (mode: Mode, change: TriedChange): number =>
-  mode.dampingRatio / Math.sqrt(change.stiffnessRatio * change.massRatio);
-
-const changedMode = (mode: Mode, change: TriedChange): Mode => {
-  const shift = Math.sqrt(change.stiffnessRatio / change.massRatio);
-  const dampingRatio = change.dampingRatio ?? followedDampingRatio(mode, change);
-  return {
-    ...mode,
-    frequencyHz: mode.frequencyHz * shift,
-    frequencySdHz: mode.frequencySdHz * shift,
-    dampingRatio,
-    dampingRatioSd: mode.dampingRatioSd * (dampingRatio / mode.dampingRatio),
-    fold: { ...mode.fold, candidatesHz: mode.fold.candidatesHz.map((candidate) => candidate * shift) },
-  };
-};
-
-/**
- * The analysis with one mode changed: f goes with sqrt(k / m) of that mode by itself.
- * Misleads where the change alters the mode's shape, or where modes are close.
- */
-export const changedAnalysis = (analysis: Analysis, change: TriedChange): Analysis => ({
-  ...analysis,
-  modes: analysis.modes.map((mode, index) => (index === change.modeIndex ? changedMode(mode, change) : mode)),
-});
+/** The analysis with the tried mode changed, as the ways out are judged (core/survey). */
+export const triedAnalysis = (analysis: Analysis, change: TriedChange): Analysis =>
+  changedAnalysis(analysis, {
+    modeIndex: change.modeIndex,
+    stiffnessFactor: change.stiffnessRatio,
+    massFactor: change.massRatio,
+    ...(change.dampingRatio === undefined ? {} : { dampingRatio: change.dampingRatio }),
+  });
 
 const isTurning = (
   source: Source,
@@ -64,7 +48,7 @@ export function presentSpeedRpm(source: Source): number | undefined {
 }
 
 /** The sources with the speeds tried: a tried speed is one speed, whatever range it had. */
-export const changedSources = (sources: readonly Source[], change: TriedChange): Source[] =>
+export const triedSources = (sources: readonly Source[], change: TriedChange): Source[] =>
   sources.map((source, index) => {
     const speedRpm = change.speedsRpm[index];
     return speedRpm === undefined || !isTurning(source) ? source : { ...source, speedRpm };

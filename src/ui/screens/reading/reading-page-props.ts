@@ -1,0 +1,9 @@
+import type { ReadingUnits } from './reading-units.ts';
+import type { ReadingLinks, ReadingUseCases } from './reading-use-cases.ts';
+
+export interface ReadingPageProps {
+  readonly id: string;
+  readonly cases: ReadingUseCases;
+  readonly links: ReadingLinks;
+  readonly units: ReadingUnits;
+}
