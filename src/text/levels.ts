@@ -13,7 +13,7 @@ const CRITERIA: Readonly<Record<Criterion, string>> = {
   'iso-10137': 'ISO 10137, people in buildings',
   'en-1990': 'EN 1990, footbridge comfort',
   hivoss: 'HIVOSS, footbridge comfort classes',
-  setra: 'Setra, footbridge comfort',
+  setra: 'Sétra, footbridge comfort',
   'aisc-dg11': 'AISC design guide 11, floors',
 };
 export const criterionName = (criterion: Criterion): string => CRITERIA[criterion];

@@ -39,7 +39,13 @@ const KNOWN: Readonly<Record<KnownBy, string>> = {
 };
 export const knownByName = (knownBy: KnownBy): string => KNOWN[knownBy];
 
-const timesSpeed = (order: number): string => `${Number(order.toFixed(2))} times`;
+const TIMES: Readonly<Record<string, string>> = {
+  '0.5': 'half',
+  '2': 'twice',
+  '3': 'three times',
+  '4': 'four times',
+};
+const timesSpeed = (order: number): string => TIMES[order] ?? `${Number(order.toFixed(2))} times`;
 
 function footfallName(forcing: Forcing): string {
   const activity = activityWord(forcing.activity ?? 'walking');
@@ -57,15 +63,13 @@ export function forcingName(forcing: Forcing): string {
     case 'shaft':
       return `the running speed of ${of}`;
     case 'shaft-order':
-      return forcing.order < 1
-        ? `the half order of ${of} (${timesSpeed(forcing.order)} its speed)`
-        : `${timesSpeed(forcing.order)} the speed of ${of}`;
+      return `${timesSpeed(forcing.order)} the running speed of ${of}`;
     case 'blade-pass':
-      return `the blade pass of ${of}`;
+      return `the blade-pass frequency of ${of}`;
     case 'gear-mesh':
-      return `the gear mesh of ${of}`;
+      return `the gear-mesh frequency of ${of}`;
     case 'firing':
-      return `the firing order of ${of}`;
+      return `the firing frequency of ${of}`;
     case 'bearing-outer':
       return `the outer-race frequency of the bearing of ${of}`;
     case 'bearing-inner':

@@ -132,10 +132,10 @@ describe('forcings in words', () => {
     expect(
       names({ name: 'Pump A', kind: 'machine', speedRpm: 1450, orders: [0.5, 1, 2], bladeCount: 6 }),
     ).toEqual([
-      'the half order of Pump A (0.5 times its speed)',
+      'half the running speed of Pump A',
       'the running speed of Pump A',
-      '2 times the speed of Pump A',
-      'the blade pass of Pump A',
+      'twice the running speed of Pump A',
+      'the blade-pass frequency of Pump A',
     ]);
     expect(names({ name: 'crowd', kind: 'footfall', activity: 'sway' })).toEqual([
       'the sway of people from side to side',
@@ -153,7 +153,7 @@ describe('forcings in words', () => {
     );
     expect(foldedForcings(list, 60).map(foldedForcingSentence)).toEqual([
       'The running speed of blower lies above what this phone samples: it would show at 0.83 Hz, next to zero, where its size cannot be read.',
-      'The blade pass of blower lies above what this phone samples: it would show at 4.2 Hz.',
+      'The blade-pass frequency of blower lies above what this phone samples: it would show at 4.2 Hz.',
     ]);
   });
   it('tell the wind that sheds vortices at a mode', () => {

@@ -21,6 +21,8 @@ export interface Separation {
   readonly nearestRatio: number;
   readonly amplification: { readonly kind: AmplificationKind; readonly interval: Interval };
   readonly verdict: Verdict;
+  /** Where the fold of the mode is undecided: the verdict if what is seen is no folded image. */
+  readonly atFaceValue?: Verdict;
   /** True when the build-up was limited by the cycles there are. */
   readonly buildUpLimited?: boolean;
   /** True when a mode found at rest is held against a running machine (widened by the model uncertainty). */

@@ -154,6 +154,9 @@ export function separationOf(
     nearestRatio: nearest.nearestRatio,
     amplification: { kind, interval },
     verdict: verdict === 'apart' && !seen ? 'blind' : verdict,
+    ...(mode.fold.verdict === 'undecided'
+      ? { atFaceValue: separationOf(modeIndex, forcingIndex, forcing, atFaceValue(context)).verdict }
+      : {}),
     ...(interval[1] < steadyHigh * BUILD_UP_NOTICED_SHARE ? { buildUpLimited: true } : {}),
     ...(stopped ? { stoppedAgainstRunning: true } : {}),
     ...(forcing.wind ? { wind: windOf(forcing.wind, nearest) } : {}),
@@ -170,6 +173,15 @@ function windOf(wind: NonNullable<Forcing['wind']>, { modeHz, damping }: Candida
     scrutonNumber(mass, logDecrement(dampingRatio), wind.widthM);
   const scrutonRatio: Interval = [scruton(damping[0]), scruton(damping[1])];
   return { criticalSpeedMps, scrutonRatio };
+}
+
+/** The same reading if no mode of undecided fold is a folded image. */
+export function atFaceValue<Context extends Pick<SeparationContext, 'analysis'>>(context: Context): Context {
+  const modes = context.analysis.modes.map((mode): Mode => {
+    if (mode.fold.verdict !== 'undecided') return mode;
+    return { ...mode, fold: { verdict: 'direct', candidatesHz: [mode.frequencyHz] } };
+  });
+  return { ...context, analysis: { ...context.analysis, modes } };
 }
 
 /** A build-up that lacks less than 2 % of the steady value is not worth a word. Our own bound. */

@@ -16,11 +16,11 @@ export interface SpecialistFacts {
 const PEOPLE: readonly Forcing['sourceKind'][] = ['footfall'];
 const MACHINES: readonly Forcing['sourceKind'][] = ['machine', 'belt', 'mains'];
 
-/** A coincidence that amplifies beyond the stated value, with a source of these kinds. */
+/** A coincidence (at face value, where the fold is undecided) that amplifies beyond the stated value, with a source of these kinds. */
 function isStrongCoincidence(facts: SpecialistFacts, kinds: readonly Forcing['sourceKind'][]): boolean {
   return facts.separations.some(
-    ({ verdict, amplification, forcingIndex }) =>
-      verdict === 'coincident' &&
+    ({ verdict, atFaceValue, amplification, forcingIndex }) =>
+      (atFaceValue ?? verdict) === 'coincident' &&
       amplification.interval[1] > facts.thresholds.specialistAmplificationRatio &&
       kinds.includes((facts.forcings[forcingIndex] as Forcing).sourceKind),
   );

@@ -6,7 +6,7 @@ import type { Forcing } from '../model/source.ts';
 import { dampingForAmplification } from './amplification.ts';
 import { isolationWay } from './isolation.ts';
 import { dampingInterval, frequencyInterval, frequencySpreadRatio } from './mode-intervals.ts';
-import { separationOf } from './separation.ts';
+import { atFaceValue, separationOf } from './separation.ts';
 import { isWorse } from './separations.ts';
 import { speedWay } from './speed-range.ts';
 import { changedAnalysis, type StructuralChange } from './structural-change.ts';
@@ -131,9 +131,17 @@ function dampingWay(pair: Pair, context: WaysOutContext): WayOut | undefined {
   };
 }
 
-/** Ways out of every coincident or close pair, in the order of the separations. */
-export function waysOutOf(context: WaysOutContext): readonly WayOut[] {
-  return context.separations.flatMap((separation, separationIndex) => {
+/**
+ * Ways out of every coincident or close pair, in the order of the separations. Where the fold of a mode is undecided, what is seen is
+ * taken at face value: a change can be planned for nothing else.
+ */
+export function waysOutOf(given: WaysOutContext): readonly WayOut[] {
+  const separations = given.separations.map((separation) => ({
+    ...separation,
+    verdict: separation.atFaceValue ?? separation.verdict,
+  }));
+  const context = atFaceValue({ ...given, separations });
+  return separations.flatMap((separation, separationIndex) => {
     if (separation.verdict !== 'coincident' && separation.verdict !== 'close') return [];
     const pair = pairOf(separationIndex, context);
     const ways = [

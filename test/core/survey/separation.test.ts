@@ -100,6 +100,20 @@ describe('blind', () => {
     expect(against(open, forcingOf([45, 45]))).toMatchObject({ verdict: 'undecided', modeHz: 45 });
   });
 
+  it('is told at face value as well, which ways out and the call for a specialist go by', () => {
+    const open = modeAt(2, 0.01, { fold: { verdict: 'undecided', candidatesHz: [2, 58] } });
+    const walking = { name: 'visitors', kind: 'footfall', activity: 'walking' } as const;
+    const judgement = judge(analysisOf('tap', { modes: [open] }), [walking]);
+    expect(judgement.separations[0]).toMatchObject({ verdict: 'undecided', atFaceValue: 'coincident' });
+    expect(judgement.specialist).toEqual(['coincident-people']);
+    expect(judgement.waysOut.find(({ kind }) => kind === 'stiffness')).toMatchObject({
+      verdictAfter: 'apart',
+    });
+    expect(judgement.trust).toBe('fair');
+    expect(against(open, forcingOf([58, 58]))).toMatchObject({ verdict: 'undecided', atFaceValue: 'blind' });
+    expect(against(modeAt(2, 0.01), forcingOf([2, 2])).atFaceValue).toBeUndefined();
+  });
+
   it('takes the damping of a folded mode at the frequency it is held at', () => {
     const folded = modeAt(15, 0.03, { ...exact, fold: { verdict: 'folded', candidatesHz: [45] } });
     expect(against(folded, forcingOf([45, 45])).amplification.interval[1]).toBeCloseTo(1 / (2 * 0.01), 0);

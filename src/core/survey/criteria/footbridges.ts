@@ -14,7 +14,7 @@ const classes = ['CL1', 'CL2', 'CL3', 'CL4'];
 const comfort = ['maximum comfort', 'mean comfort', 'minimum comfort', 'unacceptable'];
 const limitOnly = (limit: number): Scale => ({ boundaries: [limit], zones: ['within', 'beyond'] });
 
-/** Peak accelerations, m/s². EN 1990 seen on two pages; HIVOSS from memory, .95; Setra vertical and lateral from memory, .85. */
+/** Peak accelerations, m/s². EN 1990 seen on two pages; HIVOSS from memory, .95; Sétra vertical and lateral from memory, .85. */
 export const FOOTBRIDGES: readonly FootbridgeTable[] = [
   {
     criterion: 'en-1990',
@@ -33,7 +33,7 @@ export const FOOTBRIDGES: readonly FootbridgeTable[] = [
   },
   {
     criterion: 'setra',
-    origin: 'Setra 2006',
+    origin: 'Sétra 2006',
     certain: { vertical: false, horizontal: false },
     scale: {
       vertical: { boundaries: [0.5, 1, 2.5], zones: comfort },
