@@ -31,7 +31,7 @@ export function searchRingDowns(input: SearchInput): RingDownSearch | undefined 
 
 function searchFrom(input: SearchInput, start: RingDownSearch, noise: readonly number[]): RingDownSearch {
   const first = withOneMore(input, start, noise) ?? start;
-  const result = search(input, settle(input.signal, first, noise, COARSE), noise);
+  const result = search(input, settle(input, first, noise, COARSE), noise);
   return result.tapCount >= TAP_LIMIT ? result : withTones(input.signal, prune(input, result, noise));
 }
 
@@ -57,8 +57,8 @@ function search(input: SearchInput, start: RingDownSearch, noise: readonly numbe
   for (let step = 0; step < STEP_LIMIT && current.tapCount < TAP_LIMIT; step++) {
     const cost = recordCost(signal, current);
     const larger = withOneMore(input, current, noise);
-    const richer = larger === undefined ? undefined : settle(signal, larger, noise, threshold);
-    const finer = threshold === FINE ? undefined : settle(signal, current, noise, FINE);
+    const richer = larger === undefined ? undefined : settle(input, larger, noise, threshold);
+    const finer = threshold === FINE ? undefined : settle(input, current, noise, FINE);
     const richerCost = richer === undefined ? Infinity : recordCost(signal, richer);
     const finerCost = finer === undefined ? Infinity : recordCost(signal, finer);
     if (finer !== undefined && finerCost <= Math.min(cost, richerCost)) {
@@ -117,7 +117,7 @@ function prune(input: SearchInput, start: RingDownSearch, noise: readonly number
     );
     const best = costs.indexOf(Math.min(...costs));
     if (costs[best]! >= whole) break;
-    current = settle(signal, found(current.decays, segments, fewer[best]!.fit, noise), noise, FINE);
+    current = settle(input, found(current.decays, segments, fewer[best]!.fit, noise), noise, FINE);
   }
   return current;
 }
@@ -132,20 +132,24 @@ function isMeasurable(component: Component, rateHz: number): boolean {
   );
 }
 
+/** Step² times this is the least variance a tap is judged by: the error of coarse rounding goes with the motion. */
+const ROUNDING_SHARE = 1 / 6;
+
 /** Taps and shapes in turn until the taps stay. */
 function settle(
-  signal: DecaySignal,
+  input: SearchInput,
   start: RingDownSearch,
   noise: readonly number[],
   relativeThreshold: number,
 ): RingDownSearch {
+  const { signal, stepMps2 } = input;
   let current = start;
   for (let round = 0; round < SETTLE_LIMIT; round++) {
     const { components, variance } = current.fit;
     const decays = findTaps(
       signal,
       components,
-      variance.map((v) => 1 / v),
+      variance.map((v, a) => 1 / Math.max(v, ROUNDING_SHARE * (stepMps2[a] ?? 0) ** 2)),
       {
         contactS: 0.1,
         threshold: tapThreshold(signal, components.length),
