@@ -11,7 +11,8 @@ const STEPS: Readonly<Record<NextStepKind, string>> = {
   'tap-first': 'Tap it: no reading here looks for modes yet.',
   'read-spot': 'Take a reading at this spot: it has none yet.',
   'repeat-poor': 'Repeat this reading: it is not to be trusted.',
-  'settle-undecided': 'Repeat this reading, with more taps or another phone: its uncertainty leaves the verdict open.',
+  'settle-undecided':
+    'Repeat this reading, with more taps or another phone: its uncertainty leaves the verdict open.',
   'add-spot': 'Add a spot at a quarter or the middle: a mode stands still at its nodes and is missed there.',
   'other-direction': 'Tap in another direction: up and down, along, and across ring differently.',
   'read-running': 'Take a reading with the machine running.',
