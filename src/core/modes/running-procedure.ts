@@ -7,7 +7,7 @@ import { findPeaks, lineSpectrum, type LineSpectrum, type Peak } from './line-se
 import { bandSource, envelopeAlong, envelopeDirection, type BandSource } from './narrow-band.ts';
 import type { ProcedureAnswer } from './procedure-answer.ts';
 import { randomModesBetween } from './running-resonance.ts';
-import { phaseTrack, toneEnvelope, withoutTone } from './tone-envelope.ts';
+import { phaseTrack, toneEnvelope, withoutTone } from '../signal/tone-envelope.ts';
 import { withFamilies } from './tone-family.ts';
 import { BAND_HALF_SHARE, bandNature, type BandNature } from './tone-nature.ts';
 

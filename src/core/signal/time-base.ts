@@ -3,6 +3,8 @@ import { clockLine } from './clock-line.ts';
 import { likelihoodAt, slopeProfile } from './jitter-slope.ts';
 import { countSamples } from './sample-counter.ts';
 import { slowPart } from './drift.ts';
+import { principalDirection } from './linear-algebra.ts';
+import { toneEnvelope, withoutTone } from './tone-envelope.ts';
 import { averagedDensity } from './spectrum.ts';
 import { uniformSignal } from './uniform-grid.ts';
 
@@ -121,21 +123,27 @@ function estimateTrueShare(
     return Float64Array.from(axis, (v, i) => v - (slow[i] as number));
   });
   const total = new Float64Array(SHARES.length);
-  for (const line of strongestLines({ ...base, timeS: base.clockS, accelerationMps2: still })) {
+  let rest: readonly Float64Array[] = still;
+  for (const frequencyHz of strongestLines({ ...base, timeS: base.clockS, accelerationMps2: still })) {
+    const blockS = Math.max(0.6, Math.min(2, 6 / frequencyHz));
     const profile = slopeProfile(
-      { ...base, samples: still[line.axis] as Float64Array },
-      line.frequencyHz,
-      Math.max(0.6, Math.min(2, 6 / line.frequencyHz)),
+      { ...base, samples: principalSamples(rest, base.clockS, frequencyHz, blockS) },
+      frequencyHz,
+      blockS,
       1.1 * rateHz,
     );
     SHARES.forEach((share, i) => {
       total[i] =
         (total[i] as number) +
         Math.max(
-          likelihoodAt(profile, share * line.frequencyHz),
-          likelihoodAt(profile, share * (line.frequencyHz - rateHz)),
+          likelihoodAt(profile, share * frequencyHz),
+          likelihoodAt(profile, share * (frequencyHz - rateHz)),
         );
     });
+    // The next line must not meet this one as structured noise; as fitted, scatter and all.
+    const stampsS = Float64Array.from(base.clockS, (c, i) => c + (base.deviationS[i] as number));
+    const timed = { timeS: stampsS, clockS: base.clockS, accelerationMps2: rest };
+    rest = withoutTone(timed, frequencyHz, profile.bestHz, blockS);
   }
   let best = 0;
   for (let i = 1; i < total.length; i++) if ((total[i] as number) > (total[best] as number)) best = i;
@@ -158,13 +166,36 @@ function refinedShare(total: Float64Array, best: number): number {
   return share < SNAP_SHARE ? 0 : share;
 }
 
-interface Line {
-  readonly axis: number;
-  readonly frequencyHz: number;
+/** Samples along the principal direction of a line: that of its block amplitudes on the clock. */
+function principalSamples(
+  axes: readonly Float64Array[],
+  clockS: Float64Array,
+  frequencyHz: number,
+  blockS: number,
+): Float64Array {
+  const { re, im } = toneEnvelope(
+    { timeS: clockS, clockS, accelerationMps2: axes },
+    frequencyHz,
+    frequencyHz,
+    blockS,
+  );
+  const products = re.map((_, a) =>
+    re.map((__, b) => {
+      let sum = 0;
+      for (let i = 0; i < re[0]!.length; i++) sum += re[a]![i]! * re[b]![i]! + im[a]![i]! * im[b]![i]!;
+      return sum;
+    }),
+  );
+  const direction = principalDirection(products);
+  const out = new Float64Array(clockS.length);
+  axes.forEach((axis, a) => {
+    for (let i = 0; i < out.length; i++) out[i]! += direction[a]! * axis[i]!;
+  });
+  return out;
 }
 
 /** Strongest narrow lines of any axis, apart from each other, on the clock's grid. */
-function strongestLines(signal: Parameters<typeof uniformSignal>[0]): Line[] {
+function strongestLines(signal: Parameters<typeof uniformSignal>[0]): number[] {
   const grid = uniformSignal(signal);
   const density = averagedDensity(grid.accelerationMps2, grid.periodS, Math.round(8 / grid.periodS));
   const found: { axis: number; bin: number; height: number }[] = [];
@@ -184,10 +215,9 @@ function strongestLines(signal: Parameters<typeof uniformSignal>[0]): Line[] {
     if (lines.length >= LINES_USED) break;
     if (lines.every((other) => Math.abs(other.bin - peak.bin) > apart)) lines.push(peak);
   }
-  return lines.map(({ axis, bin }) => ({
-    axis,
-    frequencyHz: centreBin(density.densityPerHz[axis] as Float64Array, bin) * density.stepHz,
-  }));
+  return lines.map(
+    ({ axis, bin }) => centreBin(density.densityPerHz[axis] as Float64Array, bin) * density.stepHz,
+  );
 }
 
 /** Power-weighted centre of a peak and its two neighbours to each side, bins. */

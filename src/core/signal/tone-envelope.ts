@@ -1,4 +1,9 @@
-import type { ConditionedSignal } from '../signal/condition-recording.ts';
+/** Samples with their decided times and the steady clock; see `condition-recording`. */
+export interface TimedSamples {
+  readonly timeS: Float64Array;
+  readonly clockS: Float64Array;
+  readonly accelerationMps2: readonly Float64Array[];
+}
 
 /** Fewest samples in a block: two unknowns per axis and enough left over. */
 const FEWEST_SAMPLES = 6;
@@ -19,7 +24,7 @@ export interface ToneEnvelope {
  * @param signedHz its true signed frequency: the phase advances with it over the true part of the scatter (see `fold`)
  */
 export function toneEnvelope(
-  signal: Pick<ConditionedSignal, 'timeS' | 'clockS' | 'accelerationMps2'>,
+  signal: TimedSamples,
   frequencyHz: number,
   signedHz: number,
   blockS: number,
@@ -75,7 +80,7 @@ export function toneEnvelope(
 
 /** The axes without a line: each block's own cosine and sine taken out. Same conventions as `toneEnvelope`. */
 export function withoutTone(
-  signal: Pick<ConditionedSignal, 'timeS' | 'clockS' | 'accelerationMps2'>,
+  signal: TimedSamples,
   frequencyHz: number,
   signedHz: number,
   blockS: number,
