@@ -78,10 +78,25 @@ export function sourcesSentence(analysis: Analysis, judgement: Judgement): strin
   if (worst && worst.verdict !== 'apart' && worst.verdict !== 'blind')
     return pairSentence(worst, analysis, judgement);
   if (analysis.procedure === 'running') return runningSentence(judgement);
+  return [noneNearSentence(judgement), ...blowSentences(judgement)].filter((part) => part !== '').join(' ');
+}
+
+/** Nothing near: said of the sources that could have been near, with what the recording was blind to. */
+function noneNearSentence(judgement: Judgement): string {
+  const blows = new Set(judgement.impulsive.map(({ source }) => source));
+  if (judgement.forcings.every(({ source }) => blows.has(source))) return '';
   const blind = judgement.unpaired.filter(({ verdict }) => verdict === 'blind').length;
   const none = 'No mode found near any source in this reading';
   return blind === 0 ? `${none}.` : `${none}, and it was blind to ${count(blind, 'forcing', 'forcings')}.`;
 }
+
+/** Sources whose steps meet the strongest mode as single blows. */
+const blowSentences = (judgement: Judgement): string[] =>
+  judgement.impulsive.filter(({ modeIndex }) => modeIndex === 0).map(({ source }) => blowSentence(source));
+
+/** A mode above the range in which steps build up a response. */
+export const blowSentence = (source: string): string =>
+  `Steps of ${source} meet it as single blows that ring out before the next: no resonance verdict applies.`;
 
 function runningSentence(judgement: Judgement): string {
   const first = judgement.toneMatches[0];

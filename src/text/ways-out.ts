@@ -1,3 +1,4 @@
+import type { ModalValues } from '../core/model/guided-pairs.ts';
 import type { Judgement, WayOut, WayOutKind } from '../core/model/judgement.ts';
 import { formatInterval, formatNumber } from './number.ts';
 import { formatFrequency, formatPercent, formatSpeed } from './quantity.ts';
@@ -79,8 +80,22 @@ function sideEffects(way: WayOut, judgement: Judgement): string {
   return nearer + sits;
 }
 
-/** What the change is, what the pair would then be, and what it does to others. */
-export function wayOutSentence(way: WayOut, judgement: Judgement): string {
+/** What a factor means in kilograms or newtons per metre, where an added-mass test gave the modal values. */
+function inUnits(way: WayOut, modal: ModalValues | undefined): string {
+  if (!modal || !way.factor) return '';
+  const [low, high] = way.factor;
+  if (way.kind === 'mass')
+    return ` That is ${formatInterval([(low - 1) * modal.massIntervalKg[0], (high - 1) * modal.massIntervalKg[1]])} kg there.`;
+  if (way.kind !== 'stiffness') return '';
+  const perMm = modal.stiffnessIntervalNPerM.map((value) => value / 1000) as [number, number];
+  return ` That is ${formatInterval([(low - 1) * perMm[0], (high - 1) * perMm[1]])} N/mm more there.`;
+}
+
+/**
+ * What the change is, what the pair would then be, and what it does to others.
+ * @param modal modal mass and stiffness of the spot, where an added-mass test gave them
+ */
+export function wayOutSentence(way: WayOut, judgement: Judgement, modal?: ModalValues): string {
   const practical = way.practical || way.kind === 'speed' ? '' : NOT_PRACTICAL;
-  return `${change(way)}${afterwards(way)}${practical}${sideEffects(way, judgement)}`;
+  return `${change(way)}${inUnits(way, modal)}${afterwards(way)}${practical}${sideEffects(way, judgement)}`;
 }

@@ -203,6 +203,16 @@ describe('the verdict sentence', () => {
       'No mode found near any source in this reading, and it was blind to one forcing.',
     );
   });
+  it('says blows beside the rest', () => {
+    const rail = analysisOf('tap', { modes: [modeAt(14.9, 0.01)] });
+    const judgement = judge(rail, [
+      { name: 'visitors', kind: 'footfall', activity: 'walking' },
+      { name: 'x', kind: 'band', frequencyHz: 25 },
+    ]);
+    expect(verdictSentence(rail, judgement)).toContain(
+      'No mode found near any source in this reading. Steps of visitors meet it as single blows that ring out before the next: no resonance verdict applies.',
+    );
+  });
   it('says undecided, and why when a fold leaves it open', () => {
     const open = analysisOf('tap', {
       modes: [modeAt(15, 0.02, { fold: { verdict: 'undecided', candidatesHz: [15, 45] } })],
@@ -295,6 +305,21 @@ describe('levels and ways out in words', () => {
       .map((way) => wayOutSentence(way, judgement));
     expect(said[0]).toMatch(
       /^Stiffness at the spot times 1\.\d\d to 1\.\d\d brings the mode to 9\.02 Hz\. Then apart, amplified at most 2\.8 times\. But it comes nearer to the fourth harmonic of walking\.$/,
+    );
+    const modal = {
+      massKg: 6,
+      massSdKg: 0.2,
+      massIntervalKg: [5.6, 6.4] as const,
+      stiffnessNPerM: 13e3,
+      stiffnessSdNPerM: 400,
+      stiffnessIntervalNPerM: [12e3, 14e3] as const,
+    };
+    const [stiffer, heavier] = judgement.waysOut.filter(({ separationIndex }) => separationIndex === 0);
+    expect(wayOutSentence(stiffer!, judgement, modal)).toMatch(
+      / That is 5\.6 to 6\.\d N\/mm more there\. Then apart/,
+    );
+    expect(wayOutSentence(heavier!, judgement, modal)).toMatch(
+      / That is 5\.\d to 6\.\d kg there\. Then apart/,
     );
     expect(said[1]).toMatch(
       /^Moving mass at the spot times 1\.\d+ to \d\.\d+ brings the mode down to 5\.27 Hz\. Then apart/,

@@ -78,7 +78,7 @@ describe('guard rail', () => {
     expect(doubtText(judgement.doubts[0]!).name).toBe('Weight of the phone (−3.2 % on a light rail)');
     expect(judgement.cautions).toContain('do-not-lean-on-rail');
     expect(verdictSentence(analysis, judgement)).toBe(
-      'Rings at 14.90 Hz ± 0.03, damping 0.60 % ± 0.06. No mode found near any source in this reading. Trust: good.',
+      'Rings at 14.90 Hz ± 0.03, damping 0.60 % ± 0.06. Steps of visitors meet it as single blows that ring out before the next: no resonance verdict applies. Trust: good.',
     );
   });
 });
