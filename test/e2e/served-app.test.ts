@@ -59,6 +59,16 @@ describe('the built app on our server', () => {
     expect(refused).toBe('frame-src');
   });
 
+  it('gives the analysis worker, which does not inherit the policy of the page, one without any connection', async () => {
+    const root = process.env['THRUMBOOK_DIST'] ?? DIST;
+    const workers = readdirSync(`${root}/assets`).filter(
+      (name) => name.startsWith('worker-') && name.endsWith('.js'),
+    );
+    expect(workers).toHaveLength(1);
+    const { headers } = await fetch(`${app.url}assets/${workers[0]}`);
+    expect(headers.get('content-security-policy')).toBe("default-src 'none'; script-src 'self'");
+  });
+
   it('keeps every file for work without a network, but the icons of the system', async () => {
     const kept = await browser.page.evaluate(async () => {
       const names = await caches.keys();
