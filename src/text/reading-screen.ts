@@ -165,7 +165,7 @@ export const readingText = {
     blindBelow: (frequency: string) => `blind below ${frequency}`,
     noMode: 'No mode found here. That does not mean there is none.',
     noModeRunning: 'Tones come from the machine. Stop it and tap to find modes.',
-    foldDetail: 'or another: folded?',
+    foldDetail: 'folded?',
     foldedDetail: (frequency: string) => `seen at ${frequency}`,
     caption:
       'Left: what the structure does; the longer the point, the more it amplifies; the band across the rails is bandwidth, fading as the frequency is unsure. Right: what shakes it. Tap a mark to see the pair.',

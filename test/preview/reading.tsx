@@ -18,7 +18,12 @@ render(
       id={id}
       cases={cases}
       links={noLinks}
-      units={{ frequency: 'Hz', acceleration: 'm/s²', velocity: 'mm/s', displacement: 'µm' }}
+      units={{
+        frequency: asked.get('unit') === 'rpm' ? 'r/min' : 'Hz',
+        acceleration: 'm/s²',
+        velocity: 'mm/s',
+        displacement: 'µm',
+      }}
     />
   </main>,
   document.getElementById('app')!,

@@ -22,8 +22,10 @@ export interface LadderSize {
   readonly textPx: number;
 }
 
-/** Rails must leave room for four digits; the rest are proportions tried on 302, 328, 400 and 560 px (our own, 2026-12). */
-const RAIL_GAP_TEXTS = 3;
+/** Room between the rails beside the digits of a number. */
+const RAIL_MARGIN_TEXTS = 1.25;
+/** Rails leave room for the four digits of a speed, or for 7.42; the rest are proportions tried on 302, 328, 400 and 560 px (our own, 2026-12). */
+const RAIL_LEAST_TEXTS = 3;
 const LANE_TEXTS = 0.75;
 const LANE_GAP_PX = 2.5;
 /** The side of the modes never gets less of the width than this, the labels of the forcings never less than that. */
@@ -35,15 +37,20 @@ export const ladderColumns = (
   content: LadderContent,
   size: LadderSize,
   laneCount: number,
+  widestNumber: string,
   measure: MeasureText,
 ): LadderColumns => {
   const { widthPx, textPx } = size;
   const labels = [...content.forcings.map((f) => f.label), ...content.tones.map((t) => t.label)];
   const hasLeft = content.modes.length > 0 || content.seenHz !== undefined;
+  const railGapPx = Math.max(
+    textPx * RAIL_LEAST_TEXTS,
+    measure(widestNumber, textPx * 0.92) + textPx * RAIL_MARGIN_TEXTS,
+  );
   const markSizePx = textPx * 1.1;
   const laneWidthPx = Math.max(7, textPx * LANE_TEXTS);
   const laneStepPx = laneWidthPx + LANE_GAP_PX;
-  const fixedPx = 4 + markSizePx + 5 + laneCount * laneStepPx + textPx * 0.8 + 6 + textPx * RAIL_GAP_TEXTS;
+  const fixedPx = 4 + markSizePx + 5 + laneCount * laneStepPx + textPx * 0.8 + 6 + railGapPx;
   const leftPx = widthPx * (hasLeft ? LEFT_SHARE : 0.12);
   const widestPx = Math.max(0, ...labels.map((label) => measure(label, textPx))) + 2;
   const mostPx = Math.min(widthPx * LABEL_MOST_SHARE, widthPx - leftPx - fixedPx);
@@ -53,7 +60,7 @@ export const ladderColumns = (
   const lanesPx = markPx - laneCount * laneStepPx - textPx * 0.8;
   const rightRailPx = lanesPx - 6;
   return {
-    leftRailPx: rightRailPx - textPx * RAIL_GAP_TEXTS,
+    leftRailPx: rightRailPx - railGapPx,
     rightRailPx,
     lanesPx,
     laneWidthPx,

@@ -37,7 +37,10 @@ export const ladderPicture = (content: LadderContent, view: LadderView): LadderP
   const wholeHz = ladderRangeHz(content);
   const axis = logAxis(view.rangeHz ?? wholeHz, topPx, bottomPx);
   const lanes = forcingLanes(content, logAxis(wholeHz, topPx, bottomPx));
-  const columns = ladderColumns(content, size, Math.max(1, ...lanes.map((lane) => lane + 1)), measure);
+  const laneCount = Math.max(1, ...lanes.map((lane) => lane + 1));
+  // by the whole range, so that the rails stand still while the view is zoomed
+  const widestNumber = String(Math.round(wholeHz[1] * shownPerHz));
+  const columns = ladderColumns(content, size, laneCount, widestNumber, measure);
   return {
     size,
     axis,

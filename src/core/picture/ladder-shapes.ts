@@ -183,14 +183,14 @@ const amplificationShapes = ({ left, size, axis, words }: LadderPicture): SvgSha
   ];
 };
 
-const headShapes = ({ words, columns, size, axis, left }: LadderPicture): SvgShape[] => {
+const headShapes = ({ words, columns, size, left }: LadderPicture): SvgShape[] => {
   const yPx = size.textPx;
   const middle = (columns.leftRailPx + columns.rightRailPx) / 2;
   const hasLeft = left.modes.length > 0 || left.notes.length > 0 || left.blind.length > 0;
   return [
     ...(hasLeft ? [text('ladder-head', words.structure, 6, yPx, size.textPx * 0.92)] : []),
     text('ladder-head', words.sources, columns.lanesPx, yPx, size.textPx * 0.92),
-    text('ladder-head', words.unit, middle, axis.bottomPx + size.textPx * 1.3, size.textPx * 0.92, 'middle'),
+    text('ladder-head', words.unit, middle, yPx, size.textPx * 0.92, 'middle'),
   ];
 };
 

@@ -17,7 +17,7 @@ import { TraceSection } from './trace-section.tsx';
 function usePictures(view: ReadingView, cases: ReadingUseCases): Outcome<AnalysisResult> | undefined {
   const [outcome, setOutcome] = useState<Outcome<AnalysisResult> | undefined>();
   const [error, setError] = useState<unknown>();
-  const { settings } = currentAnalysis(view);
+  const { settings, version } = currentAnalysis(view);
   const id = view.reading._id;
   useEffect(() => {
     const stop = new AbortController();
@@ -31,7 +31,7 @@ function usePictures(view: ReadingView, cases: ReadingUseCases): Outcome<Analysi
     };
     void work();
     return () => stop.abort();
-  }, [id, cases, settings.procedure, settings.timing]);
+  }, [id, cases, settings.procedure, settings.timing, version]);
   if (error !== undefined) throw error;
   return outcome;
 }
