@@ -316,7 +316,7 @@ describe('levels and ways out in words', () => {
     };
     const [stiffer, heavier] = judgement.waysOut.filter(({ separationIndex }) => separationIndex === 0);
     expect(wayOutSentence(stiffer!, judgement, modal)).toMatch(
-      / That is 5\.6 to 6\.\d N\/mm more there\. Then apart/,
+      / That is 5\.7 to 6\.8 N\/mm more there\. Then apart/,
     );
     expect(wayOutSentence(heavier!, judgement, modal)).toMatch(
       / That is 5\.\d to 6\.\d kg there\. Then apart/,
