@@ -26,6 +26,8 @@ export interface Segment {
 export interface DecaySignal {
   readonly timeS: Float64Array;
   readonly y: readonly Float64Array[];
+  /** Time by which the phases run, s, where it differs from the decay's: a folded mode follows the stamps' scatter faster. */
+  readonly phaseTimeS?: Float64Array;
   /** Optional weight per sample and axis (1 = full); shared by all axes when one array is given. */
   readonly weights?: readonly Float64Array[];
 }
@@ -86,15 +88,16 @@ function segmentMoments(
   const cross = new Float64Array(axes.length * q);
   const square = new Float64Array(axes.length);
   const column = new Float64Array(q);
-  const { timeS } = signal;
+  const { timeS, phaseTimeS = timeS } = signal;
   const origin = timeS[segment.start]!;
   const span = Math.max(timeS[segment.end - 1]! - origin, 1e-9);
   for (let i = segment.start; i < segment.end; i++) {
     const tau = timeS[i]! - origin;
+    const phaseTau = phaseTimeS[i]! - origin;
     for (let k = 0; k < m; k++) {
       const component = components[k]!;
       const envelope = component.decayPerS === 0 ? 1 : Math.exp(-component.decayPerS * tau);
-      const phase = component.angularRadPerS * tau;
+      const phase = component.angularRadPerS * phaseTau;
       const c = envelope * Math.cos(phase);
       const s = envelope * Math.sin(phase);
       column[2 * k] = c;

@@ -20,11 +20,11 @@ export function strongestOnsets(
   angularRadPerS: number,
   axisWeights: readonly number[],
 ): FirstDecay[] {
-  const { timeS, y } = signal;
+  const { timeS, y, phaseTimeS = timeS } = signal;
   const n = timeS.length;
   const turn = new Float64Array(2 * n);
   for (let i = 0; i + 1 < n; i++) {
-    const phase = angularRadPerS * (timeS[i + 1]! - timeS[i]!);
+    const phase = angularRadPerS * (phaseTimeS[i + 1]! - phaseTimeS[i]!);
     turn[2 * i] = Math.cos(phase);
     turn[2 * i + 1] = -Math.sin(phase);
   }

@@ -121,7 +121,7 @@ const STEADY_STRETCHES = 16;
 const STEADY_COHERENCE = 0.93;
 
 function isSteady(signal: DecaySignal, left: readonly Float64Array[], component: Component): boolean {
-  const { timeS } = signal;
+  const { timeS, phaseTimeS = timeS } = signal;
   const n = timeS.length;
   if (component.decayPerS * (timeS[n - 1]! - timeS[0]!) > STEADY_FALL) return false;
   let together = 0;
@@ -132,7 +132,7 @@ function isSteady(signal: DecaySignal, left: readonly Float64Array[], component:
       const [first, end] = [b, b + 1].map((k) => Math.floor((k * n) / STEADY_STRETCHES)) as [number, number];
       let [re, im] = [0, 0];
       for (let i = first; i < end; i++) {
-        const phase = component.angularRadPerS * timeS[i]!;
+        const phase = component.angularRadPerS * phaseTimeS[i]!;
         re += y[i]! * Math.cos(phase);
         im += y[i]! * Math.sin(phase);
       }

@@ -6,12 +6,13 @@ export function residuals(signal: DecaySignal, segments: readonly Segment[], fit
   const left = signal.y.map((y) => new Float64Array(y.length));
   const m = fit.components.length;
   const column = new Float64Array(2 * m + 2);
+  const { phaseTimeS = signal.timeS } = signal;
   segments.forEach((segment, index) => {
     const { coefficients } = fit.evaluation.segments[index]!;
     const origin = signal.timeS[segment.start]!;
     const span = Math.max(signal.timeS[segment.end - 1]! - origin, 1e-9);
     for (let i = segment.start; i < segment.end; i++) {
-      fillColumns(fit.components, signal.timeS[i]! - origin, span, column);
+      fillColumns(fit.components, signal.timeS[i]! - origin, phaseTimeS[i]! - origin, span, column);
       for (let a = 0; a < left.length; a++) {
         const c = coefficients[a]!;
         let value = 0;
@@ -26,6 +27,7 @@ export function residuals(signal: DecaySignal, segments: readonly Segment[], fit
 function fillColumns(
   components: readonly Component[],
   tau: number,
+  phaseTau: number,
   span: number,
   column: Float64Array,
 ): void {
@@ -33,8 +35,8 @@ function fillColumns(
   for (let k = 0; k < m; k++) {
     const { angularRadPerS, decayPerS } = components[k]!;
     const envelope = Math.exp(-decayPerS * tau);
-    column[2 * k] = envelope * Math.cos(angularRadPerS * tau);
-    column[2 * k + 1] = envelope * Math.sin(angularRadPerS * tau);
+    column[2 * k] = envelope * Math.cos(angularRadPerS * phaseTau);
+    column[2 * k + 1] = envelope * Math.sin(angularRadPerS * phaseTau);
   }
   column[2 * m] = 1;
   column[2 * m + 1] = tau / span - 0.5;
@@ -54,13 +56,14 @@ export function decayAlone(
   const { coefficients } = fit.evaluation.segments[index]!;
   const { angularRadPerS, decayPerS } = fit.components[k]!;
   const origin = signal.timeS[start]!;
+  const { phaseTimeS = signal.timeS } = signal;
   const along = (values: readonly number[]): number =>
     values.reduce((sum, v, a) => sum + v * direction[a]!, 0);
   const onCosine = along(coefficients.map((c) => c[2 * k]!));
   const onSine = along(coefficients.map((c) => c[2 * k + 1]!));
   return Float64Array.from({ length: end - start }, (_, i) => {
     const tau = signal.timeS[start + i]! - origin;
-    const phase = angularRadPerS * tau;
+    const phase = angularRadPerS * (phaseTimeS[start + i]! - origin);
     const model = Math.exp(-decayPerS * tau) * (onCosine * Math.cos(phase) + onSine * Math.sin(phase));
     return model + along(left.map((l) => l[start + i]!));
   });

@@ -49,7 +49,7 @@ export function fitRounded(
     const updated = signal.y.map((y, a) =>
       fillWorking(y, left[a]!, segments, stepMps2[a] ?? 0, Math.sqrt(noise[a]!), working[a]!, weights[a]!),
     );
-    const weighted: DecaySignal = { timeS: signal.timeS, y: working, weights };
+    const weighted: DecaySignal = { ...signal, y: working, weights };
     const next = fitDecays(weighted, segments, fit.components, noise, 1);
     const columns = linearColumnCount(fit.components.length) * segments.length;
     const freedom = fit.sampleCount / Math.max(fit.sampleCount - columns, 1);
@@ -61,7 +61,7 @@ export function fitRounded(
     );
     if (settled && i > 1) break;
   }
-  return withNoise({ timeS: signal.timeS, y: working, weights }, segments, fit, noise);
+  return withNoise({ ...signal, y: working, weights }, segments, fit, noise);
 }
 
 /** The fit's curvature at the noise that maximum likelihood gives, not at the working residual's. */

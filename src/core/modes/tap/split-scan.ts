@@ -44,17 +44,19 @@ function segmentColumns(
 ): Float64Array {
   const n = segment.end - segment.start;
   const columns = new Float64Array(n * p);
+  const { phaseTimeS = signal.timeS } = signal;
   const origin = signal.timeS[segment.start]!;
   const span = Math.max(signal.timeS[segment.end - 1]! - origin, 1e-9);
   const m = components.length;
   for (let i = 0; i < n; i++) {
     const tau = signal.timeS[segment.start + i]! - origin;
+    const phaseTau = phaseTimeS[segment.start + i]! - origin;
     const row = i * p;
     for (let k = 0; k < m; k++) {
       const component = components[k]!;
       const envelope = component.decayPerS === 0 ? 1 : Math.exp(-component.decayPerS * tau);
-      columns[row + 2 * k] = envelope * Math.cos(component.angularRadPerS * tau);
-      columns[row + 2 * k + 1] = envelope * Math.sin(component.angularRadPerS * tau);
+      columns[row + 2 * k] = envelope * Math.cos(component.angularRadPerS * phaseTau);
+      columns[row + 2 * k + 1] = envelope * Math.sin(component.angularRadPerS * phaseTau);
     }
     columns[row + 2 * m] = 1;
     columns[row + 2 * m + 1] = tau / span - 0.5;

@@ -66,6 +66,7 @@ function addSegmentPower(
 ): number {
   const origin = signal.timeS[segment.start]!;
   const samples = new Float64Array(size);
+  const { phaseTimeS = signal.timeS } = signal;
   let energy = 0;
   for (let i = segment.start; i < segment.end; i++)
     energy += Math.exp(-2 * decayPerS * (signal.timeS[i]! - origin));
@@ -75,7 +76,7 @@ function addSegmentPower(
     for (let i = segment.start; i < segment.end; i++) {
       const tau = signal.timeS[i]! - origin;
       // A sample between two grid points is shared by them, which keeps its phase to first order.
-      const place = tau * rateHz;
+      const place = Math.max(phaseTimeS[i]! - origin, 0) * rateHz;
       const k = Math.floor(place);
       const share = place - k;
       const value = y[a]![i]! * Math.exp(-decayPerS * tau);

@@ -4,7 +4,7 @@ import { failure, success, type Outcome } from '../../model/outcome.ts';
 import type { RingDown } from '../../model/pictures.ts';
 import type { ConditionedSignal } from '../../signal/condition-recording.ts';
 import { median } from '../../signal/sample-counter.ts';
-import { foldOfMode, foldOfTone } from '../fold.ts';
+import { foldOfMode, foldOfTone, signedCandidatesHz } from '../fold.ts';
 import type { ProcedureAnswer } from '../procedure-answer.ts';
 import { linearColumnCount, parameterIndex } from './decay-model.ts';
 import type { DecaySignal } from './decay-model.ts';
@@ -13,7 +13,13 @@ import type { FreeDecay } from './find-taps.ts';
 import type { DecayFit } from './fit-decays.ts';
 import { halfPowerOfDecay } from './half-power.ts';
 import { logDecrementOfDecay } from './log-decrement.ts';
-import { directionOf, amplitudeAtStart, modeEstimate, naturalFrequencyHz } from './mode-estimate.ts';
+import {
+  dampingRatioOf,
+  directionOf,
+  amplitudeAtStart,
+  modeEstimate,
+  naturalFrequencyHz,
+} from './mode-estimate.ts';
 import type { ModeEstimate } from './mode-estimate.ts';
 import { decayAlone, residuals } from './modelled-signal.ts';
 import { fitRounded, isStepCoarse } from './rounding-likelihood.ts';
@@ -30,8 +36,8 @@ const LEAST_AMPLITUDE_SDS = 3;
 const LARGEST_DAMPING_SPREAD = 0.3;
 /** ...its frequency to this one... */
 const LARGEST_FREQUENCY_SPREAD = 0.02;
-/** Above this damping nothing rings that a tap test could read: a tenth is left after two and a half cycles. */
-const LARGEST_DAMPING_RATIO = 0.15;
+/** Above this damping nothing rings that a tap test could read: a tenth is left after two cycles. */
+const LARGEST_DAMPING_RATIO = 0.2;
 /** Two lines that cancel each other have amplitudes beyond anything measured. */
 const LARGEST_AMPLITUDE_FACTOR = 3;
 /** Share of the motion under the ring-downs that the fit must explain; below, it is not free decay. */
@@ -53,10 +59,45 @@ export function tapProcedure(
   const largest = Math.max(...signal.y.map((y) => y.reduce((m, v) => Math.max(m, Math.abs(v)), 0)));
   if (facts.clippedCount > signal.timeS.length / 4 && largest > LEAST_FULL_SCALE_MPS2)
     return failure('clipped-throughout', { clippedCount: facts.clippedCount });
-  const search = searchRingDowns({ signal, rateHz: facts.rateHz, stepMps2: facts.stepMps2 });
+  const input = { rateHz: facts.rateHz, stepMps2: facts.stepMps2 };
+  const search = searchRingDowns({ ...input, signal });
   if (search === undefined) return failure('no-motion');
-  if (search.tapCount >= TAP_LIMIT) return failure('no-decay', { tapCount: search.tapCount });
-  return answerOf(conditioned, signal, search);
+  const unfolded = unfoldedSignal(conditioned, signal, search);
+  if (unfolded === undefined) return answerOf(conditioned, signal, search);
+  const again = searchRingDowns({ ...input, signal: unfolded });
+  return again === undefined ? answerOf(conditioned, signal, search) : answerOf(conditioned, unfolded, again);
+}
+
+/**
+ * The record with phases that follow the stamps' scatter as the strongest line's true frequency does, where that is
+ * folded: on its apparent frequency alone, true scatter would look like strong noise.
+ */
+function unfoldedSignal(
+  conditioned: ConditionedSignal,
+  signal: DecaySignal,
+  search: RingDownSearch,
+): DecaySignal | undefined {
+  const { fit, fitted } = search;
+  const energies = fit.components.map((c, k) =>
+    c.kind === 'mode' ? Math.max(...fitted.map((_, s) => amplitudeAtStart(fit, s, k))) ** 2 / c.decayPerS : 0,
+  );
+  const k = energies.indexOf(Math.max(...energies));
+  const component = fit.components[k]!;
+  if (component.kind !== 'mode') return undefined;
+  const frequencyHz = component.angularRadPerS / (2 * Math.PI);
+  const fold = foldOfMode(
+    conditioned,
+    { frequencyHz, dampingRatio: dampingRatioOf(component), direction: directionOf(fit, k) },
+    fitted.map((d) => signal.timeS[d.onset ?? d.start]!),
+  );
+  if (fold.verdict !== 'folded') return undefined;
+  const trueHz = signedCandidatesHz(frequencyHz, conditioned.facts.rateHz).find(
+    (hz) => Math.abs(Math.abs(hz) - fold.candidatesHz[0]!) < 1e-6 * Math.abs(hz),
+  );
+  if (trueHz === undefined) return undefined;
+  const { clockS, deviationS } = conditioned;
+  const pace = trueHz / frequencyHz;
+  return { ...signal, timeS: clockS, phaseTimeS: clockS.map((t, i) => t + pace * deviationS[i]!) };
 }
 
 /** Sensor values about their median: the slow part stays, for the fit's own constant and slope to take up. */
@@ -74,6 +115,7 @@ function answerOf(
   signal: DecaySignal,
   search: RingDownSearch,
 ): Outcome<ProcedureAnswer> {
+  if (search.tapCount >= TAP_LIMIT) return failure('no-decay', { tapCount: search.tapCount });
   const decays = search.fitted;
   const isRounded = isStepCoarse(search.fit.variance, conditioned.facts.stepMps2);
   const fit = isRounded ? fitRounded(signal, decays, search.fit, conditioned.facts.stepMps2) : search.fit;
