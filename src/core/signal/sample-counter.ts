@@ -12,6 +12,8 @@ const LOOK_AHEAD_SAMPLES = 32;
 const LOSS_COST_PERIODS = 2;
 /** Lateness of one sample counts at most this much, periods: delivery has a long tail. */
 const LATENESS_LIMIT_PERIODS = 1.5;
+/** The count starts at a calm stretch among this many first samples. */
+const START_SEARCH_SAMPLES = 300;
 /** Memory of the running lateness, samples. */
 const LATENESS_MEMORY_SAMPLES = 16;
 /** Samples over which the first estimate of the period is taken, and the share of such means that must lie closest together. */
@@ -89,7 +91,51 @@ function periodFrom(timeS: Float64Array, count: Int32Array): number {
   return cross / square;
 }
 
+/** Counts forwards and backwards from the calmest stretch near the start, where no loss can hide. */
 function countWith(timeS: Float64Array, periodS: number): Omit<SampleCount, 'periodS'> {
+  const n = timeS.length;
+  const start = calmStart(timeS);
+  const forward = countFrom(timeS.subarray(start), periodS);
+  const mirrored = timeS
+    .subarray(0, Math.min(n, start + LOOK_AHEAD_SAMPLES))
+    .slice()
+    .reverse();
+  const backward = countFrom(
+    mirrored.map((t) => -t),
+    periodS,
+  );
+  const last = mirrored.length - 1;
+  const total = (backward.count[last] as number) - (backward.count[last - start] as number);
+  const count = new Int32Array(n);
+  for (let i = 0; i < start; i++)
+    count[i] = (backward.count[last] as number) - (backward.count[last - i] as number);
+  for (let i = start; i < n; i++) count[i] = total + (forward.count[i - start] as number);
+  const early = backward.losses
+    .map(({ index, lostCount }) => ({ index: last - index + 1, lostCount }))
+    .filter(({ index }) => index <= start)
+    .reverse();
+  const later = forward.losses.map(({ index, lostCount }) => ({ index: index + start, lostCount }));
+  return { count, losses: [...early, ...later] };
+}
+
+/** Start of the window of samples, among the first few hundred, whose longest interval is shortest. */
+function calmStart(timeS: Float64Array): number {
+  const latest = Math.min(START_SEARCH_SAMPLES, timeS.length - LOOK_AHEAD_SAMPLES - 1);
+  let best = 0;
+  let least = Infinity;
+  for (let s = 0; s <= latest; s += 4) {
+    let longest = 0;
+    for (let i = s + 1; i < s + LOOK_AHEAD_SAMPLES; i++)
+      longest = Math.max(longest, (timeS[i] as number) - (timeS[i - 1] as number));
+    if (longest < least) {
+      least = longest;
+      best = s;
+    }
+  }
+  return best;
+}
+
+function countFrom(timeS: Float64Array, periodS: number): Omit<SampleCount, 'periodS'> {
   const n = timeS.length;
   const count = new Int32Array(n);
   const losses: { index: number; lostCount: number }[] = [];

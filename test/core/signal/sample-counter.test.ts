@@ -37,6 +37,17 @@ describe('countSamples', () => {
     expect(counted.losses.reduce((sum, l) => sum + l.lostCount, 0)).toBe(lost.length);
   });
 
+  it.each([3, 7, 12, 20])('finds a loss after the first %i samples', (at) => {
+    const lost = [at, at + 1, at + 70];
+    const { kept, timeS } = stamps({ n: 1200, periodS: 1 / 60, scatterS: 0.001, lost, seed: at });
+    const counted = countSamples(timeS);
+    expect([...counted.count].map((k, i) => k - kept[i]!).filter((d) => d !== 0)).toEqual([]);
+    expect(counted.losses.map((l) => [l.index, l.lostCount])).toEqual([
+      [at, 2],
+      [at + 68, 1],
+    ]);
+  });
+
   it('does not take a late burst for a loss', () => {
     // Five samples held up and delivered together: nothing is missing afterwards.
     const timeS = Float64Array.from(
