@@ -14,7 +14,15 @@ const tint = (opacity: number) => ({ fill: INK, opacity });
 
 /** One ink on paper: verdicts are told by shape and word, bars by fill, dash and hatching. Also safe on a copying machine. */
 const PRINT_PAINT: SvgPaint = {
-  'ladder-text': { fill: INK, 'font-family': 'sans-serif' },
+  // a halo keeps words legible over hatching and lines
+  'ladder-text': {
+    fill: INK,
+    'font-family': 'sans-serif',
+    stroke: 'Canvas',
+    'stroke-width': 3,
+    'stroke-linejoin': 'round',
+    'paint-order': 'stroke',
+  },
   'ladder-title': { 'font-weight': 650 },
   'ladder-hatch': line(0.7, { opacity: 0.5 }),
   'ladder-between': { fill: 'Canvas' },
