@@ -48,7 +48,7 @@ async function load(): Promise<void> {
 const open = (phases: readonly string[]): Promise<SessionState> =>
   page.evaluate(
     async (wanted) => {
-      const state = await window.field.session({ durationS: 2.5, startBy: 'hand' }, wanted);
+      const state = await window.field.session({ durationS: 1.8, startBy: 'hand' }, wanted);
       return JSON.parse(JSON.stringify(state)) as typeof state;
     },
     [...phases],
@@ -83,7 +83,7 @@ async function recording(): Promise<void> {
   await load();
   await open(['settling']);
   await start();
-  await pause(1200);
+  await pause(900);
 }
 
 describe('capture in Chromium, page out of sight', () => {
@@ -102,7 +102,7 @@ describe('capture in Chromium, page out of sight', () => {
       await window.field.session({ durationS: 60, startBy: 'hand', practice: '?rig=handrail' }, ['settling']);
       window.field.capture().start();
     });
-    await pause(1200);
+    await pause(900);
     return tab;
   }
 
@@ -119,7 +119,7 @@ describe('capture in Chromium, page out of sight', () => {
       reason: 'hidden',
       journalId: expect.stringMatching(/^\w{26}$/),
     });
-    expect('recording' in cut && cut.recording).toBeGreaterThan(50);
+    expect('recording' in cut && cut.recording).toBeGreaterThan(35);
     await other.close();
     await tab.close();
   });
@@ -137,7 +137,7 @@ describe('capture in Chromium, page out of sight', () => {
       return { phase: state.phase, count: state.recording?.timeS.length ?? 0, journaled: kept.timeS.length };
     });
     expect(phase).toBe('cut');
-    expect(count).toBeGreaterThan(50);
+    expect(count).toBeGreaterThan(35);
     expect(journaled).toBe(count);
     await tab.close();
   });
@@ -152,8 +152,8 @@ describe('capture in Chromium', () => {
     const done = await until(['done', 'cut']);
     expect(done.phase).toBe('done');
     expect(done.sensor).toMatchObject({ source: 'accelerometer', gravityReads: 'up', requestedRateHz: 60 });
-    expect(done.sampleCount).toBeGreaterThan(120);
-    expect(done.durationS).toBeGreaterThan(2.4);
+    expect(done.sampleCount).toBeGreaterThan(85);
+    expect(done.durationS).toBeGreaterThan(1.7);
     expect(done.steps.length).toBeLessThan(6);
   });
 
@@ -165,7 +165,7 @@ describe('capture in Chromium', () => {
     await start();
     const done = await until(['done', 'cut']);
     expect(done.sensor).toMatchObject({ source: 'devicemotion', claimedIntervalMs: 16 });
-    expect(done.sampleCount).toBeGreaterThan(120);
+    expect(done.sampleCount).toBeGreaterThan(85);
   });
 
   it('says "no sensor" by each path: an error of the Generic Sensor, one event of nulls', async () => {
@@ -188,7 +188,7 @@ describe('capture in Chromium', () => {
     await setMotionPermission(page, served.url, 'denied');
     const cut = await until(['cut', 'done']);
     expect(cut).toMatchObject({ phase: 'cut', reason: 'permission-withdrawn' });
-    expect(cut.sampleCount).toBeGreaterThan(40);
+    expect(cut.sampleCount).toBeGreaterThan(30);
   });
 
   it('ends when the sensor is lost, keeping what there is', async () => {
@@ -198,7 +198,7 @@ describe('capture in Chromium', () => {
     const cut = await until(['cut', 'done']);
     expect(cut.phase).toBe('cut');
     expect(['sensor-error', 'long-gap']).toContain(cut.reason);
-    expect(cut.sampleCount).toBeGreaterThan(40);
+    expect(cut.sampleCount).toBeGreaterThan(30);
   });
 
   it('refuses a sensor of 10 readings a second', async () => {
