@@ -40,6 +40,8 @@ const REASONS: Readonly<Record<LevelReason, string>> = {
   'loading-not-presumed': 'the crowd or walker that the criterion presumes was not there',
   'crest-factor': 'there are shocks in it: the rms understates them',
   'no-dominant-frequency': 'there is no clear frequency to read the guide value at',
+  'lines-only': 'only the lines told from the noise are counted',
+  'wider-band': 'motion above the band of this criterion is in it and may make it read too high',
 };
 export const levelReason = (reason: LevelReason): string => REASONS[reason];
 

@@ -28,7 +28,7 @@ const THRESHOLDS: Readonly<Record<keyof Thresholds, ThresholdText>> = {
     origin: `${PRACTICE} Bearings, preload, temperature and fill move it by a few per cent.`,
   },
   specialistAmplificationRatio: {
-    name: 'Amplification from which a coincidence calls for a specialist',
+    name: 'Amplification, for people times their load factor, from which a coincidence calls for a specialist',
     origin: PRACTICE,
   },
   wantedAmplificationRatio: { name: 'Amplification to damp down to', origin: PRACTICE },

@@ -125,6 +125,9 @@ export interface Levels {
   readonly verticalPeakMps2?: number;
   readonly horizontalPeakMps2?: number;
   readonly largestAxisVelocityPeakMps?: number;
+  /** Largest axis, from 10 Hz up (the band of ISO 20816-3, as far as seen). */
+  readonly velocityRmsFrom10HzMps?: number;
+  readonly displacementRmsFrom10HzM?: number;
   /** Larger of the two horizontal axes (DIN 4150-3, top floor). */
   readonly horizontalVelocityPeakMps?: number;
   /** Vertical: square root of 2 times the largest running rms over 2 s (AISC design guide 11, 2nd ed.). */

@@ -76,6 +76,8 @@ export const LEVEL_REASONS = [
   'loading-not-presumed',
   'crest-factor',
   'no-dominant-frequency',
+  'lines-only',
+  'wider-band',
 ] as const;
 export type LevelReason = (typeof LEVEL_REASONS)[number];
 

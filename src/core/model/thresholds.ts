@@ -7,7 +7,7 @@ export interface Thresholds {
   readonly apartAboveRatio: number;
   /** Relative half-width (95 %) for holding a mode found at rest against a running machine. */
   readonly stoppedRunningRatio: number;
-  /** Amplification from which a coincidence with people or a machine calls for a specialist. */
+  /** Amplification (for people times their load factor) from which a coincidence calls for a specialist. */
   readonly specialistAmplificationRatio: number;
   /** Amplification that the damping way out aims at. */
   readonly wantedAmplificationRatio: number;

@@ -10,7 +10,7 @@ function findingsAt(place: Place, analysis: Analysis, levels: Levels): LevelFind
   const loaded = place.presumedLoading === true;
   switch (place.kind) {
     case 'bearing-housing':
-      return machineFindings(levels, place.machine);
+      return machineFindings(levels, analysis.tones, place.machine);
     case 'foundation':
       return foundationFindings(analysis, levels, place.building);
     case 'top-floor':

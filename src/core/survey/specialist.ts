@@ -2,6 +2,7 @@ import type { Circumstances } from '../model/fact.ts';
 import type { Trust } from '../model/doubt.ts';
 import type { LevelFinding, Separation, SpecialistReason } from '../model/judgement.ts';
 import type { Forcing } from '../model/source.ts';
+import { effectOf } from './separations.ts';
 import type { Thresholds } from '../model/thresholds.ts';
 
 export interface SpecialistFacts {
@@ -16,13 +17,13 @@ export interface SpecialistFacts {
 const PEOPLE: readonly Forcing['sourceKind'][] = ['footfall'];
 const MACHINES: readonly Forcing['sourceKind'][] = ['machine', 'belt', 'mains'];
 
-/** A coincidence (at face value, where the fold is undecided) that amplifies beyond the stated value, with a source of these kinds. */
+/** A coincidence (at face value, where the fold is undecided) whose effect (amplification, for people times their load factor) is beyond the stated value. */
 function isStrongCoincidence(facts: SpecialistFacts, kinds: readonly Forcing['sourceKind'][]): boolean {
   return facts.separations.some(
-    ({ verdict, atFaceValue, amplification, forcingIndex }) =>
-      (atFaceValue ?? verdict) === 'coincident' &&
-      amplification.interval[1] > facts.thresholds.specialistAmplificationRatio &&
-      kinds.includes((facts.forcings[forcingIndex] as Forcing).sourceKind),
+    (separation) =>
+      (separation.atFaceValue ?? separation.verdict) === 'coincident' &&
+      effectOf(separation) > facts.thresholds.specialistAmplificationRatio &&
+      kinds.includes((facts.forcings[separation.forcingIndex] as Forcing).sourceKind),
   );
 }
 

@@ -109,7 +109,7 @@ const housing: Place = { kind: 'bearing-housing', machine: { ratedPowerW: 45_000
 
 describe('machines', () => {
   it('are graded by zone on a bearing housing, with class, source and band', () => {
-    const seen = find(housing, { ...whole, velocityRmsMps: 0.003 }, 'iso-20816-3');
+    const seen = find(housing, { ...whole, velocityRmsFrom10HzMps: 0.003 }, 'iso-20816-3');
     expect(seen).toMatchObject({
       grade: 'within',
       zone: 'C',
@@ -117,44 +117,61 @@ describe('machines', () => {
       beyondLast: false,
       bandHz: [10, 1000],
     });
-    expect(find(housing, { ...whole, velocityRmsMps: 0.005 }, 'iso-20816-3')).toMatchObject({
+    expect(find(housing, { ...whole, velocityRmsFrom10HzMps: 0.005 }, 'iso-20816-3')).toMatchObject({
       grade: 'beyond',
       zone: 'D',
       beyondLast: true,
     });
   });
   it('read "at least" or nothing where the phone sees only part of the band, never a pass', () => {
-    expect(find(housing, { velocityRmsMps: 0.003 }, 'iso-20816-3')).toMatchObject({
+    expect(find(housing, { velocityRmsFrom10HzMps: 0.003 }, 'iso-20816-3')).toMatchObject({
       grade: 'at-least',
       zone: 'C',
       reasons: ['band-partly-seen'],
     });
-    expect(find(housing, { velocityRmsMps: 0.001 }, 'iso-20816-3')).toMatchObject({
+    expect(find(housing, { velocityRmsFrom10HzMps: 0.001 }, 'iso-20816-3')).toMatchObject({
       grade: 'not-assessed',
       value: 0.001,
     });
-    expect(find(housing, { velocityRmsMps: 0.005 }, 'iso-20816-3')).toMatchObject({
+    expect(find(housing, { velocityRmsFrom10HzMps: 0.005 }, 'iso-20816-3')).toMatchObject({
       grade: 'at-least',
       zone: 'D',
       beyondLast: true,
     });
   });
+  it('go by the lines above 10 Hz when that is all there is: a lower bound, without what sways below', () => {
+    // Two lines along a slanting direction, and a sway at 2 Hz that alone would be 56 mm/s.
+    const lines = [
+      toneAt(2, 1),
+      toneAt(25, 1, { direction: [0.6, 0, 0.8] }),
+      toneAt(20, 0.5, { direction: [0.6, 0, 0.8] }),
+    ];
+    const [finding] = levelFindings(
+      analysisOf('running', { levels: levelsOf({ bandHz: [0.1, 2000] }), tones: lines }),
+      housing,
+    );
+    const axis = Math.hypot(0.8 / (2 * Math.PI * 25), 0.4 / (2 * Math.PI * 20)) / Math.SQRT2;
+    expect(finding).toMatchObject({ grade: 'at-least', zone: 'C', reasons: ['lines-only'] });
+    expect(finding!.value).toBeCloseTo(axis, 9);
+    const none = levelFindings(analysisOf('running', { levels: levelsOf(), tones: [toneAt(2, 1)] }), housing);
+    expect(none[0]).toMatchObject({ grade: 'not-assessed', reasons: ['no-value'] });
+  });
   it('apply nowhere but on a bearing housing', () => {
     expect(
-      levelFindings(analysisOf('running', { levels: levelsOf({ velocityRmsMps: 0.02 }) }), {
+      levelFindings(analysisOf('running', { levels: levelsOf({ velocityRmsFrom10HzMps: 0.02 }) }), {
         kind: 'machine-base',
       }),
     ).toEqual([]);
   });
   it('ask for the class when it is not known', () => {
-    expect(find({ kind: 'bearing-housing' }, { velocityRmsMps: 0.02 }, 'iso-20816-3')).toMatchObject({
+    expect(find({ kind: 'bearing-housing' }, { velocityRmsFrom10HzMps: 0.02 }, 'iso-20816-3')).toMatchObject({
       grade: 'not-assessed',
       reasons: ['class-unknown'],
     });
   });
   it('need the band from 2 Hz below 600 r/min', () => {
     const slow: Place = { kind: 'bearing-housing', machine: { ...housing.machine, speedRpm: 480 } };
-    expect(find(slow, { ...whole, velocityRmsMps: 0.001 }, 'iso-20816-3').bandHz).toEqual([2, 1000]);
+    expect(find(slow, { ...whole, velocityRmsFrom10HzMps: 0.001 }, 'iso-20816-3').bandHz).toEqual([2, 1000]);
   });
   it('choose group by power, small machines and pumps their own table', () => {
     expect(tableFor({ ratedPowerW: 500_000, support: 'flexible' })!.classOf).toBe(
@@ -169,7 +186,7 @@ describe('machines', () => {
   });
   it('say that folded tones were left out', () => {
     expect(
-      find(housing, { ...whole, velocityRmsMps: 0.003, leftOutTones: true }, 'iso-20816-3'),
+      find(housing, { ...whole, velocityRmsFrom10HzMps: 0.003, leftOutTones: true }, 'iso-20816-3'),
     ).toMatchObject({
       grade: 'at-least',
       reasons: ['folded-left-out'],
@@ -269,6 +286,21 @@ describe('people', () => {
     expect(find({ kind: 'footbridge', presumedLoading: true }, levels, 'en-1990', 'ambient')).toMatchObject({
       grade: 'within',
       zone: 'within',
+    });
+    const loud = { ...levels, verticalPeakMps2: 0.9 };
+    expect(find({ kind: 'footbridge', presumedLoading: true }, loud, 'en-1990', 'ambient')).toMatchObject({
+      grade: 'beyond',
+      reasons: ['wider-band'],
+    });
+    // The phone misses the slowest lateral motion and holds what lies above: no bound of either kind.
+    const lateral = levelFindings(
+      analysisOf('ambient', { levels: levelsOf({ horizontalPeakMps2: 0.9, bandHz: [0.5, 28] }) }),
+      { kind: 'footbridge', presumedLoading: true },
+    ).find(({ measure }) => measure === 'acceleration-peak-horizontal');
+    expect(lateral).toMatchObject({
+      grade: 'not-assessed',
+      beyondLast: false,
+      reasons: ['band-partly-seen', 'wider-band'],
     });
     expect(find({ kind: 'footbridge' }, levels, 'hivoss', 'ambient')).toMatchObject({
       grade: 'at-least',

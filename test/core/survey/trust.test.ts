@@ -60,13 +60,17 @@ describe('call a specialist', () => {
     expect(judge(calm, []).specialist).toEqual([]);
   });
   it('for a level beyond the last boundary, even as a lower bound', () => {
-    const loud = analysisOf('running', { levels: levelsOf({ velocityRmsMps: 0.006 }) });
+    const loud = analysisOf('running', { levels: levelsOf({ velocityRmsFrom10HzMps: 0.006 }) });
     const place = { kind: 'bearing-housing', machine: { ratedPowerW: 45e3, support: 'rigid' } } as const;
     expect(judge(loud, [], {}, { place }).specialist).toEqual(['level-beyond']);
   });
   it('for a strong coincidence with people or a machine, not for a weak one', () => {
     const light = analysisOf('tap', { modes: [modeAt(2, 0.01)] });
     const damped = analysisOf('tap', { modes: [modeAt(2, 0.2)] });
+    // Amplified 25 times, but only by the fourth harmonic's 7 %.
+    const fitted = analysisOf('tap', { modes: [modeAt(8.5, 0.02)] });
+    expect(judge(fitted, [walking]).separations[0]!.verdict).toBe('coincident');
+    expect(judge(fitted, [walking]).specialist).toEqual([]);
     expect(judge(light, [walking]).specialist).toEqual(['coincident-people']);
     expect(judge(damped, [walking]).specialist).toEqual([]);
     const press = { name: 'press', kind: 'machine', speedRpm: 1200 } as const;

@@ -69,6 +69,7 @@ export function footbridgeFindings(levels: Levels, loaded: boolean): LevelFindin
           seenHz: levels.bandHz,
           leftOutTones: false,
           falseTones: levels.leftOutTones,
+          unfiltered: true,
         },
         { noPass },
       ),

@@ -20,6 +20,8 @@ export interface Measured {
   readonly leftOutTones: boolean;
   /** Folded tones are in the value at a false frequency: no bound of any kind (acceleration). */
   readonly falseTones: boolean;
+  /** The value was not limited to the criterion's band: what lies above it is in the value. */
+  readonly unfiltered?: boolean;
 }
 
 type Description = Pick<
@@ -55,22 +57,37 @@ export function graded(
   const { value } = measured;
   const last = scale.boundaries.at(-1) as number;
   if (value === undefined || measured.falseTones) {
-    const reason: LevelReason = measured.falseTones ? 'folded-in-acceleration' : 'no-value';
-    return { ...description, grade: 'not-assessed', beyondLast: false, reasons: [reason, ...noPass] };
+    const reasons: LevelReason[] = measured.falseTones ? ['folded-in-acceleration'] : ['no-value'];
+    if (measured.leftOutTones) reasons.push('folded-left-out');
+    return { ...description, grade: 'not-assessed', beyondLast: false, reasons };
   }
   const reasons: LevelReason[] = [
     ...(seesAll(measured.seenHz, description.bandHz) ? [] : (['band-partly-seen'] as const)),
     ...(measured.leftOutTones ? (['folded-left-out'] as const) : []),
     ...noPass,
   ];
-  const common = { ...description, value, limit: limitFor(value, scale), beyondLast: value > last, reasons };
+  const common = { ...description, value, limit: limitFor(value, scale), beyondLast: value > last };
   const passedFirst = value > (scale.boundaries[0] as number);
+  const isUpperBound =
+    passedFirst && measured.unfiltered === true && seesBeyond(measured.seenHz, description.bandHz);
+  const told = isUpperBound ? [...reasons, 'wider-band' as const] : reasons;
   if (reasons.length === 0)
-    return { ...common, zone: zoneOf(value, scale), grade: value > last ? 'beyond' : 'within' };
+    return {
+      ...common,
+      reasons: told,
+      zone: zoneOf(value, scale),
+      grade: value > last ? 'beyond' : 'within',
+    };
+  // Partly too much, partly too little: no bound of either kind.
+  if (isUpperBound && reasons.includes('band-partly-seen'))
+    return { ...common, reasons: told, beyondLast: false, grade: 'not-assessed' };
   return passedFirst
-    ? { ...common, zone: zoneOf(value, scale), grade: 'at-least' }
-    : { ...common, grade: 'not-assessed' };
+    ? { ...common, reasons: told, zone: zoneOf(value, scale), grade: 'at-least' }
+    : { ...common, reasons: told, grade: 'not-assessed' };
 }
+
+/** Motion is seen well above the needed band (a quarter beyond its end: our own bound). */
+const seesBeyond = (seenHz: Interval, neededHz: Interval): boolean => seenHz[1] > 1.25 * neededHz[1];
 
 /** A criterion whose class is not known: named, with its reason, not graded. */
 export const notAssessed = (description: Description, reason: LevelReason): LevelFinding => ({

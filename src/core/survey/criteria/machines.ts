@@ -1,4 +1,4 @@
-import type { Levels } from '../../model/analysis.ts';
+import type { Levels, Tone } from '../../model/analysis.ts';
 import type { Interval } from '../../model/interval.ts';
 import type { LevelFinding } from '../../model/judgement.ts';
 import type { MachinePlace } from '../../model/place.ts';
@@ -92,8 +92,53 @@ export function tableFor(machine: MachinePlace): Chosen | undefined {
   };
 }
 
+interface MachineLevel {
+  readonly velocityMps: number | undefined;
+  readonly displacementM: number | undefined;
+  readonly linesOnly: boolean;
+}
+
+/** Rms over direct tones in a band, of the largest axis: sum of (a d / (2 pi f)^n)² / 2; n = 1 velocity, 2 displacement. */
+function linesRms(tones: readonly Tone[], bandHz: Interval, integrations: 1 | 2): number | undefined {
+  const inBand = tones.filter(
+    ({ fold, frequencyHz }) =>
+      fold.verdict === 'direct' && frequencyHz >= bandHz[0] && frequencyHz <= bandHz[1],
+  );
+  if (inBand.length === 0) return undefined;
+  const axes = inBand[0]?.direction.map((_, axis) =>
+    inBand.reduce((sum, { amplitudeMps2, direction, frequencyHz }) => {
+      const integrated =
+        (amplitudeMps2 * (direction[axis] ?? 0)) / (2 * Math.PI * frequencyHz) ** integrations;
+      return sum + integrated ** 2 / 2;
+    }, 0),
+  );
+  return Math.sqrt(Math.max(...(axes ?? [0])));
+}
+
+/**
+ * What the reading knows of the needed band: its own level from 10 Hz up where it has one, else the lines alone. Motion below the
+ * band (a floor that sways) must not be counted: velocity would be full of it.
+ */
+function machineLevel(levels: Levels, tones: readonly Tone[], bandHz: Interval): MachineLevel {
+  if (bandHz === MACHINE_BAND_HZ && levels.velocityRmsFrom10HzMps !== undefined)
+    return {
+      velocityMps: levels.velocityRmsFrom10HzMps,
+      displacementM: levels.displacementRmsFrom10HzM,
+      linesOnly: false,
+    };
+  return {
+    velocityMps: linesRms(tones, bandHz, 1),
+    displacementM: linesRms(tones, bandHz, 2),
+    linesOnly: true,
+  };
+}
+
 /** Findings of a bearing housing; nowhere else do the zones apply. */
-export function machineFindings(levels: Levels, machine: MachinePlace = {}): LevelFinding[] {
+export function machineFindings(
+  levels: Levels,
+  tones: readonly Tone[],
+  machine: MachinePlace = {},
+): LevelFinding[] {
   const slow = machine.speedRpm !== undefined && machine.speedRpm < SLOW_BELOW_RPM;
   const bandHz = slow ? SLOW_MACHINE_BAND_HZ : MACHINE_BAND_HZ;
   const chosen = tableFor(machine);
@@ -103,20 +148,25 @@ export function machineFindings(levels: Levels, machine: MachinePlace = {}): Lev
       notAssessed({ ...velocity, criterion: 'iso-20816-3', origin: 'ISO 20816-3:2022' }, 'class-unknown'),
     ];
   const { criterion, origin, classOf, table } = chosen;
+  const level = machineLevel(levels, tones, bandHz);
   const measured = { seenHz: levels.bandHz, leftOutTones: levels.leftOutTones, falseTones: false };
+  const bound = { noPass: level.linesOnly ? (['lines-only'] as const) : [] };
   const described = { criterion, origin, classOf };
   const findings = [
-    graded({ ...velocity, ...described }, scaleOf(table.velocityMps), {
-      ...measured,
-      value: levels.velocityRmsMps,
-    }),
+    graded(
+      { ...velocity, ...described },
+      scaleOf(table.velocityMps),
+      { ...measured, value: level.velocityMps },
+      bound,
+    ),
   ];
   if (table.displacementM)
     findings.push(
       graded(
         { ...velocity, ...described, measure: 'displacement-rms', unit: 'm' },
         scaleOf(table.displacementM),
-        { ...measured, value: levels.displacementRmsM },
+        { ...measured, value: level.displacementM },
+        bound,
       ),
     );
   return findings;

@@ -126,7 +126,7 @@ function aisc(levels: Levels, use: FloorUse | undefined, noPass: readonly LevelR
         classOf: use,
       },
       single(share * STANDARD_GRAVITY_MPS2),
-      measuredOf(levels, levels.equivalentSinePeakMps2 ?? fallback),
+      { ...measuredOf(levels, levels.equivalentSinePeakMps2 ?? fallback), unfiltered: true },
       { noPass },
     ),
   ];
