@@ -68,6 +68,30 @@ const field = {
     for (const axis of recording.accelerationMps2) axis.forEach((_, i) => (axis[i] = 10 * Math.random()));
     return recording;
   },
+  /** Readings over two years at 200 spots, without raw samples. */
+  async fillWithReadings(count: number) {
+    const spots: string[] = [];
+    for (let i = 0; i < 200; i += 1) spots.push((await store!.newEntity('spot', { name: `post ${i}` })).id);
+    for (let from = 0; from < count; from += 500) {
+      const facts = Array.from({ length: Math.min(500, count - from) }, (_, k) => {
+        const i = from + k;
+        const fact: ReadingFact = {
+          ...readingDraft({
+            recordedAt: new Date(Date.UTC(2024, 0, 1) + i * 6_300_000).toISOString(),
+            procedure: i % 3 === 0 ? 'running' : 'tap',
+            spot: spots[i % 200]!,
+          }),
+          _id: `reading:01J${String(i).padStart(23, '0')}`,
+          v: 1,
+          kind: 'reading',
+          rawSha256: 'a'.repeat(64),
+          rawBytes: 1,
+        };
+        return { fact };
+      });
+      await store!.putFacts(facts);
+    }
+  },
   async deleteDatabase() {
     store?.close();
     await deleteDB('thrumbook');
