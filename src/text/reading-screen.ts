@@ -54,6 +54,8 @@ export const readingText = {
   newer: 'This reading was made by a newer version of the app.',
   newerNote: 'It is kept and handed on unchanged. Load the app again while online to open it.',
   unplaced: 'No spot yet',
+  nameSpot: 'Name this spot',
+  changeSpot: 'Change spot',
   procedureName: (procedure: Procedure) => PROCEDURES[procedure],
   indicativeNote:
     'Where people could be hurt, a licensed engineer comes first. Local rules and licensed practice come before this reading.',

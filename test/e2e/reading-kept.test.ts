@@ -68,13 +68,27 @@ describe('a reading kept by the app', () => {
   it('leads to the form of a source, and holds the reading against it afterwards', async () => {
     await page.getByRole('link', { name: 'Add what shakes it' }).first().click();
     await page.waitForURL(/#\/source\/new\?.*reading=/);
-    await page.getByRole('link', { name: /People|Footfall|walking/i }).first().click();
+    await page
+      .getByRole('link', { name: /People|Footfall|walking/i })
+      .first()
+      .click();
     await page.getByRole('button', { name: 'Save' }).click();
     await page.waitForURL(/#\/reading\//);
     // the practice rail rings near 7.4 Hz, where the third and fourth harmonics of walking reach
     await page.getByRole('button', { name: /^The third harmonic of walking/ }).click();
     const card = page.getByRole('region', { name: 'Ladder' });
     await card.getByText(/The third harmonic of walking against the mode at 7\.4/).waitFor();
+  });
+
+  it('is given its spot after it was taken, and leads to the history of that spot', async () => {
+    await page.getByRole('button', { name: 'Name this spot' }).click();
+    const dialog = page.getByRole('dialog');
+    await dialog.getByRole('textbox').first().fill('Third post');
+    await dialog.getByRole('button', { name: 'Use this spot' }).click();
+    const place = page.getByRole('link', { name: /Third post/ }).last();
+    await place.waitFor();
+    await place.click();
+    await page.waitForURL(/#\/spot\//);
   });
 
   it('raised no error on the way', () => {

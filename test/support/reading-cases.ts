@@ -7,6 +7,7 @@ export const noLinks: ReadingLinks = {
   back: () => undefined,
   again: () => undefined,
   next: () => undefined,
+  spot: (id) => `#/spot/${id}`,
   source: (id) => `#/source/${id}`,
   newSource: (id) => `#/source/new?reading=${id}`,
   handOver: (id) => `#/hand-over?reading=${id}`,
@@ -75,7 +76,10 @@ export function exampleCases(name: string, delayMs = 30): ExampleCases {
       // another time base shifts the answer a little, so that old and new differ
       const shift = settings.timing === analysis.settings.timing ? 1 : 1.004;
       const modes = analysis.modes.map((mode) => ({ ...mode, frequencyHz: mode.frequencyHz * shift }));
-      return { ok: true, value: { analysis: { ...analysis, settings, modes }, pictures: example.pictures() } };
+      return {
+        ok: true,
+        value: { analysis: { ...analysis, settings, modes }, pictures: example.pictures() },
+      };
     },
     async keepAnalysis(id, analysis) {
       asked.push({ what: 'keepAnalysis', with: id });

@@ -1,4 +1,4 @@
-import { useMemo } from 'preact/hooks';
+import { useMemo, useState } from 'preact/hooks';
 import { headlineSentence } from '../../../text/sentence.ts';
 import { INDICATIVE_LINE } from '../../../text/indicative.ts';
 import { PLUS_MINUS_NOTE } from '../../../text/number.ts';
@@ -30,16 +30,19 @@ import { whenText } from './when-text.ts';
 
 type BodyProps = Omit<ReadingPageProps, 'id'> & { readonly view: ReadingView };
 
-const placeText = (view: ReadingView): string => {
+/** Where it was taken: asset and spot, which leads to the spot's history. */
+function PlaceLine({ view, links }: Pick<BodyProps, 'view' | 'links'>) {
   const { site, asset, spot } = view.place;
   const label = view.entity.fields['label'];
   const name = typeof label === 'string' && label !== '' ? label : spot;
   const parts = [asset ?? site, name].filter((part) => part !== undefined);
-  return parts.length === 0 ? readingText.unplaced : parts.join(' · ');
-};
+  const text = parts.length === 0 ? readingText.unplaced : parts.join(' · ');
+  return view.spotId ? <a href={links.spot(view.spotId)}>{text}</a> : <span>{text}</span>;
+}
 
 /** Sentence, picture, numbers, and everything else in the order in which people need it. */
-export function ReadingBody({ view, cases, links, units }: BodyProps) {
+export function ReadingBody({ view, cases, links, units, spotDialog }: BodyProps) {
+  const [isNaming, setNaming] = useState(false);
   const { reading } = view;
   const analysis = currentAnalysis(view);
   const isRunning = analysis.procedure === 'running';
@@ -54,14 +57,22 @@ export function ReadingBody({ view, cases, links, units }: BodyProps) {
       }
       over={
         <span class={styles.over}>
-          <span>{placeText(view)}</span>
+          <PlaceLine view={view} links={links} />
           <span>
             {readingKind(analysis)} · {whenText(reading.recordedAt, reading.timeZone)}
           </span>
         </span>
       }
       back={{ label: readingText.back, onClick: links.back }}
+      aside={
+        spotDialog && (
+          <Button kind="quiet" onClick={() => setNaming(true)}>
+            {view.spotId ? readingText.changeSpot : readingText.nameSpot}
+          </Button>
+        )
+      }
     >
+      {isNaming && spotDialog?.(reading._id, () => setNaming(false))}
       <div class={styles.body}>
         <StateStrips view={view} cases={cases} />
         <VerdictLead analysis={analysis} judgement={judgement} units={units} />

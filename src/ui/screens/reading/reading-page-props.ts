@@ -1,3 +1,4 @@
+import type { ComponentChildren } from 'preact';
 import type { ReadingUnits } from './reading-units.ts';
 import type { ReadingLinks, ReadingUseCases } from './reading-use-cases.ts';
 
@@ -6,4 +7,6 @@ export interface ReadingPageProps {
   readonly cases: ReadingUseCases;
   readonly links: ReadingLinks;
   readonly units: ReadingUnits;
+  /** The dialog that names the spot; without it the reading stays where it is. */
+  readonly spotDialog?: (id: string, onClose: () => void) => ComponentChildren;
 }

@@ -6,7 +6,7 @@ import type { ReadingPageProps } from './reading-page-props.ts';
 import type { OpenedView } from './reading-use-cases.ts';
 
 /** Opens the reading and follows its changes; says in words when there is nothing to show. */
-export function ReadingPage({ id, cases, links, units }: ReadingPageProps) {
+export function ReadingPage({ id, cases, links, units, spotDialog }: ReadingPageProps) {
   const [opened, setOpened] = useState<OpenedView | undefined>();
   const [error, setError] = useState<unknown>();
   useEffect(() => {
@@ -42,5 +42,13 @@ export function ReadingPage({ id, cases, links, units }: ReadingPageProps) {
       </Page>
     );
   }
-  return <ReadingBody view={opened.view} cases={cases} links={links} units={units} />;
+  return (
+    <ReadingBody
+      view={opened.view}
+      cases={cases}
+      links={links}
+      units={units}
+      {...(spotDialog ? { spotDialog } : {})}
+    />
+  );
 }

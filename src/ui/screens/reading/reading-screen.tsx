@@ -1,5 +1,6 @@
 import { useMemo } from 'preact/hooks';
 import type { App } from '../../../app/app.ts';
+import { Later } from '../../later.tsx';
 import { useLive } from '../../use-live.ts';
 import { readingLinks, readingUseCases } from './app-cases.ts';
 import { ReadingPage } from './reading-page.tsx';
@@ -20,5 +21,19 @@ export function ReadingScreen({ id, app }: { readonly id: string; readonly app: 
     }),
     [frequencyUnit, accelerationUnit, velocityUnit, displacementUnit],
   );
-  return <ReadingPage key={id} id={id} cases={cases} links={links} units={units} />;
+  const spotDialog = (reading: string, onClose: () => void) => (
+    <Later load={() => import('../assets/pick-spot-dialog.tsx')}>
+      {({ PickSpotDialog }) => (
+        <PickSpotDialog
+          app={app}
+          onClose={onClose}
+          onPick={(where) => {
+            onClose();
+            void app.readings.setSpot([reading], where);
+          }}
+        />
+      )}
+    </Later>
+  );
+  return <ReadingPage key={id} id={id} cases={cases} links={links} units={units} spotDialog={spotDialog} />;
 }

@@ -25,6 +25,8 @@ export interface ReadingView {
   /** Analyses redone, oldest first. */
   readonly results: readonly ResultFact[];
   readonly place: { readonly site?: string; readonly asset?: string; readonly spot?: string };
+  /** The spot it belongs to now. */
+  readonly spotId?: string;
   /** Sources valid for this reading. */
   readonly sources: readonly NamedSource[];
   readonly photos: readonly ReadingPhoto[];
@@ -69,6 +71,7 @@ export interface ReadingLinks {
   readonly back: () => void;
   readonly again: (view: ReadingView) => void;
   readonly next: (view: ReadingView) => void;
+  readonly spot: (id: string) => string;
   readonly source: (id: string) => string;
   readonly newSource: (readingId: string) => string;
   readonly handOver: (readingId: string) => string;
