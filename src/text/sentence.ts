@@ -71,13 +71,24 @@ function pairSentence(separation: Separation, analysis: Analysis, judgement: Jud
 const count = (number: number, one: string, many: string): string =>
   number === 1 ? `one ${one}` : `${number} ${many}`;
 
+const isNear = ({ verdict }: Separation): boolean => verdict !== 'apart' && verdict !== 'blind';
+const isCoincident = ({ verdict, atFaceValue }: Separation): boolean =>
+  verdict === 'coincident' || atFaceValue === 'coincident';
+
+/** The pair to speak of: a coincidence of the strongest mode, which was just named; else the worst coincidence; else the worst pair. */
+export function headlinePair(separations: readonly Separation[]): Separation | undefined {
+  const near = separations.filter(isNear);
+  const coincident = near.filter(isCoincident);
+  return coincident.find(({ modeIndex }) => modeIndex === 0) ?? coincident[0] ?? near[0];
+}
+
 /** What the sources mean for the reading: the worst pair, or what was not seen, or that nothing was found near. */
 export function sourcesSentence(analysis: Analysis, judgement: Judgement): string | undefined {
   if (judgement.forcings.length === 0) return undefined;
-  const worst = judgement.separations[0];
-  if (worst && worst.verdict !== 'apart' && worst.verdict !== 'blind')
-    return pairSentence(worst, analysis, judgement);
+  const pair = headlinePair(judgement.separations);
+  if (pair) return pairSentence(pair, analysis, judgement);
   if (analysis.procedure === 'running') return runningSentence(judgement);
+  if (analysis.modes.length === 0) return 'Whether a source falls on one stays open.';
   return [noneNearSentence(judgement), ...blowSentences(judgement)].filter((part) => part !== '').join(' ');
 }
 

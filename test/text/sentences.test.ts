@@ -194,6 +194,19 @@ describe('the verdict sentence', () => {
     const judgement = judge(two, [{ name: 'press', kind: 'band', frequencyHz: 6.4, toleranceRatio: 0 }]);
     expect(verdictSentence(two, judgement)).toContain('Press lies 14 % below the mode at 7.42 Hz: close.');
   });
+  it('speaks of a coincidence of the strongest mode before a worse one of another, and of any before a close pair', () => {
+    const sources: Source[] = [
+      { name: 'press', kind: 'band', frequencyHz: 7.4, toleranceRatio: 0 },
+      { name: 'fan', kind: 'band', frequencyHz: 20, toleranceRatio: 0 },
+      { name: 'mill', kind: 'band', frequencyHz: 6.3, toleranceRatio: 0 },
+    ];
+    const two = analysisOf('tap', { modes: [mode, modeAt(20, 0.005)] });
+    expect(verdictSentence(two, judge(two, sources))).toContain('Press falls on it: coincident.');
+    expect(verdictSentence(two, judge(two, sources.slice(1)))).toContain(
+      'Fan falls on the mode at 20.0 Hz: coincident.',
+    );
+    expect(verdictSentence(two, judge(two, sources.slice(2)))).toContain('Mill lies 15 % below it: close.');
+  });
   it('never turns blindness into good news', () => {
     const judgement = judge(tap, [
       { name: 'line', kind: 'mains', supplyHz: 50 },
@@ -250,6 +263,10 @@ describe('the verdict sentence', () => {
   });
   it('says when nothing was found', () => {
     expect(verdictSentence(analysisOf('ambient'))).toBe('No mode found in this reading. Trust: good.');
+    const ambient = analysisOf('ambient');
+    expect(verdictSentence(ambient, judge(ambient, [{ name: 'street', kind: 'traffic' }]))).toBe(
+      'No mode found in this reading. Whether a source falls on one stays open. Trust: good.',
+    );
     expect(headlineSentence(analysisOf('coastdown'))).toBe(
       'No resonance found in the range that the machine passed through.',
     );
