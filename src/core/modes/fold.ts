@@ -9,7 +9,7 @@ import { likelihoodAt, slopeProfile, type SlopeProfile } from '../signal/jitter-
  */
 
 /** Prior weights of f, fs-f, fs+f, 2fs-f: the sensor's own low-pass makes the higher ones rarer. Our choice. */
-const CANDIDATE_WEIGHTS = [1, 1, 0.05, 0.05] as const;
+const CANDIDATE_WEIGHTS = [1, 1, 0.02, 0.02] as const;
 /** Prior of all scatter being true; the rest is spread evenly over shares from `LEAST_TELLING_SHARE` to 1. */
 const ALL_TRUE_WEIGHT = 0.5;
 /** Shares below this count as "late stamps": nothing is decided on them. */

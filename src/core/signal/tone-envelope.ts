@@ -129,19 +129,15 @@ export function phaseTrack(
     const dot = re[i]! * re[i - 1]! + im[i]! * im[i - 1]!;
     phase[i] = phase[i - 1]! + Math.atan2(cross, dot);
   }
-  let meanT = 0;
-  let meanP = 0;
-  for (let i = 0; i < n; i++) {
-    meanT += timeS[i]! / n;
-    meanP += phase[i]! / n;
+  // Ends against each other: unlike a fitted slope this is the mean even of a line that wanders.
+  const tenth = Math.max(1, Math.floor(n / 10));
+  let turn = 0;
+  let time = 0;
+  for (let i = 0; i < tenth; i++) {
+    turn += phase[n - 1 - i]! - phase[i]!;
+    time += timeS[n - 1 - i]! - timeS[i]!;
   }
-  let cross = 0;
-  let square = 0;
-  for (let i = 0; i < n; i++) {
-    cross += (timeS[i]! - meanT) * (phase[i]! - meanP);
-    square += (timeS[i]! - meanT) ** 2;
-  }
-  const slope = cross / square;
+  const slope = turn / time;
   let spread = 0;
   let noise = 0;
   for (let i = 1; i < n; i++) {
