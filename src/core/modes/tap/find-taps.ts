@@ -11,10 +11,13 @@ export interface FreeDecay extends Segment {
 export const CONTACT_SAMPLE_PRICE = 8;
 
 /**
- * A tap changes the motion by at least this share of its energy (22 % of its amplitude): smaller jumps are how far a
+ * A tap changes the motion by at least this share of its energy (14 % of its amplitude): smaller jumps are how far a
  * real structure is from a linear one. Our own choice, tried on measured beams.
  */
-const LEAST_JUMP_SHARE = 0.05;
+const LEAST_JUMP_SHARE = 0.02;
+/** Jumps above this share are taken as they are; smaller ones must also be sudden: loss doubling with distance, not fourfold. */
+const SURE_JUMP_SHARE = 0.15;
+const SUDDEN_RATIO = 3;
 
 /** Least share of the strongest tap's fall while the modes are still being found, and after. */
 export const COARSE = 0.05;
@@ -130,24 +133,48 @@ function bestSplit(
   );
   const price = signal.y.length + CONTACT_SAMPLE_PRICE;
   const total = leading[n]!;
-  let best: Split | undefined;
-  // A record may begin within a contact: then the left part is empty (k = 0) and costs nothing.
-  for (let k = 0; k <= n - least; k++) {
-    const before = leading[k]!;
-    const onsetTime = signal.timeS[decay.start + k]!;
-    for (let j = k; j <= n - least; j++) {
+  const gains = new Float64Array(n - least + 1);
+  const starts = new Int32Array(n - least + 1);
+  let k = 0;
+  // A record may begin within a contact: then the left part is empty (split at 0) and costs nothing.
+  for (let onset = 0; onset <= n - least; onset++) {
+    const onsetTime = signal.timeS[decay.start + onset]!;
+    gains[onset] = -Infinity;
+    for (let j = onset; j <= n - least; j++) {
       if (signal.timeS[decay.start + j]! - onsetTime > search.contactS) break;
-      const gain = total - before - trailing[j]! - price * (j - k);
-      if (best === undefined || gain > best.gain) {
-        best = { gain, onset: decay.start + k, start: decay.start + j };
+      const gain = total - leading[onset]! - trailing[j]! - price * (j - onset);
+      if (gain > gains[onset]!) {
+        gains[onset] = gain;
+        starts[onset] = j;
       }
     }
+    if (gains[onset]! > gains[k]!) k = onset;
   }
-  if (best === undefined || best.onset === decay.start) return undefined;
-  const k = best.onset - decay.start;
-  const j = best.start - decay.start;
+  if (k === 0) return undefined;
+  const gain = gains[k]!;
+  const j = starts[k]!;
   const motion = Math.min(leadingSquare[k]! - leading[k]!, trailingSquare[j]! - trailing[j]!);
-  return best.gain > LEAST_JUMP_SHARE * motion ? best : undefined;
+  if (gain < LEAST_JUMP_SHARE * motion) return undefined;
+  if (gain < SURE_JUMP_SHARE * motion && !isSudden(gains, k, halfCycleSamples(signal, decay, components)))
+    return undefined;
+  return { gain, onset: decay.start + k, start: decay.start + j };
+}
+
+/** Half a cycle of the slowest component, in samples. */
+function halfCycleSamples(signal: DecaySignal, decay: FreeDecay, components: readonly Component[]): number {
+  const slowest = Math.min(...components.map((c) => c.angularRadPerS));
+  const durationS = signal.timeS[decay.end - 1]! - signal.timeS[decay.start]!;
+  return Math.max(2, Math.round((Math.PI / slowest / durationS) * (decay.end - decay.start)));
+}
+
+/**
+ * Away from a sudden jump the gain falls in proportion to the distance; away from the best place to break a slow
+ * misfit (a beat, an amplitude-dependent frequency) it falls with the square.
+ */
+function isSudden(gains: Float64Array, k: number, step: number): boolean {
+  if (k < 2 * step || k + 2 * step >= gains.length) return true;
+  const lossAt = (distance: number): number => gains[k]! - (gains[k - distance]! + gains[k + distance]!) / 2;
+  return lossAt(2 * step) < SUDDEN_RATIO * lossAt(step);
 }
 
 function indexOfLargest(values: readonly number[]): number {

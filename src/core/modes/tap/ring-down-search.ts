@@ -29,7 +29,11 @@ export function searchRingDowns(input: SearchInput): RingDownSearch | undefined 
   return best;
 }
 
-function searchFrom(input: SearchInput, start: RingDownSearch, noise: readonly number[]): RingDownSearch {
+export function searchFrom(
+  input: SearchInput,
+  start: RingDownSearch,
+  noise: readonly number[],
+): RingDownSearch {
   const first = withOneMore(input, start, noise) ?? start;
   const result = search(input, settle(input, first, noise, COARSE), noise);
   return result.tapCount >= TAP_LIMIT ? result : withTones(input.signal, prune(input, result, noise));
