@@ -12,6 +12,7 @@ import type { ProcedureAnswer } from './modes/procedure-answer.ts';
 import { recordingDoubts } from './modes/recording-doubts.ts';
 import { runningProcedure } from './modes/running-procedure.ts';
 import { tapProcedure } from './modes/tap/tap-procedure.ts';
+import { recogniseProcedure } from './modes/recognise-procedure.ts';
 import { roundedForKeeping } from './modes/rounded-for-keeping.ts';
 import { conditionRecording } from './signal/condition-recording.ts';
 import type { ConditionedSignal } from './signal/condition-recording.ts';
@@ -30,7 +31,8 @@ export function analyse(recording: Recording, settings: AnalysisSettings): Outco
   const conditioned = conditionRecording(recording, settings.timing);
   if (!conditioned.ok) return conditioned;
   const signal = conditioned.value;
-  const procedure: Procedure = settings.procedure === 'auto' ? 'tap' : settings.procedure;
+  const procedure: Procedure =
+    settings.procedure === 'auto' ? recogniseProcedure(signal) : settings.procedure;
   const answer = PROCEDURES[procedure](signal, settings);
   if (!answer.ok) return answer;
   return success(resultOf(signal, settings, procedure, answer.value));
