@@ -25,6 +25,9 @@ const DIRECTIONS = [
   [0.2, 0.97, 0.12],
 ] as const;
 
+/** How much of a force on the spot each mode takes. */
+const shareOf = (modeIndex: number): number => (modeIndex === 0 ? 1 : 0.4);
+
 export interface RigSample {
   /** Stamp as the browser would give it, s since the rig began. */
   readonly stampS: number;
@@ -48,6 +51,7 @@ export class PracticeRig {
   #tapTimesS: number[] = [];
   #coastFromS = Infinity;
   #force = 0;
+  #contact = { fromS: -Infinity, speedMps: 0 };
 
   constructor(parameters: RigParameters) {
     this.#parameters = parameters;
@@ -103,25 +107,33 @@ export class PracticeRig {
     while (this.#nowS() + STEP_S <= timeS) {
       const nowS = this.#nowS();
       this.#giveTaps(nowS);
-      const machine = this.#machineForce(nowS);
-      const shaking = this.#handlingForce(nowS);
-      this.#force = machine + shaking;
+      this.#force = this.#machineForce(nowS) + this.#handlingForce(nowS) + this.#contactForce(nowS);
       this.#modes.forEach((mode, i) => {
-        mode.advance(STEP_S, machine + shaking + this.#driveScales[i]! * this.#chance.normal());
+        mode.advance(STEP_S, shareOf(i) * this.#force + this.#driveScales[i]! * this.#chance.normal());
       });
       this.#stepCount += 1;
     }
   }
 
+  /** Taps that are due: at once as a blow, or as the beginning of a contact. */
   #giveTaps(nowS: number): void {
     while (this.#tapTimesS[0] !== undefined && this.#tapTimesS[0] <= nowS) {
       this.#tapTimesS.shift();
       const strength = this.#parameters.tapStrengthMps2 * (1 + 0.15 * this.#chance.normal());
-      this.#modes.forEach((mode, i) => {
-        const omega = 2 * Math.PI * this.#parameters.modes[i]!.frequencyHz;
-        mode.strike((strength / omega) * (i === 0 ? 1 : 0.5));
-      });
+      const speedMps = strength / (2 * Math.PI * this.#parameters.modes[0]!.frequencyHz);
+      if (this.#parameters.contactS === 0)
+        this.#modes.forEach((mode, i) => mode.strike(speedMps * shareOf(i)));
+      else this.#contact = { fromS: nowS, speedMps };
     }
+  }
+
+  /** Half a sine whose impulse is that of the blow, m/s². */
+  #contactForce(nowS: number): number {
+    const { contactS } = this.#parameters;
+    const { fromS, speedMps } = this.#contact;
+    const share = (nowS - fromS) / contactS;
+    if (!(share >= 0 && share <= 1)) return 0;
+    return ((Math.PI / 2) * speedMps * Math.sin(Math.PI * share)) / contactS;
   }
 
   #machineForce(nowS: number): number {
@@ -149,7 +161,7 @@ export class PracticeRig {
     const [x, y, z] = [0, 1, 2].map((axis) => {
       let value = this.#gravity[axis]!;
       this.#modes.forEach((mode, i) => {
-        value += (mode.restoring(aheadS) + this.#force) * DIRECTIONS[i % 3]![axis]!;
+        value += (mode.restoring(aheadS) + shareOf(i) * this.#force) * DIRECTIONS[i % 3]![axis]!;
       });
       return this.#asSensed(value + this.#parameters.noiseMps2 * this.#chance.normal());
     }) as [number, number, number];

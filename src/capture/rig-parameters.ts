@@ -32,6 +32,7 @@ export const RIG_PARAMETERS = [
   parameter('taps', '', 0, 1000, 'taps given once recording starts'),
   parameter('every', 's', 0.5, 60, 'time between taps'),
   parameter('strength', 'm/s²', 0, 50, 'acceleration of the first mode right after a tap'),
+  parameter('contact', 'ms', 0, 30, 'how long a tap touches; 0: a perfect blow'),
   parameter('speed', 'rpm', 0, 60_000, 'shaft speed of a machine on it'),
   parameter('unbalance', 'm/s²', 0, 50, 'excitation by the machine at that speed'),
   parameter('coast', 's', 0, 600, 'time the machine needs to stop; 0: it keeps running'),
@@ -55,6 +56,7 @@ export interface RigParameters {
   readonly tapCount: number;
   readonly tapIntervalS: number;
   readonly tapStrengthMps2: number;
+  readonly contactS: number;
   readonly speedRpm: number;
   readonly unbalanceMps2: number;
   readonly coastS: number;
@@ -79,6 +81,7 @@ const ORDINARY = {
   taps: '5',
   every: '4',
   strength: '1.5',
+  contact: '8',
   speed: '0',
   unbalance: '0',
   coast: '0',
@@ -143,6 +146,7 @@ export function parseRigParameters(query: string): RigParameters {
     tapCount: Math.round(one('taps')),
     tapIntervalS: one('every'),
     tapStrengthMps2: one('strength'),
+    contactS: one('contact') / 1000,
     speedRpm: one('speed'),
     unbalanceMps2: one('unbalance'),
     coastS: one('coast'),

@@ -20,7 +20,7 @@ function samplesOf(query: string, durationS: number, actAtS = 0): readonly RigSa
   }
   return samples;
 }
-const QUIET = 'noise=0&ambient=0&jitter=0&handling=0&tilt=0';
+const QUIET = 'noise=0&ambient=0&jitter=0&handling=0&tilt=0&contact=0';
 
 describe('Oscillator', () => {
   it('decays by its logarithmic decrement per period (Thomson & Dahleh, eq. 2.7-3: 2 pi zeta / sqrt(1 - zeta²))', () => {
@@ -89,6 +89,16 @@ describe('PracticeRig', () => {
     const fitted = decayOf(z.slice(from), 60);
     expect(fitted.frequencyHz).toBeCloseTo(7.4 * Math.sqrt(1 - 0.012 ** 2), 3);
     expect(fitted.dampingRatio).toBeCloseTo(0.012, 4);
+  });
+
+  it('gives a contact the impulse of the blow, and a jolt that the sensor may see', () => {
+    const levelAfter = (contact: number) => {
+      const samples = samplesOf(`f=2&damping=1&taps=1&rate=400&contact=${contact}&${QUIET}`, 4);
+      return Math.max(...samples.filter(({ stampS }) => stampS > 1.6).map(({ z }) => Math.abs(z - 9.81)));
+    };
+    expect(levelAfter(10) / levelAfter(0)).toBeCloseTo(1, 2);
+    const jolt = samplesOf(`f=2&damping=1&taps=1&rate=400&contact=10&${QUIET}`, 1.6).map(({ z }) => z - 9.81);
+    expect(Math.max(...jolt)).toBeGreaterThan(3 * levelAfter(0));
   });
 
   it('rounds, clips, scatters, loses and delays as told', () => {
