@@ -20,11 +20,14 @@ const MOST_LINES = 3;
 const LEAST_LINE_SNR = 16;
 const LEAST_LINES_SNR = 40;
 /** Noise above this share of the band's power: the band is narrowed before its envelope is judged. */
-const NOISE_SHARE_LIMIT = 0.5;
+const NOISE_SHARE_LIMIT = 0.25;
 
-/** Below this share of signal in the band nothing is said; a noisy band with less than this share in a line is random. */
-const LEAST_SIGNAL_SHARE = 0.2;
+/** Share of the whole band's power in its line, by the fourth moment, below which the motion is random (Gaussian: 0, by chance 0.5). */
 const RANDOM_LINE_SHARE = 0.6;
+/** Below this share of signal in the band nothing is said. */
+const LEAST_SIGNAL_SHARE = 0.2;
+/** Independent looks (band width times duration) that a narrowed band must hold for its envelope to be judged. */
+const LEAST_LOOKS = 20;
 /** Where the floor is taken, as multiples of the frequency. */
 const FLOOR_PLACES = [0.72, 1, 1.28] as const;
 
@@ -75,7 +78,12 @@ export function bandNature(
       frequenciesHz: lines.offsetsHz.map((offset) => narrowest.envelope.centreHz + offset),
       linePowers: lines.powers,
     };
-  return { ...describe(widest), kind: kindOf(widest, wholeHz) };
+  const judged = looks.find((look) => look.noise <= NOISE_SHARE_LIMIT * look.power) ?? narrowest;
+  const kind = kindOf(judged, wholeHz, source.durationS);
+  // Random motion is described by the whole band, a line by the band that shows it.
+  return kind === 'weak' && isRandom(widest, wholeHz)
+    ? { ...describe(widest), kind: 'random' }
+    : { ...describe(kind === 'random' ? widest : judged), kind };
 }
 
 /** A band seen through one width. */
@@ -88,6 +96,8 @@ interface Look {
   readonly noise: number;
   readonly variation: number;
   readonly lineShare: number;
+  /** The same of all power in the band, noise included. */
+  readonly rawLineShare: number;
 }
 
 function lookAt(source: BandSource, floors: readonly number[], centreHz: number, halfWidthHz: number): Look {
@@ -109,6 +119,7 @@ function lookAt(source: BandSource, floors: readonly number[], centreHz: number,
     // Random power N beside a line of power A² makes a variation of sqrt(N/2A²), whichever direction it comes from.
     variation: Math.sqrt(along + across / (2 * signalPower)),
     lineShare: Math.min(1, (moments.power * moments.lineShare) / signalPower),
+    rawLineShare: moments.lineShare,
   };
 }
 
@@ -123,11 +134,20 @@ const describe = (look: Look): Omit<BandNature, 'kind'> => ({
   floorPerHz: look.noise / (4 * look.halfWidthHz),
 });
 
-/** Narrowed by a stronger neighbour, a band holds too few independent looks to tell random motion from a line. */
-function kindOf(look: Look, wholeHz: number): BandNature['kind'] {
-  const signalShare = 1 - look.noise / Math.max(look.power, 1e-12);
-  if (look.halfWidthHz < wholeHz || signalShare < LEAST_SIGNAL_SHARE) return 'weak';
-  if (signalShare < 1 - NOISE_SHARE_LIMIT) return look.lineShare < RANDOM_LINE_SHARE ? 'random' : 'weak';
+const isRandom = (look: Look, wholeHz: number): boolean =>
+  look.halfWidthHz >= wholeHz &&
+  look.noise < (1 - LEAST_SIGNAL_SHARE) * look.power &&
+  look.rawLineShare < RANDOM_LINE_SHARE;
+
+/** A narrowed band can only show a line that wanders within it; the rest of the motion is outside. */
+function kindOf(look: Look, wholeHz: number, durationS: number): BandNature['kind'] {
+  const isWhole = look.halfWidthHz >= wholeHz;
+  if (look.noise > NOISE_SHARE_LIMIT * look.power) return 'weak';
+  if (!isWhole) {
+    const isLine = look.variation < FORCED_BELOW && look.rawLineShare > RANDOM_LINE_SHARE;
+    return isLine && 2 * look.halfWidthHz * durationS >= LEAST_LOOKS ? 'wandering' : 'weak';
+  }
+  if (look.rawLineShare < RANDOM_LINE_SHARE) return 'random';
   if (look.variation < FORCED_BELOW) return 'wandering';
   return look.variation < RANDOM_ABOVE ? 'mixed' : 'random';
 }
