@@ -11,16 +11,20 @@ export function frequencyInterval(frequencyHz: number, spreadRatio: number): Int
   return [frequencyHz / (1 + spreadRatio), frequencyHz * (1 + spreadRatio)];
 }
 
+/** No structure has less (bells have more); below it an amplification would be a number without a meaning. Our own bound. */
+export const LEAST_DAMPING_RATIO = 1e-5;
+
 /**
  * 95 % interval of the damping ratio at a candidate frequency (a folded mode's damping belongs to where it appears). The low end
  * is that of a log-normal, so that it stays above zero however large the uncertainty.
  */
 export function dampingInterval(mode: Mode, candidateHz: number): Interval {
   const scale = mode.frequencyHz / candidateHz;
-  const relative = (STANDARD_DEVIATIONS_95 * mode.dampingRatioSd) / mode.dampingRatio;
+  const dampingRatio = Math.max(mode.dampingRatio, LEAST_DAMPING_RATIO);
+  const relative = (STANDARD_DEVIATIONS_95 * mode.dampingRatioSd) / dampingRatio;
   return [
-    mode.dampingRatio * Math.exp(-relative) * scale,
-    Math.min(1, mode.dampingRatio * (1 + relative) * scale),
+    Math.max(LEAST_DAMPING_RATIO, dampingRatio * Math.exp(-relative) * scale),
+    Math.max(LEAST_DAMPING_RATIO, Math.min(1, dampingRatio * (1 + relative) * scale)),
   ];
 }
 

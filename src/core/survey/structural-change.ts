@@ -19,8 +19,7 @@ function changedMode(mode: Mode, change: StructuralChange): Mode {
     frequencySdHz: mode.frequencySdHz * scale,
     dampingRatio: damping,
     // A damping that is aimed at has no uncertainty of measurement.
-    dampingRatioSd:
-      change.dampingRatio === undefined ? mode.dampingRatioSd * (damping / mode.dampingRatio) : 0,
+    dampingRatioSd: change.dampingRatio === undefined ? mode.dampingRatioSd / Math.sqrt(mass) : 0,
     fold: { ...mode.fold, candidatesHz: mode.fold.candidatesHz.map((candidateHz) => candidateHz * scale) },
   };
 }
