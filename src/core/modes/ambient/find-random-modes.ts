@@ -30,7 +30,7 @@ const SCAN_GAIN = 14;
 /** A mode is kept when its fit gains at least this log-likelihood: three parameters and the search for the place. */
 export const FIT_GAIN = 16;
 const MOST_MODES = 8;
-const MOST_LOOKS = 16;
+const MOST_LOOKS = 24;
 /** A mode nearer to a stronger one than this many summed half-widths is taken for a misfit of that one. */
 const APART_HALF_WIDTHS = 1.5;
 /** A mode this much weaker (density) than one whose fit band it lies in is taken for a misfit of its skirt. */
@@ -57,8 +57,12 @@ export function findRandomModes(spectra: RecordSpectra, bandHz: readonly [number
   const refused: Rise[] = [];
   for (let look = 0; look < MOST_LOOKS && found.length < MOST_MODES; look++) {
     const levels = whitened(spectra, total, found, first, last, axisCount);
-    const isTaken = (bin: number): boolean =>
-      refused.some((r) => Math.abs(r.bin - bin) <= Math.max(r.halfWidthBins, 2));
+    // A window refused is not looked at again, but a narrower peak within it may be.
+    const isTaken = (bin: number, half: number): boolean =>
+      refused.some(
+        (r) =>
+          Math.abs(r.scanBin - bin) <= Math.max(r.scanHalfWidthBins, 2) && 2 * half >= r.scanHalfWidthBins,
+      );
     const rise = strongestRise(levels, first, last, weight, isTaken);
     if (!rise || rise.logLikelihood < SCAN_GAIN) break;
     const next = withRise(spectra, found, rise, [first, last]);

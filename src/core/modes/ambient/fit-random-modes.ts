@@ -46,13 +46,15 @@ export interface BandData {
 const LEAST_DAMPING = 1e-4;
 const MOST_DAMPING = 0.35;
 const MOST_STEPS = 30;
+/** Prior of the slope of the floor: real backgrounds fall or rise by 6 dB an octave within a band, seldom more. */
+const FLOOR_SLOPE_SD = 2;
 /** The floor is not followed further down than e to this below its start: there it no longer shows. */
 const FLOOR_DEPTH = 6;
 /** Scoring ends when a step changes the cost by less than this. */
 const COST_TOLERANCE = 1e-4;
 
 interface Point {
-  /** Of each mode: ln f, ln zeta, ln peak; then ln floor, slope. */
+  /** Of each mode: ln f, ln zeta, ln peak; then ln floor, slope of the modes, slope of the floor. */
   readonly theta: Float64Array;
   readonly cost: number;
 }
@@ -63,14 +65,14 @@ export function fitRandomModes(
   starts: readonly RandomModeStart[],
   floorPerHz: number,
 ): RandomBandFit {
-  const size = 3 * starts.length + 2;
+  const size = 3 * starts.length + 3;
   const theta = new Float64Array(size);
   starts.forEach((mode, i) => {
     theta[3 * i] = Math.log(mode.frequencyHz);
     theta[3 * i + 1] = Math.log(mode.dampingRatio);
     theta[3 * i + 2] = Math.log(mode.peakPerHz);
   });
-  theta[size - 2] = Math.log(floorPerHz);
+  theta[size - 3] = Math.log(floorPerHz);
   const work = workspace(data, starts.length);
   let at: Point = { theta, cost: costAt(data, work, theta) };
   const leastFloor = Math.log(floorPerHz) - FLOOR_DEPTH;
@@ -101,6 +103,7 @@ interface Workspace {
   readonly density: Float64Array;
   readonly logRatio: Float64Array;
   readonly bend: Float64Array;
+  readonly floor: Float64Array;
 }
 
 function workspace(data: BandData, modeCount: number): Workspace {
@@ -110,18 +113,20 @@ function workspace(data: BandData, modeCount: number): Workspace {
   return {
     shapes: Array.from({ length: modeCount }, array),
     shifted: array(),
-    slopes: Array.from({ length: 3 * modeCount + 2 }, array),
+    slopes: Array.from({ length: 3 * modeCount + 3 }, array),
     density: array(),
     bend: array(),
+    floor: array(),
     logRatio: Float64Array.from({ length }, (_, i) => Math.log((data.first + i) / centre)),
   };
 }
 
 function fillDensity(data: BandData, work: Workspace, theta: Float64Array): void {
-  const { density, logRatio, shapes, bend } = work;
+  const { density, logRatio, shapes, bend, floor } = work;
   const modeCount = shapes.length;
-  const floor = Math.exp(theta[3 * modeCount] as number);
+  const level = Math.exp(theta[3 * modeCount] as number);
   const slope = theta[3 * modeCount + 1] as number;
+  const tilt = theta[3 * modeCount + 2] as number;
   density.fill(0);
   shapes.forEach((shape, i) => {
     const peak = Math.exp(theta[3 * i + 2] as number);
@@ -137,9 +142,9 @@ function fillDensity(data: BandData, work: Workspace, theta: Float64Array): void
       density[k] = (density[k] as number) + peak * (shape[k] as number);
   });
   for (let k = 0; k < density.length; k++) {
-    const factor = slope === 0 ? 1 : Math.exp(slope * (logRatio[k] as number));
-    bend[k] = factor;
-    density[k] = modeCount ? factor * (density[k] as number) + floor : factor * floor;
+    bend[k] = slope === 0 ? 1 : Math.exp(slope * (logRatio[k] as number));
+    floor[k] = level * Math.exp(tilt * (logRatio[k] as number));
+    density[k] = (bend[k] as number) * (density[k] as number) + (floor[k] as number);
   }
 }
 
@@ -150,9 +155,19 @@ function costAt(data: BandData, work: Workspace, theta: Float64Array): number {
     const m = work.density[k] as number;
     cost += Math.log(m) + (data.periodogram[data.first + k] as number) / m;
   }
-  const slope = theta[theta.length - 1] as number;
-  const prior = data.slopePriorSd > 0 ? 0.5 * (slope / data.slopePriorSd) ** 2 : 0;
+  let prior = 0;
+  priors(data, theta.length).forEach(
+    ({ index, sd }) => (prior += 0.5 * ((theta[index] as number) / sd) ** 2),
+  );
   return data.pieceCount * cost + prior;
+}
+
+/** Normal priors about 0 of the two slopes; a slope that is held gets a very narrow one. */
+function priors(data: BandData, size: number): { index: number; sd: number }[] {
+  return [
+    { index: size - 2, sd: Math.max(data.slopePriorSd, 1e-3) },
+    { index: size - 1, sd: FLOOR_SLOPE_SD },
+  ];
 }
 
 function scoreAndFisher(
@@ -164,8 +179,6 @@ function scoreAndFisher(
   const modeCount = work.shapes.length;
   fillDensity(data, work, theta);
   const { density, slopes, shapes, shifted, logRatio, bend } = work;
-  const slope = theta[size - 1] as number;
-  const floor = Math.exp(theta[size - 2] as number);
   for (let i = 0; i < modeCount; i++) {
     const peak = Math.exp(theta[3 * i + 2] as number);
     const shape = shapes[i] as Float64Array;
@@ -181,31 +194,31 @@ function scoreAndFisher(
       const out = slopes[3 * i + which] as Float64Array;
       for (let k = 0; k < out.length; k++)
         out[k] =
-          (peak *
-            Math.exp(slope * (logRatio[k] as number)) *
-            ((shifted[k] as number) - (shape[k] as number))) /
+          (peak * (bend[k] as number) * ((shifted[k] as number) - (shape[k] as number))) /
           (h * (density[k] as number));
     }
     const out = slopes[3 * i + 2] as Float64Array;
     for (let k = 0; k < out.length; k++)
       out[k] = (peak * (bend[k] as number) * (shape[k] as number)) / (density[k] as number);
   }
-  const onFloor = slopes[size - 2] as Float64Array;
-  const onSlope = slopes[size - 1] as Float64Array;
+  const onFloor = slopes[size - 3] as Float64Array;
+  const onSlope = slopes[size - 2] as Float64Array;
+  const onTilt = slopes[size - 1] as Float64Array;
   for (let k = 0; k < density.length; k++) {
-    onFloor[k] = modeCount ? floor / (density[k] as number) : 1;
-    const bent = modeCount ? 1 - floor / (density[k] as number) : 1;
-    onSlope[k] = data.slopePriorSd > 0 ? bent * (logRatio[k] as number) : 0;
+    const share = (work.floor[k] as number) / (density[k] as number);
+    onFloor[k] = share;
+    onSlope[k] = (1 - share) * (logRatio[k] as number);
+    onTilt[k] = share * (logRatio[k] as number);
   }
-  return accumulated(data, work, slope, size);
+  return accumulated(data, work, theta);
 }
 
 function accumulated(
   data: BandData,
   work: Workspace,
-  slope: number,
-  size: number,
+  theta: Float64Array,
 ): { score: Float64Array; fisher: Float64Array } {
+  const size = theta.length;
   const score = new Float64Array(size);
   const fisher = new Float64Array(size * size);
   const { density, slopes } = work;
@@ -223,11 +236,10 @@ function accumulated(
       fisher[j * size + i] = data.pieceCount * product;
     }
   }
-  const last = size - 1;
-  if (data.slopePriorSd > 0) {
-    score[last] = (score[last] as number) - slope / data.slopePriorSd ** 2;
-    fisher[last * size + last] = (fisher[last * size + last] as number) + 1 / data.slopePriorSd ** 2;
-  } else fisher[last * size + last] = 1;
+  for (const { index, sd } of priors(data, size)) {
+    score[index] = (score[index] as number) - (theta[index] as number) / sd ** 2;
+    fisher[index * size + index] = (fisher[index * size + index] as number) + 1 / sd ** 2;
+  }
   return { score, fisher };
 }
 
@@ -251,10 +263,10 @@ function stepped(
     for (let j = 0; j < size; j++) step += (inverse[i * size + j] as number) * (score[j] as number);
     next[i] = (next[i] as number) + Math.max(-1, Math.min(1, step));
   }
-  next[size - 2] = Math.max(leastFloor, next[size - 2] as number);
+  next[size - 3] = Math.max(leastFloor, next[size - 3] as number);
   const lowHz = data.first * data.piece.stepHz;
   const highHz = data.last * data.piece.stepHz;
-  for (let i = 0; 3 * i + 2 < size - 1; i++) {
+  for (let i = 0; 3 * i + 3 < size; i++) {
     next[3 * i] = Math.min(Math.log(highHz), Math.max(Math.log(lowHz), next[3 * i] as number));
     next[3 * i + 1] = Math.min(
       Math.log(MOST_DAMPING),
@@ -288,8 +300,8 @@ function described(
   });
   return {
     modes,
-    floorPerHz: Math.exp(at.theta[size - 2] as number),
-    slope: at.theta[size - 1] as number,
+    floorPerHz: Math.exp(at.theta[size - 3] as number),
+    slope: at.theta[size - 2] as number,
     cost: at.cost,
     converged,
   };

@@ -17,6 +17,9 @@ const WIDEST_SHARE = 0.12;
 export interface Rise {
   readonly bin: number;
   readonly halfWidthBins: number;
+  /** The window of the scan, before it was shrunk to the peak. */
+  readonly scanBin: number;
+  readonly scanHalfWidthBins: number;
   /** Mean level over the background. */
   readonly ratio: number;
   readonly logLikelihood: number;
@@ -53,14 +56,14 @@ export function background(values: Float64Array, first: number, last: number, st
  * Strongest rise of values over their background.
  * @param levels ordinate over background, mean 1 where nothing stands out
  * @param weight independent exponential ordinates per bin (axes times pieces)
- * @param isTaken bins that may not be the centre of the rise
+ * @param isTaken windows that have been looked at
  */
 export function strongestRise(
   levels: Float64Array,
   first: number,
   last: number,
   weight: number,
-  isTaken: (bin: number) => boolean,
+  isTaken: (bin: number, halfWidthBins: number) => boolean,
 ): Rise | undefined {
   const sums = new Float64Array(last + 2);
   for (let k = first; k <= last; k++) sums[k + 1] = (sums[k] as number) + (levels[k] as number);
@@ -74,7 +77,8 @@ export function strongestRise(
       if (!(ratio > 1)) continue;
       const logLikelihood = weight * n * (ratio - 1 - Math.log(ratio));
       if (best && logLikelihood <= best.logLikelihood) continue;
-      if (!isTaken(bin)) best = { bin, halfWidthBins: half, ratio, logLikelihood };
+      if (!isTaken(bin, half))
+        best = { bin, halfWidthBins: half, scanBin: bin, scanHalfWidthBins: half, ratio, logLikelihood };
     }
   }
   return best && sharpened(best, sums, first, last);
