@@ -14,12 +14,24 @@ export interface Component {
   readonly angularRadPerS: number;
   /** Decay rate, 1/s: damping ratio times undamped angular frequency. */
   readonly decayPerS: number;
+  /** Change with amplitude; frequency and decay above are then those of small motion. */
+  readonly softening?: ComponentSoftening;
+}
+
+/** Frequency w·(1 + frequencySlope·A) and decay a + decaySlope·A at amplitude A. */
+export interface ComponentSoftening {
+  /** Relative, per m/s². */
+  readonly frequencySlopePerMps2: number;
+  /** 1/s per m/s². */
+  readonly decaySlopePerMps2: number;
 }
 
 /** Samples start <= i < end of one free decay. */
 export interface Segment {
   readonly start: number;
   readonly end: number;
+  /** Amplitude at the start, m/s², of a component that changes with amplitude. */
+  readonly amplitudeMps2?: number;
 }
 
 /** Accelerations about gravity, m/s², one array per axis on common time stamps, s. */
@@ -37,14 +49,40 @@ export const DRIFT_COLUMNS = 2;
 
 export const linearColumnCount = (componentCount: number): number => 2 * componentCount + DRIFT_COLUMNS;
 
-/** Nonlinear parameters: frequency and decay of each mode, frequency of each tone. */
+/** Nonlinear parameters: frequency and decay of each mode and their slopes if it has them; frequency of each tone. */
+const parametersOf = (component: Component): number =>
+  component.kind === 'tone' ? 1 : component.softening === undefined ? 2 : 4;
+
 export const parameterCount = (components: readonly Component[]): number =>
-  components.reduce((count, c) => count + (c.kind === 'mode' ? 2 : 1), 0);
+  components.reduce((count, c) => count + parametersOf(c), 0);
+
+const softenedCount = (components: readonly Component[]): number =>
+  components.reduce((count, c) => count + (c.softening === undefined ? 0 : 1), 0);
+
+/** Integral of the amplitude since the start, m/s² times s, for a start amplitude of one. */
+const amplitudeIntegral = (component: Component, tau: number): number =>
+  (1 - Math.exp(-component.decayPerS * tau)) / Math.max(component.decayPerS, 1e-9);
+
+/** Phase, rad, and logarithm of the envelope of a component, times since the segment's start. */
+export function courseOf(
+  component: Component,
+  tau: number,
+  phaseTau: number,
+  amplitudeMps2: number,
+): { phase: number; fall: number } {
+  const { angularRadPerS: w, decayPerS: a, softening } = component;
+  if (softening === undefined) return { phase: w * phaseTau, fall: -a * tau };
+  const integral = amplitudeMps2 * amplitudeIntegral(component, tau);
+  return {
+    phase: w * (phaseTau + softening.frequencySlopePerMps2 * integral),
+    fall: -a * tau - softening.decaySlopePerMps2 * integral,
+  };
+}
 
 /** Index of a component's first parameter. */
 export function parameterIndex(components: readonly Component[], k: number): number {
   let at = 0;
-  for (let j = 0; j < k; j++) at += components[j]!.kind === 'mode' ? 2 : 1;
+  for (let j = 0; j < k; j++) at += parametersOf(components[j]!);
   return at;
 }
 
@@ -83,27 +121,34 @@ function segmentMoments(
 ): Moments {
   const m = components.length;
   const p = linearColumnCount(m);
-  const q = p + 2 * m;
+  const q = p + 2 * m + 2 * softenedCount(components);
   const gram = new Float64Array(q * q);
   const cross = new Float64Array(axes.length * q);
   const square = new Float64Array(axes.length);
   const column = new Float64Array(q);
   const { timeS, phaseTimeS = timeS } = signal;
+  const { amplitudeMps2 = 0 } = segment;
   const origin = timeS[segment.start]!;
   const span = Math.max(timeS[segment.end - 1]! - origin, 1e-9);
   for (let i = segment.start; i < segment.end; i++) {
     const tau = timeS[i]! - origin;
     const phaseTau = phaseTimeS[i]! - origin;
+    let soft = p + 2 * m;
     for (let k = 0; k < m; k++) {
       const component = components[k]!;
-      const envelope = component.decayPerS === 0 ? 1 : Math.exp(-component.decayPerS * tau);
-      const phase = component.angularRadPerS * phaseTau;
+      const { phase, fall } = courseOf(component, tau, phaseTau, amplitudeMps2);
+      const envelope = fall === 0 ? 1 : Math.exp(fall);
       const c = envelope * Math.cos(phase);
       const s = envelope * Math.sin(phase);
       column[2 * k] = c;
       column[2 * k + 1] = s;
       column[p + 2 * k] = tau * c;
       column[p + 2 * k + 1] = tau * s;
+      if (component.softening !== undefined) {
+        const integral = amplitudeMps2 * amplitudeIntegral(component, tau);
+        column[soft++] = integral * c;
+        column[soft++] = integral * s;
+      }
     }
     column[2 * m] = 1;
     column[2 * m + 1] = tau / span - 0.5;
@@ -184,7 +229,7 @@ function addProjected(
 ): void {
   const m = components.length;
   const p = linearColumnCount(m);
-  const q = p + 2 * m;
+  const q = p + 2 * m + 2 * softenedCount(components);
   const lower = moments.gram;
   choleskyInPlace(lower, q);
   const np = fit.gradient.length;
@@ -203,12 +248,12 @@ function addProjected(
     for (let i = 0; i < np; i++) {
       const ji = jacobian[i]!;
       let g = 0;
-      for (let r = 0; r < 2 * m; r++) g += ji[r]! * v[p + r]!;
+      for (let r = 0; r < q - p; r++) g += ji[r]! * v[p + r]!;
       fit.gradient[i]! += w * g;
       for (let j = 0; j <= i; j++) {
         const jj = jacobian[j]!;
         let h = 0;
-        for (let r = 0; r < 2 * m; r++) h += ji[r]! * jj[r]!;
+        for (let r = 0; r < q - p; r++) h += ji[r]! * jj[r]!;
         fit.curvature[i * np + j]! += w * h;
         if (i !== j) fit.curvature[j * np + i]! += w * h;
       }
@@ -243,7 +288,7 @@ function derivativeFactors(
   q: number,
   p: number,
 ): Float64Array[] {
-  const size = 2 * components.length;
+  const size = q - p;
   const factors: Float64Array[] = [];
   const push = (first: number, onCosine: number, onSine: number): void => {
     const factor = new Float64Array(size);
@@ -254,11 +299,17 @@ function derivativeFactors(
     }
     factors.push(factor);
   };
+  let soft = 2 * components.length;
   components.forEach((component, k) => {
     const c = amplitudes[2 * k]!;
     const s = amplitudes[2 * k + 1]!;
     push(2 * k, s, -c);
     if (component.kind === 'mode') push(2 * k, -c, -s);
+    if (component.softening === undefined) return;
+    const { angularRadPerS } = component;
+    push(soft, angularRadPerS * s, -angularRadPerS * c);
+    push(soft, -c, -s);
+    soft += 2;
   });
   return factors;
 }

@@ -140,7 +140,13 @@ function moved(components: readonly Component[], change: Float64Array): Componen
       Math.min(Math.max(decay, component.decayPerS / 4), component.decayPerS * 4),
       SMALLEST_DECAY_RATIO * angular,
     );
-    return { ...component, angularRadPerS, decayPerS };
+    if (component.softening === undefined) return { ...component, angularRadPerS, decayPerS };
+    const { frequencySlopePerMps2, decaySlopePerMps2 } = component.softening;
+    const softening = {
+      frequencySlopePerMps2: frequencySlopePerMps2 + change[at++]!,
+      decaySlopePerMps2: decaySlopePerMps2 + change[at++]!,
+    };
+    return { ...component, angularRadPerS, decayPerS, softening };
   });
 }
 

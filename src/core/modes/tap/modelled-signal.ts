@@ -1,3 +1,4 @@
+import { courseOf } from './decay-model.ts';
 import type { Component, DecaySignal, Segment } from './decay-model.ts';
 import type { DecayFit } from './fit-decays.ts';
 
@@ -12,7 +13,15 @@ export function residuals(signal: DecaySignal, segments: readonly Segment[], fit
     const origin = signal.timeS[segment.start]!;
     const span = Math.max(signal.timeS[segment.end - 1]! - origin, 1e-9);
     for (let i = segment.start; i < segment.end; i++) {
-      fillColumns(fit.components, signal.timeS[i]! - origin, phaseTimeS[i]! - origin, span, column);
+      fillColumns(
+        fit.components,
+        signal.timeS[i]! - origin,
+        phaseTimeS[i]! - origin,
+        segment.amplitudeMps2 ?? 0,
+        column,
+      );
+      column[2 * m] = 1;
+      column[2 * m + 1] = (signal.timeS[i]! - origin) / span - 0.5;
       for (let a = 0; a < left.length; a++) {
         const c = coefficients[a]!;
         let value = 0;
@@ -28,18 +37,15 @@ function fillColumns(
   components: readonly Component[],
   tau: number,
   phaseTau: number,
-  span: number,
+  amplitudeMps2: number,
   column: Float64Array,
 ): void {
-  const m = components.length;
-  for (let k = 0; k < m; k++) {
-    const { angularRadPerS, decayPerS } = components[k]!;
-    const envelope = Math.exp(-decayPerS * tau);
-    column[2 * k] = envelope * Math.cos(angularRadPerS * phaseTau);
-    column[2 * k + 1] = envelope * Math.sin(angularRadPerS * phaseTau);
+  for (let k = 0; k < components.length; k++) {
+    const { phase, fall } = courseOf(components[k]!, tau, phaseTau, amplitudeMps2);
+    const envelope = Math.exp(fall);
+    column[2 * k] = envelope * Math.cos(phase);
+    column[2 * k + 1] = envelope * Math.sin(phase);
   }
-  column[2 * m] = 1;
-  column[2 * m + 1] = tau / span - 0.5;
 }
 
 /** One decay of component `k` along a direction: its model plus what the fit left; other components taken off. */
@@ -54,7 +60,7 @@ export function decayAlone(
 ): Float64Array {
   const { start, end } = segments[index]!;
   const { coefficients } = fit.evaluation.segments[index]!;
-  const { angularRadPerS, decayPerS } = fit.components[k]!;
+  const { amplitudeMps2 = 0 } = segments[index]!;
   const origin = signal.timeS[start]!;
   const { phaseTimeS = signal.timeS } = signal;
   const along = (values: readonly number[]): number =>
@@ -63,8 +69,8 @@ export function decayAlone(
   const onSine = along(coefficients.map((c) => c[2 * k + 1]!));
   return Float64Array.from({ length: end - start }, (_, i) => {
     const tau = signal.timeS[start + i]! - origin;
-    const phase = angularRadPerS * (phaseTimeS[start + i]! - origin);
-    const model = Math.exp(-decayPerS * tau) * (onCosine * Math.cos(phase) + onSine * Math.sin(phase));
+    const { phase, fall } = courseOf(fit.components[k]!, tau, phaseTimeS[start + i]! - origin, amplitudeMps2);
+    const model = Math.exp(fall) * (onCosine * Math.cos(phase) + onSine * Math.sin(phase));
     return model + along(left.map((l) => l[start + i]!));
   });
 }

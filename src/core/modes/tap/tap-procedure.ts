@@ -1,4 +1,4 @@
-import type { AnalysisSettings, DampingCheck, Mode, Tone } from '../../model/analysis.ts';
+import type { AnalysisSettings, DampingCheck, Mode, Softening, Tone } from '../../model/analysis.ts';
 import type { Doubt, DoubtCode } from '../../model/doubt.ts';
 import { failure, success, type Outcome } from '../../model/outcome.ts';
 import type { RingDown } from '../../model/pictures.ts';
@@ -7,7 +7,7 @@ import { median } from '../../signal/sample-counter.ts';
 import { foldOfMode, foldOfTone, signedCandidatesHz } from '../fold.ts';
 import type { ProcedureAnswer } from '../procedure-answer.ts';
 import { linearColumnCount, parameterIndex } from './decay-model.ts';
-import type { DecaySignal } from './decay-model.ts';
+import type { Component, DecaySignal } from './decay-model.ts';
 import { TAP_LIMIT } from './find-taps.ts';
 import type { FreeDecay } from './find-taps.ts';
 import type { DecayFit } from './fit-decays.ts';
@@ -23,6 +23,7 @@ import {
 import type { ModeEstimate } from './mode-estimate.ts';
 import { decayAlone, residuals } from './modelled-signal.ts';
 import { fitRounded, isStepCoarse } from './rounding-likelihood.ts';
+import { softenedFit } from './softening.ts';
 import { searchRingDowns } from './ring-down-search.ts';
 import type { RingDownSearch } from './ring-down-state.ts';
 
@@ -116,9 +117,7 @@ function answerOf(
   search: RingDownSearch,
 ): Outcome<ProcedureAnswer> {
   if (search.tapCount >= TAP_LIMIT) return failure('no-decay', { tapCount: search.tapCount });
-  const decays = search.fitted;
-  const isRounded = isStepCoarse(search.fit.variance, conditioned.facts.stepMps2);
-  const fit = isRounded ? fitRounded(signal, decays, search.fit, conditioned.facts.stepMps2) : search.fit;
+  const { decays, fit, isRounded } = finalFit(signal, search, conditioned.facts.stepMps2);
   const left = residuals(signal, decays, fit);
   const largest = Math.max(...signal.y.map((y) => y.reduce((m, v) => Math.max(m, Math.abs(v)), 0)));
   const modeIndexes = fit.components.flatMap((c, k) => (c.kind === 'mode' ? [k] : []));
@@ -148,6 +147,18 @@ function answerOf(
     doubts: tapDoubts(search),
     ringDowns: ringDownPictures(signal, decays, fit, left, estimates[0]!.k, modes[0]!.direction),
   });
+}
+
+/** The search's fit, refined by what the record calls for: the rounding's own likelihood, or change with amplitude. */
+function finalFit(
+  signal: DecaySignal,
+  search: RingDownSearch,
+  stepMps2: readonly number[],
+): { decays: readonly FreeDecay[]; fit: DecayFit; isRounded: boolean } {
+  const { fit, fitted: decays } = search;
+  if (isStepCoarse(fit.variance, stepMps2))
+    return { decays, fit: fitRounded(signal, decays, fit, stepMps2), isRounded: true };
+  return { ...(softenedFit(signal, decays, fit) ?? { decays, fit }), isRounded: false };
 }
 
 /** The part of a decay that is looked at, in time constants of the strongest mode: later there is mostly noise. */
@@ -214,6 +225,8 @@ function modeOf(context: ModeContext): Mode {
   const checks = crossChecks(context);
   const doubts: DoubtCode[] = [];
   if (estimate.scatters) doubts.push('tap-scatter');
+  const softening = softeningOf(fit.components[k]!);
+  if (softening !== undefined) doubts.push('amplitude-dependent');
   if ('refusal' in checks.halfPower) doubts.push('half-power-refused');
   if (disagrees(checks.halfPower, estimate) || disagrees(checks.logDecrement, estimate))
     doubts.push('methods-disagree');
@@ -234,9 +247,16 @@ function modeOf(context: ModeContext): Mode {
     method: context.isRounded ? 'ring-down-fit-rounding-aware' : 'ring-down-fit',
     eventCount: Math.max(decays.filter((_, s) => amplitudeAtStart(fit, s, k) > 0).length, 1),
     ...checks,
+    ...(softening === undefined ? {} : { softening }),
     fold,
     doubts,
   };
+}
+
+function softeningOf(component: Component): Softening | undefined {
+  if (component.softening === undefined) return undefined;
+  const { frequencySlopePerMps2, decaySlopePerMps2 } = component.softening;
+  return { frequencySlopePerMps2, dampingSlopePerMps2: decaySlopePerMps2 / component.angularRadPerS };
 }
 
 /** The mode with what the fit left, along its direction, over the whole record; zero between the decays. */
