@@ -48,6 +48,8 @@ export interface App {
 export interface Take extends TakeFlow {
   /** Opens the Take screen for a spot, or for none. */
   prepare(where: PlaceIds, procedure?: Procedure): Promise<void>;
+  /** Names the spot of what is about to be recorded; its kind comes along. */
+  placeAt(where: PlaceIds): Promise<void>;
   /** Same spot, same procedure. */
   again(reading: PlaceIds & { readonly procedure: Procedure }): void;
   /** Another spot, the same procedure. */
@@ -134,6 +136,11 @@ export async function createApp(parts: AppParts): Promise<App> {
       const plan = planTake(procedure ?? now.lastProcedure, known, now.mounting, practice);
       const kind = known.place ? {} : { spotKind: now.lastSpotKind ?? 'other' };
       flow.plan.set(replan(plan, kind));
+    },
+    async placeAt(where) {
+      const known = await places.whereabouts(where);
+      const plan = { ...flow.plan.get(), where: known };
+      flow.plan.set(known.place ? replan(plan, { spotKind: known.place.kind }) : plan);
     },
     again: ({ spot, procedure }) => navigation.go({ screen: 'take', procedure, ...(spot ? { spot } : {}) }),
     next: ({ procedure }) => navigation.go({ screen: 'take', procedure }),

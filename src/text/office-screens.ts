@@ -169,6 +169,7 @@ const english = {
       traffic: 'Road or rail nearby',
       band: 'Any frequency you know',
     },
+    whichKind: 'What shakes it?',
     more: 'Name, place and more',
     name: 'Name',
     nameNote: (kind: string) => `Left empty it is called “${kind}”.`,

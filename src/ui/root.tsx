@@ -13,6 +13,7 @@ import { TakeScreen } from './screens/take/take-screen.tsx';
 import { Shell } from './shell.tsx';
 import { applyTheme } from './theme.ts';
 import { useLive } from './use-live.ts';
+import { useMedia } from './use-media.ts';
 import { useScreenTitle } from './use-screen-title.ts';
 
 const office = () => import('./screens/office.tsx');
@@ -24,7 +25,8 @@ export function Root({ app }: { readonly app: App }) {
   useTheme(theme);
   useScreenTitle(route);
   useEffect(() => scrollTo(0, 0), [app.navigation.href(route)]);
-  const list = listFor(app, route);
+  const isWide = useMedia('(min-width: 900px)');
+  const list = isWide ? listFor(app, route) : undefined;
   return (
     <Shell app={app} route={route} bare={route.screen === 'take'} {...(list ? { list } : {})}>
       <Boundary key={app.navigation.href(route)} onError={app.noteError}>
@@ -71,11 +73,6 @@ const LISTS: Partial<Record<Route['screen'], ListName>> = {
 };
 
 function useTheme(theme: Theme): void {
-  useEffect(() => {
-    const wish = matchMedia('(prefers-color-scheme: dark)');
-    const apply = () => applyTheme(theme, wish.matches);
-    apply();
-    wish.addEventListener('change', apply);
-    return () => wish.removeEventListener('change', apply);
-  }, [theme]);
+  const systemIsDark = useMedia('(prefers-color-scheme: dark)');
+  useEffect(() => applyTheme(theme, systemIsDark), [theme, systemIsDark]);
 }

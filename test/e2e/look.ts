@@ -4,7 +4,7 @@
  */
 import { mkdirSync } from 'node:fs';
 import { launchBrowser, serveApp } from '../support/browser.ts';
-import { furnish, type Furnished } from '../support/furnish.ts';
+import { furnish, screenHashes } from '../support/furnish.ts';
 
 const SIZES = [
   { width: 360, height: 740 },
@@ -13,33 +13,6 @@ const SIZES = [
 ] as const;
 const THEMES = ['light', 'dark', 'sunlight'] as const;
 const FOLDER = 'look';
-
-/** Screens by name and hash; a hash of `undefined` is taken while furnishing. */
-const screensOf = (ids: Furnished): Readonly<Record<string, string>> => ({
-  start: '#/',
-  take: '#/take',
-  reading: `#/reading/${ids.reading}`,
-  readings: '#/readings',
-  trash: '#/readings?trash=1',
-  compare: `#/compare/${ids.earlier}/${ids.reading}`,
-  assets: '#/assets',
-  site: `#/site/${ids.site}`,
-  asset: `#/asset/${ids.asset}`,
-  spot: `#/spot/${ids.spot}`,
-  series: `#/series/${ids.spot}`,
-  sources: '#/sources',
-  source: `#/source/${ids.source}`,
-  'source-new': '#/source/new?kind=wind',
-  'hand-over': '#/hand-over',
-  phone: '#/phone',
-  'phone-check': '#/phone/check',
-  'phone-storage': '#/phone/storage',
-  'phone-about': '#/phone/about',
-  'phone-privacy': '#/phone/privacy',
-  'phone-cautions': '#/phone/cautions',
-  pace: '#/pace?hz=7.4',
-  lost: '#/nowhere',
-});
 
 const wanted = process.argv[2];
 const started = Date.now();
@@ -57,11 +30,11 @@ const ids = await furnish(page, app.url, async (name) => {
   if (!wanted || name.includes(wanted)) await shoot(name, 'light', SIZES[0].width, false);
 });
 let count = 0;
-for (const [name, hash] of Object.entries(screensOf(ids))) {
+for (const [name, hash] of Object.entries(screenHashes)) {
   if (wanted && !name.includes(wanted)) continue;
   for (const size of SIZES) {
     await page.setViewportSize(size);
-    await page.goto(`${app.url}${hash}`);
+    await page.goto(`${app.url}${hash(ids)}`);
     await page.getByRole('heading', { level: 1 }).first().waitFor();
     await page.waitForTimeout(name === 'reading' ? 900 : 250);
     for (const theme of THEMES) {

@@ -12,11 +12,41 @@ export interface Furnished {
   readonly earlier: string;
 }
 
+/** Every screen that an address leads to. */
+export const screenHashes = {
+  start: () => '#/',
+  take: () => '#/take',
+  reading: (ids: Furnished) => `#/reading/${ids.reading}`,
+  readings: () => '#/readings',
+  trash: () => '#/readings?trash=1',
+  compare: (ids: Furnished) => `#/compare/${ids.earlier}/${ids.reading}`,
+  assets: () => '#/assets',
+  site: (ids: Furnished) => `#/site/${ids.site}`,
+  asset: (ids: Furnished) => `#/asset/${ids.asset}`,
+  spot: (ids: Furnished) => `#/spot/${ids.spot}`,
+  series: (ids: Furnished) => `#/series/${ids.spot}`,
+  sources: () => '#/sources',
+  source: (ids: Furnished) => `#/source/${ids.source}`,
+  'source-new': () => '#/source/new?kind=wind',
+  'source-kind': (ids: Furnished) => `#/source/new?reading=${ids.reading}`,
+  'hand-over': () => '#/hand-over',
+  phone: () => '#/phone',
+  'phone-check': () => '#/phone/check',
+  'phone-storage': () => '#/phone/storage',
+  'phone-about': () => '#/phone/about',
+  'phone-privacy': () => '#/phone/privacy',
+  'phone-cautions': () => '#/phone/cautions',
+  'phone-licences': () => '#/phone/licences',
+  'phone-log': () => '#/phone/log',
+  pace: () => '#/pace?hz=7.4',
+  lost: () => '#/nowhere',
+} as const satisfies Readonly<Record<string, (ids: Furnished) => string>>;
+
 /** Last part of the present hash. */
 const idInAddress = (page: Page): string => new URL(page.url()).hash.split('/').at(-1) ?? '';
 
 /** Simulated time runs this many times faster than the clock. */
-const PACE = 4;
+const PACE = 10;
 
 /** @param onState called with a name whenever a state is on screen that no address leads to. */
 export async function furnish(

@@ -57,6 +57,11 @@ export function ReadingsScreen({ app, trashed }: { readonly app: App; readonly t
     >
       <TextField type="search" label={text.search} value={search} onInput={setSearch} />
       {isSelecting && (
+        <p class="note" role="status">
+          {text.selected(selected.size)}
+        </p>
+      )}
+      {isSelecting && (
         <CheckField
           label={text.selectAll}
           checked={readings !== undefined && readings.length > 0 && selected.size === readings.length}

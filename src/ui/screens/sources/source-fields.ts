@@ -74,5 +74,6 @@ export const HAS_KNOWN_BY: readonly SourceKind[] = ['machine', 'belt', 'mains', 
 export const isFirst = (field: SourceField): boolean =>
   (field.type === 'measure' && field.isNeeded === true) ||
   (field.type === 'choice' && field.values[0] !== '') ||
+  field.key === 'variableSpeed' ||
   field.key === 'bladeCount' ||
   field.key === 'paceHz';

@@ -19,6 +19,7 @@ import { LostScreen } from '../lost-screen.tsx';
 import { ForcingLadder } from './forcing-ladder.tsx';
 import { draftToData, emptyDraft, sourceToDraft, type SourceDraft } from './source-draft.ts';
 import { HAS_KNOWN_BY, isFirst, SOURCE_FIELDS, type SourceField } from './source-fields.ts';
+import { KindLinks } from './sources-screen.tsx';
 import { SourceFieldInput } from './source-field-input.tsx';
 
 const text = officeText.sources;
@@ -36,9 +37,29 @@ export function SourceScreen({ app, route }: { readonly app: App; readonly route
     },
     [route.id],
   );
+  if (route.id === 'new' && !route.kind) return <KindStep app={app} route={route} />;
   if (!loaded) return null;
   if (route.id !== 'new' && !loaded.known) return <LostScreen app={app} />;
-  return <SourceForm key={route.id} app={app} route={route} known={loaded.known} place={loaded.place} />;
+  return (
+    <SourceForm
+      key={`${route.id} ${route.kind}`}
+      app={app}
+      route={route}
+      known={loaded.known}
+      place={loaded.place}
+    />
+  );
+}
+
+function KindStep({ app, route }: { readonly app: App; readonly route: SourceRoute }) {
+  const { reading } = route;
+  const back = () =>
+    app.navigation.back(reading ? { screen: 'reading', id: reading } : { screen: 'sources' });
+  return (
+    <Page title={text.whichKind} back={{ label: screenText.common.back, onClick: back }}>
+      <KindLinks app={app} {...(reading ? { reading } : {})} />
+    </Page>
+  );
 }
 
 const placeKey = (place: { readonly asset?: string; readonly site?: string }) =>

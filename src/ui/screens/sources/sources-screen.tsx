@@ -20,25 +20,43 @@ export function SourcesScreen({ app }: { readonly app: App }) {
       {sources && sources.length > 0 && <SourceRows app={app} sources={sources} />}
       <section class="stack">
         <h2>{text.add}</h2>
-        <ul class={styles.kinds}>
-          {SOURCE_KINDS.map((kind) => (
-            <li key={kind}>
-              <a class={styles.kind} href={app.navigation.href({ screen: 'source', id: 'new', kind })}>
-                <IconAdd />
-                <span>
-                  <strong>{capital(sourceKindName(kind))}</strong>
-                  <span class="note">{text.kindNotes[kind]}</span>
-                </span>
-              </a>
-            </li>
-          ))}
-        </ul>
+        <KindLinks app={app} />
       </section>
     </Page>
   );
 }
 
 const capital = (words: string) => words.charAt(0).toUpperCase() + words.slice(1);
+
+/** Kinds of sources to add; for a reading the choice takes the place of this step, so that the way back leads to it. */
+export function KindLinks({ app, reading }: { readonly app: App; readonly reading?: string }) {
+  return (
+    <ul class={styles.kinds}>
+      {SOURCE_KINDS.map((kind) => {
+        const route = { screen: 'source', id: 'new', kind, ...(reading ? { reading } : {}) } as const;
+        return (
+          <li key={kind}>
+            <a
+              class={styles.kind}
+              href={app.navigation.href(route)}
+              onClick={(event) => {
+                if (!reading) return;
+                event.preventDefault();
+                app.navigation.replace(route);
+              }}
+            >
+              <IconAdd />
+              <span>
+                <strong>{capital(sourceKindName(kind))}</strong>
+                <span class="note">{text.kindNotes[kind]}</span>
+              </span>
+            </a>
+          </li>
+        );
+      })}
+    </ul>
+  );
+}
 
 export function SourceRows(props: {
   readonly app: App;

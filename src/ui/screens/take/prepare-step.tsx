@@ -12,6 +12,7 @@ import { Choice } from '../../components/choice.tsx';
 import { Dialog } from '../../components/dialog.tsx';
 import { Page } from '../../components/page.tsx';
 import { PlacementDrawing } from '../../components/placement-drawing.tsx';
+import { Later } from '../../later.tsx';
 import { useLive } from '../../use-live.ts';
 import { CautionDialog } from './caution-dialog.tsx';
 import { CircumstancesForm } from './circumstances-form.tsx';
@@ -22,7 +23,7 @@ const text = screenText.take;
 export function PrepareStep({ app, onLeave }: { readonly app: App; readonly onLeave: () => void }) {
   const plan = useLive(app.take.plan);
   const settings = useLive(app.settings);
-  const [open, setOpen] = useState<'kind' | 'procedure' | 'circumstances' | 'cautions'>();
+  const [open, setOpen] = useState<'spot' | 'kind' | 'procedure' | 'circumstances' | 'cautions'>();
   const close = () => setOpen(undefined);
   const change = (next: TakePlan) => app.take.plan.set(next);
   const cautions = unseenCautions(plan, settings.cautionsSeen, app.today());
@@ -38,15 +39,12 @@ export function PrepareStep({ app, onLeave }: { readonly app: App; readonly onLe
   };
   if (!isKindKnown) return <KindStep onChoose={chooseKind} onLeave={onLeave} />;
   return (
-    <Page
-      over={whereText(plan)}
-      title={text.howToPlace[plan.spotKind]}
-      back={{ label: text.leave, onClick: onLeave }}
-    >
+    <Page title={text.howToPlace[plan.spotKind]} back={{ label: text.leave, onClick: onLeave }}>
       <PlacementDrawing kind={plan.spotKind} />
       {plan.procedure === 'tap' && <p class="quiet">{text.tapHow[plan.spotKind]}</p>}
       {plan.procedure !== 'tap' && <p class="quiet">{text.settledNote[plan.procedure]}</p>}
       <ul class={styles.settings}>
+        <Setting name={text.spot} value={whereText(plan)} onClick={() => setOpen('spot')} />
         <Setting
           name={text.procedureLegend}
           value={screenText.procedures[plan.procedure].name}
@@ -68,6 +66,21 @@ export function PrepareStep({ app, onLeave }: { readonly app: App; readonly onLe
           {plan.practice ? text.beginPractice : text.begin}
         </Button>
       </BottomBar>
+      {open === 'spot' && (
+        <Later load={() => import('../assets/pick-spot-dialog.tsx')}>
+          {({ PickSpotDialog }) => (
+            <PickSpotDialog
+              app={app}
+              kind={plan.spotKind}
+              onClose={close}
+              onPick={(where) => {
+                close();
+                void app.take.placeAt(where);
+              }}
+            />
+          )}
+        </Later>
+      )}
       {open === 'procedure' && (
         <Dialog
           title={text.procedureLegend}

@@ -1,0 +1,113 @@
+/** The day of the office side (design: the job), at laptop size, without a network; and every screen under axe. */
+import { AxeBuilder } from '@axe-core/playwright';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { launchBrowser, serveApp, type ServedApp, type TestBrowser } from '../support/browser.ts';
+import { furnish, screenHashes, type Furnished } from '../support/furnish.ts';
+
+let app: ServedApp;
+let browser: TestBrowser;
+let ids: Furnished;
+
+beforeAll(async () => {
+  app = await serveApp();
+  browser = await launchBrowser({ viewport: { width: 1280, height: 800 } });
+  browser.page.setDefaultTimeout(10_000);
+  ids = await furnish(browser.page, app.url);
+  await browser.page.waitForFunction(() => navigator.serviceWorker.controller?.state === 'activated');
+  await app.stop();
+  await browser.context.setOffline(true);
+});
+afterAll(() => browser.close());
+
+const heading = (name: string | RegExp) => browser.page.getByRole('heading', { level: 1, name });
+const button = (name: string | RegExp) => browser.page.getByRole('button', { name });
+const open = (hash: string) => browser.page.goto(`${app.url}${hash}`);
+
+describe('the office: opens, compares, edits, undoes', () => {
+  it('opens a reading by its address, with the others beside it', async () => {
+    await open(`#/reading/${ids.reading}`);
+    await heading(/Rings at 7\.0/).waitFor();
+    const beside = browser.page.getByRole('navigation', { name: 'Readings' });
+    expect(await beside.getByRole('link', { name: /Hz/ }).count()).toBe(4);
+    await beside.getByRole('link', { name: /7\.39/ }).last().click();
+    await heading(/Rings at 7\.[34]/).waitFor();
+    await browser.page.goBack();
+    await heading(/Rings at 7\.0/).waitFor();
+  });
+
+  it('compares the first visit with the last: the frequency fell', async () => {
+    const { page } = browser;
+    await open('#/readings');
+    await button('Select').click();
+    const rows = page.getByRole('checkbox', { name: /^Select Quay stair/ });
+    await rows.first().check();
+    await rows.last().check();
+    await page.getByText('2 selected').waitFor();
+    await button('Compare').click();
+    await heading('Two readings compared').waitFor();
+    await page.getByText(/Frequency of the strongest mode: 4\.7 % lower/).waitFor();
+    await page.getByText('Indicative survey, not a certified measurement').waitFor();
+  });
+
+  it('puts many in the trash at once and takes them back', async () => {
+    const { page } = browser;
+    await open('#/readings');
+    await button('Select').click();
+    await page.getByRole('checkbox', { name: 'Select all' }).check();
+    await button('Move to trash').click();
+    await page.getByText('4 readings moved to the trash.').waitFor();
+    await page.getByText('Nothing here.').waitFor();
+    await button('Undo').click();
+    await page
+      .getByRole('link', { name: /Quay stair/ })
+      .first()
+      .waitFor();
+    expect(await page.getByRole('main').getByRole('link', { name: /Hz/ }).count()).toBe(4);
+  });
+
+  it('renames a spot, and undoes it', async () => {
+    const { page } = browser;
+    await open(`#/spot/${ids.spot}`);
+    await heading('Upper rail, mid-span').waitFor();
+    await button('Edit').click();
+    await page.getByLabel('Name').fill('Upper rail, third post');
+    await button('Save').click();
+    await heading('Upper rail, third post').waitFor();
+    await button('Undo').click();
+    await heading('Upper rail, mid-span').waitFor();
+  });
+
+  it('does all of it with the keyboard', async () => {
+    const { page } = browser;
+    await open('#/readings');
+    await page.getByRole('searchbox').focus();
+    await page.keyboard.type('upper rail');
+    await page.getByRole('main').getByRole('link', { name: /7\.0/ }).focus();
+    await page.keyboard.press('Enter');
+    await heading(/Rings at 7\.0/).waitFor();
+    expect(browser.faults).toEqual([]);
+  });
+});
+
+describe('every screen under axe, in three themes', () => {
+  /** WCAG 2.2 AA and the axe rules of good practice. */
+  const findings = async (rules?: readonly string[]): Promise<string[]> => {
+    const builder = new AxeBuilder({ page: browser.page });
+    const { violations } = await (rules ? builder.withRules([...rules]) : builder).analyze();
+    return violations.flatMap((violation) =>
+      violation.nodes.map((node) => `${violation.id}: ${node.target.join(' ')} ${node.failureSummary ?? ''}`),
+    );
+  };
+
+  it.each(Object.keys(screenHashes))('%s', async (name) => {
+    const { page } = browser;
+    await open(screenHashes[name as keyof typeof screenHashes](ids));
+    await page.getByRole('heading', { level: 1 }).first().waitFor();
+    await page.waitForTimeout(name === 'reading' ? 800 : 150);
+    expect(await findings()).toEqual([]);
+    for (const theme of ['dark', 'sunlight']) {
+      await page.evaluate((next) => void (document.documentElement.dataset['theme'] = next), theme);
+      expect(await findings(['color-contrast'])).toEqual([]);
+    }
+  });
+});
