@@ -152,13 +152,20 @@ const ringDownsOf = (analysis: Analysis): RingDown[] =>
     const [first] = analysis.modes;
     const w = 2 * Math.PI * (first?.frequencyHz ?? 5);
     const timeS = Float64Array.from({ length: 180 }, (_, i) => tapTimeS + 0.05 + i / RATE_HZ);
-    const fitted = timeS.map(
-      (t) =>
-        (0.9 - index * 0.08) *
-        Math.exp(-(first?.dampingRatio ?? 0.01) * w * (t - tapTimeS)) *
-        Math.sin(w * (t - tapTimeS)),
-    );
-    return { tapTimeS, timeS, fittedMps2: fitted, measuredMps2: fitted.map((v) => v + 0.02 * random()) };
+    const model = (t: number) =>
+      (0.9 - index * 0.08) *
+      Math.exp(-(first?.dampingRatio ?? 0.01) * w * (t - tapTimeS)) *
+      Math.sin(w * (t - tapTimeS));
+    const fittedMps2 = timeS.map(model);
+    const curveTimeS = Float64Array.from({ length: 900 }, (_, i) => timeS[0]! + (i / 900) * (179 / RATE_HZ));
+    return {
+      tapTimeS,
+      timeS,
+      fittedMps2,
+      measuredMps2: fittedMps2.map((v) => v + 0.02 * random()),
+      curveTimeS,
+      curveMps2: curveTimeS.map(model),
+    };
   });
 
 const passOf = (analysis: Analysis): AnalysisPictures['pass'] => {

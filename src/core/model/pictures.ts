@@ -20,6 +20,9 @@ export interface RingDown {
   readonly timeS: Float64Array;
   readonly measuredMps2: Float64Array;
   readonly fittedMps2: Float64Array;
+  /** The fitted model between the samples too, for a smooth curve; absent: only at the samples. */
+  readonly curveTimeS?: Float64Array;
+  readonly curveMps2?: Float64Array;
 }
 
 /** What screens and reports draw. Derived from the recording each time, never stored. */

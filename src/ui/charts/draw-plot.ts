@@ -27,6 +27,9 @@ export interface PlotEvents {
 }
 
 const DOT_PX = 3.5;
+/** Rows of labels above a plot with marks. */
+const MARK_ROWS = 2;
+const MARK_LINE_TEXTS = 1.25;
 const DASHES: Readonly<Record<PlotSeries['kind'], number[] | undefined>> = {
   line: undefined,
   dots: undefined,
@@ -41,13 +44,18 @@ const seriesOptions = (series: PlotSeries, palette: PlotPalette): uPlot.Series =
     label: series.label,
     stroke,
     width: series.kind === 'dots' ? 0 : 1.5,
+    spanGaps: true,
     ...(dash ? { dash } : {}),
     points: series.kind === 'dots' ? { show: true, size: DOT_PX, fill: stroke, width: 0 } : { show: false },
     ...(series.kind === 'dots' ? { paths: () => null } : {}),
   };
 };
 
-const axisOptions = (label: string, side: number, palette: PlotPalette): uPlot.Axis => ({
+/** Of a logarithmic axis only whole decades are drawn: the lines between them would hide the curve. */
+const decadesOnly = (_: uPlot, splits: number[]): (number | null)[] =>
+  splits.map((value) => (Math.abs(Math.log10(value) - Math.round(Math.log10(value))) < 1e-9 ? value : null));
+
+const axisOptions = (label: string, side: number, palette: PlotPalette, isLog = false): uPlot.Axis => ({
   label,
   side,
   stroke: palette.colour('--text-quiet'),
@@ -58,8 +66,14 @@ const axisOptions = (label: string, side: number, palette: PlotPalette): uPlot.A
   size: side === 3 ? palette.textPx * 3.6 : palette.textPx * 2.2,
   gap: 4,
   space: side === 3 ? palette.textPx * 3 : palette.textPx * 4.5,
-  grid: { stroke: palette.colour('--chart-grid'), width: 1 },
-  ticks: { stroke: palette.colour('--edge-strong'), width: 1, size: 5 },
+  grid: { stroke: palette.colour('--chart-grid'), width: 1, ...(isLog ? { filter: decadesOnly } : {}) },
+  ticks: {
+    stroke: palette.colour('--edge-strong'),
+    width: 1,
+    size: 5,
+    ...(isLog ? { filter: decadesOnly } : {}),
+  },
+  ...(isLog ? { filter: decadesOnly } : {}),
   ...(side === 3 ? { values: (_: uPlot, splits: number[]) => splits.map(tickText) } : {}),
 });
 
@@ -71,8 +85,11 @@ const tickText = (value: number | null): string =>
       : String(+value.toPrecision(4));
 
 /** A logarithmic axis cannot show zero: values at or below the floor lie on it. */
-const floored = (values: ArrayLike<number>, floor: number | undefined): number[] =>
-  Array.from(values, (value) => (floor === undefined ? value : Math.max(floor, value)));
+const drawable = (values: ArrayLike<number>, floor: number | undefined): (number | null)[] =>
+  Array.from(values, (value) => {
+    if (Number.isNaN(value)) return null;
+    return floor === undefined ? value : Math.max(floor, value);
+  });
 
 const hatched = (plot: uPlot, [from, to]: Interval, colour: string) => {
   const { ctx, bbox } = plot;
@@ -99,11 +116,11 @@ const hatched = (plot: uPlot, [from, to]: Interval, colour: string) => {
 const marked = (plot: uPlot, spec: PlotSpec, palette: PlotPalette) => {
   const { ctx, bbox } = plot;
   const px = devicePixelRatio;
-  const line = palette.textPx * px * 1.25;
-  const paper = palette.colour('--surface');
+  const line = palette.textPx * px * MARK_LINE_TEXTS;
   ctx.save();
   ctx.font = palette.font.replace(/^[\d.]+px/, `${palette.textPx * px}px`);
   ctx.textBaseline = 'top';
+  ctx.textAlign = 'left';
   const taken: number[] = [];
   for (const mark of spec.marks) {
     const x = plot.valToPos(mark.at, 'x', true);
@@ -115,23 +132,21 @@ const marked = (plot: uPlot, spec: PlotSpec, palette: PlotPalette) => {
     ctx.moveTo(x, bbox.top);
     ctx.lineTo(x, bbox.top + bbox.height);
     ctx.stroke();
-    if (mark.label === '') continue;
     const width = ctx.measureText(mark.label).width;
-    const isRight = x + width + 6 * px < bbox.left + bbox.width;
-    const start = isRight ? x + 4 * px : x - width - 4 * px;
-    // labels that would cover another go one row down
+    const start = Math.min(bbox.left + bbox.width - width, Math.max(bbox.left, x - width / 2));
+    // above the plot, so that no label covers a peak; one that would cover another goes a row up, or is left out
     let row = 0;
-    while (taken[row] !== undefined && start < taken[row]! && row < 4) row += 1;
+    while (taken[row] !== undefined && start < taken[row]!) row += 1;
+    if (row >= MARK_ROWS) continue;
     taken[row] = start + width + 6 * px;
-    ctx.fillStyle = paper;
-    ctx.globalAlpha = 0.85;
-    ctx.fillRect(start - 2 * px, bbox.top + row * line, width + 4 * px, line);
-    ctx.globalAlpha = 1;
     ctx.fillStyle = palette.colour('--text');
-    ctx.fillText(mark.label, start, bbox.top + row * line + 2 * px);
+    ctx.fillText(mark.label, start, bbox.top - (row + 1) * line);
   }
   ctx.restore();
 };
+
+const headTexts = (spec: PlotSpec): number =>
+  spec.marks.length === 0 ? 0.6 : 0.3 + Math.min(MARK_ROWS, spec.marks.length) * MARK_LINE_TEXTS;
 
 /** Draws a plot into an element; the element keeps its height. */
 export function drawPlot(
@@ -144,13 +159,13 @@ export function drawPlot(
   let range: Interval = spec.wholeX;
   const data = [
     Array.from(spec.x),
-    ...spec.series.map((series) => floored(series.values, spec.isLogY ? spec.floorY : undefined)),
+    ...spec.series.map((series) => drawable(series.values, spec.isLogY ? spec.floorY : undefined)),
   ] as uPlot.AlignedData;
   const plot = new uPlot(
     {
       width: size.widthPx,
       height: size.heightPx,
-      padding: [palette.textPx * 0.6, palette.textPx * 0.9, 0, 0],
+      padding: [palette.textPx * headTexts(spec), palette.textPx * 0.9, 0, 0],
       legend: { show: false },
       cursor: {
         drag: { x: false, y: false },
@@ -164,7 +179,7 @@ export function drawPlot(
           ...(spec.rangeY ? { range: [spec.rangeY[0], spec.rangeY[1]] as uPlot.Range.MinMax } : {}),
         },
       },
-      axes: [axisOptions(spec.xLabel, 2, palette), axisOptions(spec.yLabel, 3, palette)],
+      axes: [axisOptions(spec.xLabel, 2, palette), axisOptions(spec.yLabel, 3, palette, spec.isLogY)],
       series: [{}, ...spec.series.map((series) => seriesOptions(series, palette))],
       hooks: {
         drawAxes: [

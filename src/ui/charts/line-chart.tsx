@@ -26,7 +26,7 @@ export interface LineChartProps {
   /** A view shared with another chart. */
   readonly range?: Interval | undefined;
   readonly onRange?: (range: Interval) => void;
-  /** Without its own zoom buttons (the lower of two charts). */
+  /** Without its own zoom buttons: another chart moves it along. */
   readonly isFollower?: boolean;
 }
 
@@ -98,11 +98,15 @@ export function LineChart(props: LineChartProps) {
     const drawn = plot.current;
     if (!drawn) return;
     const [low, high] = drawn.range();
-    const inView = Array.from(spec.x, (_, i) => i).filter((i) => spec.x[i]! >= low && spec.x[i]! <= high);
-    const first = inView[0];
-    const last = inView.at(-1);
-    if (first === undefined || last === undefined) return;
-    const next = Math.min(last, Math.max(first, (drawn.pointed() ?? first - Math.sign(by)) + by));
+    // keys go from one measured point to the next where a computed curve runs between them
+    const dots = spec.series.find((series) => series.kind === 'dots');
+    const stops = Array.from(spec.x, (_, i) => i).filter(
+      (i) => spec.x[i]! >= low && spec.x[i]! <= high && !Number.isNaN(dots?.values[i] ?? 0),
+    );
+    const from = stops.findIndex((stop) => stop >= (drawn.pointed() ?? Infinity));
+    const wanted = from === -1 ? (by > 0 ? 0 : stops.length - 1) : from + by;
+    const next = stops[Math.min(stops.length - 1, Math.max(0, wanted))];
+    if (next === undefined) return;
     drawn.pointAt(next);
     setSpoken(pointText(next));
   };

@@ -5,6 +5,7 @@ export type ColourToken = `--${string}`;
 
 export interface PlotSeries {
   readonly label: string;
+  /** One a place of x; NaN where this line has no value: the line then runs on to its next one. */
   readonly values: ArrayLike<number>;
   readonly colour: ColourToken;
   /** `dots` for what was measured, `line` for what joins up, `dashes` for what was computed. */

@@ -22,53 +22,86 @@ const explainedShare = (ringDown: RingDown): number => {
 };
 
 interface Specs {
+  /** Times of the decay's x axis on the recording's own axis. */
+  readonly times: readonly number[];
   readonly decay: PlotSpec;
   readonly residual: PlotSpec;
+}
+
+/** The smooth curve and the samples on one ascending time axis; NaN where one of them has nothing. */
+function mergedTimes(ringDown: RingDown): { timeS: number[]; curve: number[]; measured: number[] } {
+  const { timeS, measuredMps2, fittedMps2, curveTimeS, curveMps2 } = ringDown;
+  if (!curveTimeS || !curveMps2)
+    return { timeS: [...timeS], curve: [...fittedMps2], measured: [...measuredMps2] };
+  const samples = Array.from(timeS, (at, i) => ({
+    at,
+    curve: fittedMps2[i] ?? NaN,
+    measured: measuredMps2[i] ?? NaN,
+  }));
+  const between = Array.from(curveTimeS, (at, i) => ({ at, curve: curveMps2[i] ?? NaN, measured: NaN }));
+  const all = [...samples, ...between].sort((a, b) => a.at - b.at);
+  return {
+    timeS: all.map((point) => point.at),
+    curve: all.map((point) => point.curve),
+    measured: all.map((point) => point.measured),
+  };
 }
 
 function specsOf(ringDown: RingDown, units: ReadingUnits): Specs {
   const words = readingText.ringDown;
   const scale = toUnit(1, units.acceleration);
-  const scaled = (values: Float64Array) => values.map((value) => value * scale);
-  const x = ringDown.timeS.map((time) => time - ringDown.tapTimeS);
+  const scaled = (values: readonly number[]) => values.map((value) => value * scale);
+  const merged = mergedTimes(ringDown);
+  const sinceTap = (time: number) => time - ringDown.tapTimeS;
+  const x = ringDown.timeS.map(sinceTap);
   const wholeX: Interval = [0, x.at(-1) ?? 1];
-  const reach =
-    1.06 *
-    Math.max(
-      1e-9,
-      ...scaled(ringDown.measuredMps2).map(Math.abs),
-      ...scaled(ringDown.fittedMps2).map(Math.abs),
-    );
-  const common = { x, xLabel: words.x, wholeX, marks: [], shades: [] };
+  const values = [...merged.curve, ...merged.measured].filter((value) => !Number.isNaN(value));
+  const reach = 1.06 * Math.max(1e-9, ...scaled(values).map(Math.abs));
+  const common = { xLabel: words.x, wholeX, marks: [], shades: [] };
   const fitted: PlotSeries = {
     label: words.fitted,
-    values: scaled(ringDown.fittedMps2),
+    values: scaled(merged.curve),
     colour: '--chart-fit',
     kind: 'line',
   };
   const measured: PlotSeries = {
     label: words.measured,
-    values: scaled(ringDown.measuredMps2),
+    values: scaled(merged.measured),
     colour: '--chart-z',
     kind: 'dots',
   };
   const residual: PlotSeries = {
     label: words.residual,
-    values: scaled(residualOf(ringDown)),
+    values: scaled([...residualOf(ringDown)]),
     colour: '--chart-residual',
     kind: 'line',
   };
   return {
+    times: merged.timeS,
     decay: {
       ...common,
+      x: merged.timeS.map(sinceTap),
       yLabel: words.y(units.acceleration),
       rangeY: [-reach, reach],
       series: [fitted, measured],
     },
     // the same scale, a quarter of the height: what is left is seen against what was there
-    residual: { ...common, yLabel: words.residualY, rangeY: [-reach / 4, reach / 4], series: [residual] },
+    residual: { ...common, x, yLabel: words.residualY, rangeY: [-reach / 4, reach / 4], series: [residual] },
   };
 }
+
+/** What stands at a place of the merged axis, in words. */
+const decayText = (ringDown: RingDown, specs: Specs, units: ReadingUnits, index: number): string => {
+  const words = readingText.ringDown;
+  const per = toUnit(1, units.acceleration);
+  const [fitted, measured] = specs.decay.series;
+  const value = measured?.values[index] ?? NaN;
+  const head = `${formatNumber((specs.times[index] ?? 0) - ringDown.tapTimeS, 3)} s`;
+  const curve = `${words.fitted} ${saidMps2(units, (fitted?.values[index] ?? 0) / per)}`;
+  return Number.isNaN(value)
+    ? `${head}: ${curve}`
+    : `${head}: ${words.measured} ${saidMps2(units, value / per)}, ${curve}`;
+};
 
 /** One ring-down at a time: measured points over the fitted curve, and below it what the fit leaves. */
 export function RingDownSection(props: {
@@ -88,8 +121,7 @@ export function RingDownSection(props: {
     setChosen(next);
     setRange(undefined);
   };
-  const pointText = (i: number) =>
-    `${formatNumber((ringDown.timeS[i] ?? 0) - ringDown.tapTimeS, 3)} s: ${words.measured} ${saidMps2(units, ringDown.measuredMps2[i] ?? 0)}, ${words.fitted} ${saidMps2(units, ringDown.fittedMps2[i] ?? 0)}`;
+  const pointText = (i: number) => decayText(ringDown, specs, units, i);
   return (
     <Section title={words.title}>
       {ringDowns.length > 1 && (
@@ -116,6 +148,7 @@ export function RingDownSection(props: {
           words={readingText.plots}
           pointText={pointText}
           heightPx={220}
+          isFollower
           range={range}
           onRange={setRange}
         />
@@ -128,7 +161,6 @@ export function RingDownSection(props: {
           heightPx={120}
           range={range}
           onRange={setRange}
-          isFollower
           table={{
             summary: readingText.plots.numbers,
             head: words.head,
