@@ -1,5 +1,5 @@
 import type { AnalysisSettings, TimingFacts } from '../model/analysis.ts';
-import { clockLine } from './clock-line.ts';
+import { clockLine, spread } from './clock-line.ts';
 import { likelihoodAt, slopeProfile } from './jitter-slope.ts';
 import { countSamples } from './sample-counter.ts';
 import { slowPart } from './drift.ts';
@@ -8,7 +8,10 @@ import { toneEnvelope, withoutTone } from './tone-envelope.ts';
 import { averagedDensity } from './spectrum.ts';
 import { uniformSignal } from './uniform-grid.ts';
 
-/** Scatter about the clock beyond this share of the period: there is no steady clock to be found, the stamps are all there is. */
+/**
+ * Scatter about the clock (robust: late bursts do not count) beyond this share of the period: there is no steady clock to be
+ * found, the stamps are all there is.
+ */
 const NO_CLOCK_PERIODS = 0.6;
 /** Scatter below which stamps and clock give the same answer, s (0.1 ms at 25 Hz is 0.9° of phase). */
 const NEGLIGIBLE_SCATTER_S = 1e-4;
@@ -52,7 +55,7 @@ export function estimateTimeBase(
 ): TimeBase {
   const counted = countSamples(stampsS);
   const line = clockLine(stampsS, counted.count, counted.periodS);
-  const hasClock = line.scatterSdS < NO_CLOCK_PERIODS * counted.periodS;
+  const hasClock = spread(line.deviationS) < NO_CLOCK_PERIODS * counted.periodS;
   const base = hasClock
     ? { ...counted, ...line }
     : { ...countByTime(stampsS, counted.periodS), scatterSdS: line.scatterSdS };
