@@ -94,16 +94,13 @@ function descend(
   let lambda = 1e-3;
   for (let i = 0; i < ITERATION_LIMIT; i++) {
     const step = marquardtStep(current.evaluation, lambda);
-    if (step === undefined) break;
+    if (step === undefined || (step.promised < STOP_DECREASE && lambda < 1)) break;
     const components = moved(current.components, step.change);
     const evaluation = evaluateDecays(signal, segments, components, weights);
     if (evaluation.cost <= current.evaluation.cost) {
-      const gain = current.evaluation.cost - evaluation.cost;
       current = { components, evaluation };
       lambda = Math.max(lambda / 8, 1e-9);
-      if (step.promised < STOP_DECREASE && gain < STOP_DECREASE) break;
     } else {
-      if (step.promised < STOP_DECREASE) break;
       lambda *= 8;
       if (lambda > 1e9) break;
     }

@@ -25,12 +25,16 @@ export const naturalFrequencyHz = (c: Component): number =>
 export const dampingRatioOf = (c: Component): number =>
   c.decayPerS / Math.hypot(c.angularRadPerS, c.decayPerS);
 
-/** Reads component `k` of a joint fit as a mode: larger of the Fisher interval and the tap-to-tap one. */
+/**
+ * Reads component `k` of a joint fit as a mode: larger of the Fisher interval and the tap-to-tap one.
+ * @param colourRatio power of the residual near the mode over that of white noise, >= 1
+ */
 export function modeEstimate(
   signal: DecaySignal,
   decays: readonly FreeDecay[],
   fit: DecayFit,
   k: number,
+  colourRatio = 1,
 ): ModeEstimate {
   const component = fit.components[k]!;
   const gradients = shapeGradients(component);
@@ -41,12 +45,13 @@ export function modeEstimate(
     covariance === undefined
       ? Infinity
       : Math.sqrt(
-          Math.max(
-            g[0]! ** 2 * covariance[at * size + at]! +
-              2 * g[0]! * g[1]! * covariance[at * size + at + 1]! +
-              g[1]! ** 2 * covariance[(at + 1) * size + at + 1]!,
-            0,
-          ),
+          colourRatio *
+            Math.max(
+              g[0]! ** 2 * covariance[at * size + at]! +
+                2 * g[0]! * g[1]! * covariance[at * size + at + 1]! +
+                g[1]! ** 2 * covariance[(at + 1) * size + at + 1]!,
+              0,
+            ),
         );
   const frequency = larger(
     { value: naturalFrequencyHz(component), sd: fisher(gradients.frequency), betweenSd: 0 },

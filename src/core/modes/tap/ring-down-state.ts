@@ -41,10 +41,10 @@ export function refit(
   components: readonly Component[],
   noise: readonly number[],
 ): RingDownSearch {
-  const all = fitDecays(signal, decays, components, noise);
+  const all = fitDecays(signal, decays, components, noise, 1);
   if (!beginsWithHandling(decays, all)) return found(decays, decays, all, noise);
   const tapped = decays.slice(1);
-  return found(decays, tapped, fitDecays(signal, tapped, all.components, noise), noise);
+  return found(decays, tapped, fitDecays(signal, tapped, all.components, noise, 1), noise);
 }
 
 /** Residual variance before the first tap above this many times the other decays' is not theirs. Our own choice. */

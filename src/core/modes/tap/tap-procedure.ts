@@ -22,6 +22,7 @@ import {
 } from './mode-estimate.ts';
 import type { ModeEstimate } from './mode-estimate.ts';
 import { decayAlone, residuals } from './modelled-signal.ts';
+import { residualColour } from './residual-colour.ts';
 import { fitRounded, isStepCoarse } from './rounding-likelihood.ts';
 import { softenedFit } from './softening.ts';
 import { searchRingDowns } from './ring-down-search.ts';
@@ -122,7 +123,10 @@ function answerOf(
   const largest = Math.max(...signal.y.map((y) => y.reduce((m, v) => Math.max(m, Math.abs(v)), 0)));
   const modeIndexes = fit.components.flatMap((c, k) => (c.kind === 'mode' ? [k] : []));
   const estimates = modeIndexes
-    .map((k) => ({ k, estimate: modeEstimate(signal, decays, fit, k) }))
+    .map((k) => {
+      const colour = residualColour(signal, decays, fit, left, fit.components[k]!);
+      return { k, estimate: modeEstimate(signal, decays, fit, k, colour) };
+    })
     .filter(({ estimate }) => isAnswer(estimate, fit, largest))
     .sort((a, b) => ringEnergy(b.estimate) - ringEnergy(a.estimate));
   if (estimates.length === 0) return failure(search.tapCount === 0 ? 'no-taps' : 'no-decay');
@@ -144,7 +148,7 @@ function answerOf(
     tones: fit.components.flatMap((c, k) => (c.kind === 'tone' ? [toneOf(conditioned, fit, k)] : [])),
     broadPeaks: [],
     tapTimesS: decays.flatMap((d) => (d.onset === undefined ? [] : [signal.timeS[d.onset]!])),
-    doubts: tapDoubts(search),
+    doubts: tapDoubts(search, decays, modes, explained),
     ringDowns: ringDownPictures(signal, decays, fit, left, estimates[0]!.k, modes[0]!.direction),
   });
 }
@@ -312,8 +316,27 @@ function toneOf(conditioned: ConditionedSignal, fit: DecayFit, k: number): Tone 
   };
 }
 
-function tapDoubts(search: RingDownSearch): Doubt[] {
-  return search.tapCount < FEWEST_TAPS ? [{ code: 'few-taps', facts: { tapCount: search.tapCount } }] : [];
+/** Below this the fit takes up too little of the motion to be trusted fully. */
+const GOOD_EXPLAINED_SHARE = 0.9;
+/** In one decay two modes nearer than this may be one whose frequency changes with amplitude. */
+const CLOSE_MODES_SHARE = 0.1;
+
+function tapDoubts(
+  search: RingDownSearch,
+  decays: readonly FreeDecay[],
+  modes: readonly Mode[],
+  explainedShare: number,
+): Doubt[] {
+  const doubts: Doubt[] = [];
+  const tapCount = Math.max(search.tapCount, 1);
+  if (tapCount < FEWEST_TAPS) doubts.push({ code: 'few-taps', facts: { tapCount } });
+  if (explainedShare < GOOD_EXPLAINED_SHARE) doubts.push({ code: 'poor-fit', facts: { explainedShare } });
+  const isClose = modes.some((a, i) =>
+    modes.some((b, j) => j < i && Math.abs(a.frequencyHz / b.frequencyHz - 1) < CLOSE_MODES_SHARE),
+  );
+  if (decays.filter((d) => d.onset !== undefined).length <= 1 && isClose)
+    doubts.push({ code: 'one-decay-close-modes' });
+  return doubts;
 }
 
 function ringDownPictures(
