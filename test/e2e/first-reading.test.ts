@@ -39,7 +39,7 @@ function keptFacts(page: Page): Promise<KeptFact[]> {
 
 /** Start, Take, Reading as a person does it, with three taps on the structure; ends on the reading's screen. */
 async function takeReading(page: Page, url: string, as: ScriptedSensorOptions['as']): Promise<void> {
-  const sensor = await scriptSensor(page, { as, rateHz: RAIL.rateHz, noiseMps2: 0.01 });
+  const sensor = await scriptSensor(page, { as, rateHz: RAIL.rateHz, noiseMps2: 0.01, speed: 4 });
   await page.goto(url);
   await page
     .getByRole('button', { name: 'Take a reading' })
