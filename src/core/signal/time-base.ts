@@ -116,10 +116,13 @@ function defaultShare(stampsS: Float64Array, periodS: number): number {
   return crowded > 0.001 * stampsS.length ? 0 : 1;
 }
 
-function estimateTrueShare(
-  base: Pick<TimeBase, 'clockS' | 'deviationS' | 'count' | 'periodS'>,
-  axes: readonly Float32Array[],
-): number | undefined {
+/** Samples the decision is taken on; of a longer record the middle is used (the share is the phone's, not the moment's). */
+const DECISION_SAMPLES = 40_000;
+
+type Counted = Pick<TimeBase, 'clockS' | 'deviationS' | 'count' | 'periodS'>;
+
+function estimateTrueShare(whole: Counted, allAxes: readonly Float32Array[]): number | undefined {
+  const { base, axes } = middleOf(whole, allAxes);
   const rateHz = 1 / base.periodS;
   const still = axes.map((axis) => {
     const slow = slowPart(axis, rateHz);
@@ -153,6 +156,26 @@ function estimateTrueShare(
   const top = total[best] as number;
   if (top - Math.min(...total) < TELLING_LOG_LIKELIHOOD) return undefined;
   return refinedShare(total, best);
+}
+
+function middleOf(
+  whole: Counted,
+  axes: readonly Float32Array[],
+): { readonly base: Counted; readonly axes: readonly Float32Array[] } {
+  const n = whole.count.length;
+  if (n <= DECISION_SAMPLES) return { base: whole, axes };
+  const first = (n - DECISION_SAMPLES) >> 1;
+  const end = first + DECISION_SAMPLES;
+  const start = whole.count[first]!;
+  return {
+    base: {
+      periodS: whole.periodS,
+      clockS: whole.clockS.subarray(first, end),
+      deviationS: whole.deviationS.subarray(first, end),
+      count: whole.count.subarray(first, end).map((k) => k - start),
+    },
+    axes: axes.map((axis) => axis.subarray(first, end)),
+  };
 }
 
 function refinedShare(total: Float64Array, best: number): number {
