@@ -24,6 +24,8 @@ const CAUTION_FACTOR = 0.7;
 const FIT_TOLERANCE = 8;
 const SHARE_STEPS = 140;
 
+/** Samples the fold of a steady line is taken on, at most: ten minutes at 100 Hz say all there is to say. */
+const MOST_SAMPLES = 60_000;
 /** A line may run ahead of its mean by this much of a cycle within a block. */
 const PHASE_TOGETHER_CYCLES = 0.15;
 
@@ -50,7 +52,7 @@ export function foldOfTone(signal: ConditionedSignal, tone: FoldCandidate): Fold
     10 * signal.periodS,
     Math.min(steadyS, Math.max(0.6, Math.min(2, 6 / tone.frequencyHz))),
   );
-  return decide(signal, tone, blockS, [[0, signal.timeS.length]], 0);
+  return decide(signal, tone, blockS, [[0, Math.min(signal.timeS.length, MOST_SAMPLES)]], 0);
 }
 
 /**
