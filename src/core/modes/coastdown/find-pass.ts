@@ -9,7 +9,7 @@ import { guessFromWholePass } from './pass-spectrum.ts';
 import type { PassGuess } from './pass-spectrum.ts';
 import { robustPolynomial } from './polynomial-fit.ts';
 import { refineSweep } from './refine-track.ts';
-import { speedAt } from './sweep-response.ts';
+import { speedAt, speedRateAt } from './sweep-response.ts';
 import type { Sweep } from './sweep-response.ts';
 
 export interface Pass {
@@ -35,6 +35,12 @@ const TRACK_STARTS = [
 const CONFIRMED = 1.002;
 /** Clarity below which a point of the track counts for nothing. */
 const CLEAR_POINT = 2;
+/** Share of the record kept at each try to get past a folded start, and the least that is looked at. */
+const TAIL_SHARE = 0.8;
+const LEAST_TAIL = 0.3;
+/** A falling line is there when so many points of its track are clear and it falls by this ratio. */
+const LEAST_CLEAR_SHARE = 0.15;
+const LEAST_FALL_RATIO = 1.15;
 /** Scatter of the tracked frequency, Hz, beyond which a point is an outlier. */
 const TRACK_SCATTER_HZ = 0.4;
 /** Fitting goes down through the mode from above: ends of the windows, speed over natural frequency. */
@@ -49,23 +55,80 @@ const MOST_ORDER = 5;
 /** A speed polynomial of one order more must lower the description length by this. */
 const ORDER_GAIN = 6;
 
-/** Finds the line, the mode it passes and the sweep, and fits them jointly. */
-export function findPass(conditioned: ConditionedSignal): Outcome<Pass> {
+/**
+ * Finds the line, the mode it passes and the sweep, and fits them jointly.
+ * @param part share of the whole record that `conditioned` is (used when the start was cut away)
+ */
+export function findPass(conditioned: ConditionedSignal, part = 1): Outcome<Pass> {
   const { grid, facts } = conditioned;
   const { durationS } = facts;
   const highestHz = TRACKED_SHARE * facts.rateHz;
   const falling = trackLine(grid, highestHz, 'falling');
   const rising = trackLine(grid, highestHz, 'rising');
   if (!falling || !rising) return failure('too-short', { durationS });
-  if (rising.score > falling.score + RISING_MARGIN)
-    return failure('folded-sweep', { rateHz: facts.rateHz, highestHz: facts.rateHz / 2 });
+  if (rising.score > falling.score + RISING_MARGIN) return afterFold(conditioned, part);
   const guess = guessFromWholePass(grid, [1, highestHz]);
   if (!guess) return failure('no-pass', { durationS });
+  const nothing = withoutPass(falling, guess, durationS);
   const start = bestStart(conditioned, falling, guess);
-  return start
-    ? fitted(conditioned, start, guess)
-    : incomplete(conditioned, trackPolynomial(falling, 0, 2), guess);
+  if (!start || !isRunDown(start, facts.rateHz)) return nothing;
+  return fitted(conditioned, start, guess) ?? nothing;
 }
+
+/**
+ * A sweep that starts above half the rate first appears to rise, then falls as a true one: what comes after the turn is
+ * tried, and only what never falls is refused.
+ */
+function afterFold(conditioned: ConditionedSignal, part: number): Outcome<Pass> {
+  const { facts } = conditioned;
+  const rest = part * TAIL_SHARE;
+  if (rest > LEAST_TAIL) {
+    const pass = findPass(tailOf(conditioned, TAIL_SHARE), rest);
+    if (pass.ok) return pass;
+  }
+  return failure('folded-sweep', { rateHz: facts.rateHz, highestHz: facts.rateHz / 2 });
+}
+
+function tailOf(conditioned: ConditionedSignal, share: number): ConditionedSignal {
+  const { grid, timeS } = conditioned;
+  const from = Math.floor((1 - share) * grid.present.length);
+  const startS = grid.startS + from * grid.periodS;
+  const first = Math.max(
+    0,
+    timeS.findIndex((t) => t >= startS),
+  );
+  return {
+    ...conditioned,
+    timeS: timeS.slice(first),
+    accelerationMps2: conditioned.accelerationMps2.map((axis) => axis.slice(first)),
+    grid: {
+      ...grid,
+      startS,
+      present: grid.present.slice(from),
+      accelerationMps2: grid.accelerationMps2.map((axis) => axis.slice(from)),
+    },
+  };
+}
+
+/** No falling line at all, or one that stops short of the mode. */
+function withoutPass(track: LineTrack, guess: PassGuess, durationS: number): Outcome<never> {
+  const clear = [...track.frequencyHz.keys()].filter((k) => (track.clarity[k] as number) > CLEAR_POINT);
+  const some = Math.ceil(clear.length / 10);
+  const middleOf = (indexes: readonly number[]): number =>
+    track.frequencyHz[indexes[indexes.length >> 1] ?? 0] as number;
+  const startHz = middleOf(clear.slice(0, some));
+  const endHz = middleOf(clear.slice(-some));
+  if (clear.length < LEAST_CLEAR_SHARE * track.timeS.length || startHz < LEAST_FALL_RATIO * endHz)
+    return failure('no-pass', { durationS });
+  return failure('pass-incomplete', { startHz, endHz, frequencyHz: guess.frequencyHz });
+}
+
+/** Falls all the way, from nowhere a machine could not be. */
+const isRunDown = (sweep: Sweep, rateHz: number): boolean =>
+  [-1, -0.5, 0, 0.5, 1].every((u) => {
+    const at = sweep.centreS + u * sweep.halfS;
+    return speedAt(sweep, at) > 0 && speedAt(sweep, at) < 2 * rateHz && speedRateAt(sweep, at) < 0;
+  });
 
 /** A sweep fitted above the mode. */
 interface UpperFit {
@@ -95,15 +158,6 @@ function bestStart(conditioned: ConditionedSignal, falling: LineTrack, guess: Pa
   return best?.sweep;
 }
 
-function incomplete(conditioned: ConditionedSignal, sweep: Sweep, guess: PassGuess): Outcome<never> {
-  const { timeS } = conditioned;
-  return failure('pass-incomplete', {
-    startHz: speedAt(sweep, timeS[0] as number),
-    endHz: Math.max(0, speedAt(sweep, timeS[timeS.length - 1] as number)),
-    frequencyHz: guess.frequencyHz,
-  });
-}
-
 /** Variance a sample of the sensor's own noise has, mean over the axes, m²/s⁴. */
 function noiseVariance(conditioned: ConditionedSignal): number {
   const { noiseMps2PerRootHz, rateHz, stepMps2 } = conditioned.facts;
@@ -130,10 +184,10 @@ function trackPolynomial(track: LineTrack, aboveHz: number, order: number): Swee
   };
 }
 
-function fitted(conditioned: ConditionedSignal, sweep: Sweep, guess: PassGuess): Outcome<Pass> {
+function fitted(conditioned: ConditionedSignal, sweep: Sweep, guess: PassGuess): Outcome<Pass> | undefined {
   const first = lowered(conditioned, sweep, guess);
   const wide = first && windowOf(conditioned.timeS, first.sweep, first.frequencyHz, WIDE_WINDOW);
-  if (!wide) return incomplete(conditioned, sweep, guess);
+  if (!wide) return undefined;
   const fit = bestOrder(conditioned, first, wide);
   return success({ fit, samples: cut(conditioned, wide), guess, noiseVariance: noiseVariance(conditioned) });
 }
