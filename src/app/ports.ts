@@ -161,7 +161,10 @@ export interface StorePort {
   saveResult(draft: Omit<ResultFact, '_id' | 'v' | 'kind'>): Promise<ResultFact>;
   /** Newest first. */
   listReadings(filter?: ReadingFilter): Promise<readonly ReadingSummary[]>;
+  /** Undefined when it is not here or not understood (see newerReadings); rejects with `damaged` when its samples are. */
   openReading(id: string): Promise<OpenedReading | undefined>;
+  /** Readings that a newer version made: kept and forwarded, but neither listed nor opened here. */
+  newerReadings(): Promise<readonly string[]>;
 
   edit(entity: string, set: Readonly<Record<string, FieldValue>>): Promise<EditFact>;
   newEntity(kind: EntityKind, fields: Readonly<Record<string, FieldValue>>): Promise<Entity>;

@@ -37,6 +37,7 @@ export interface FactStore {
   ): Promise<ReadingFact>;
   saveResult(draft: Omit<ResultFact, '_id' | 'v' | 'kind'>): Promise<ResultFact>;
   openReading(id: string): Promise<OpenedReading | undefined>;
+  newerReadings(): Promise<readonly string[]>;
   edit(entity: string, set: Readonly<Record<string, FieldValue>>): Promise<EditFact>;
   newEntity(kind: EntityKind, fields: Readonly<Record<string, FieldValue>>): Promise<Entity>;
   entity(id: string): Promise<Entity | undefined>;
@@ -119,6 +120,14 @@ export function createFactStore(
         results: results.sort((a, b) => (a._id < b._id ? -1 : 1)),
         entity: foldEdits(id, edits),
       };
+    },
+
+    newerReadings() {
+      return connection.run(async (database) => {
+        const kept = await database.getAllKeysFromIndex('facts', 'kind', 'reading');
+        const listed = new Set(await database.getAllKeys('summaries'));
+        return kept.filter((id) => !listed.has(id));
+      });
     },
 
     edit(entity, set) {

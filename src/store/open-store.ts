@@ -75,6 +75,7 @@ export async function openStore(options: StoreOptions = {}): Promise<Store> {
     },
     saveResult: (draft) => changed((facts) => facts.saveResult(draft)),
     openReading: (id) => withFacts((facts) => facts.openReading(id)),
+    newerReadings: () => withFacts((facts) => facts.newerReadings()),
     edit: (entity, set) => changed((facts) => facts.edit(entity, set)),
     newEntity: (kind, fields) => changed((facts) => facts.newEntity(kind, fields)),
     entity: (id) => withFacts((facts) => facts.entity(id)),

@@ -49,6 +49,7 @@ export async function recordLong(durationS: number): Promise<LongRecording> {
     const kept = await page.evaluate(async () => {
       const state = await window.field.until(['done', 'cut']);
       if (state.phase !== 'done') throw new Error(JSON.stringify({ ...state, recording: undefined }));
+      const longestTaskMs = window.field.longestTaskMs();
       const { readingDraft } = window.field;
       const saved = await window.field
         .store()
@@ -57,7 +58,7 @@ export async function recordLong(durationS: number): Promise<LongRecording> {
       return {
         timeS: [...opened.timeS],
         axes: opened.accelerationMps2.map((axis) => [...axis]),
-        longestTaskMs: window.field.longestTaskMs(),
+        longestTaskMs,
       };
     });
     const expected = Math.round((kept.timeS.at(-1)! - kept.timeS[0]!) * RATE_HZ) + 1;

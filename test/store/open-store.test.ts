@@ -178,6 +178,17 @@ describe('putFacts', () => {
     expect((await to.openReading(_id))?.recording.timeS).toHaveLength(60);
   });
 
+  it('names readings of a newer version, which are kept but not listed', async () => {
+    const store = await fresh();
+    const { _id } = await store.saveReading(readingDraft(), sampleRecording(60));
+    const newer = { _id: 'reading:01K00000000000000000000000', v: 2, kind: 'reading', spirit: 'level' };
+    expect(await store.putFacts([{ fact: newer }])).toMatchObject({ added: 1, damaged: [] });
+    expect(await store.newerReadings()).toEqual([newer._id]);
+    expect((await store.listReadings()).map(({ id }) => id)).toEqual([_id]);
+    expect(await store.openReading(newer._id)).toBeUndefined();
+    expect((await store.fact(newer._id))?.fact).toEqual(newer);
+  });
+
   it('reports what is no fact at all', async () => {
     const store = await fresh();
     const bad = [null, 7, {}, { _id: 'x', v: 1, kind: 'y' }] as unknown as Fact[];
