@@ -96,6 +96,21 @@ describe('a newer version', () => {
     await removeBuild(broken);
   });
 
+  it('whose database is newer than this program is told of in words, nothing touched', async () => {
+    const { page } = browser;
+    await page.evaluate(
+      () =>
+        new Promise((resolve) => {
+          const opening = indexedDB.open('thrumbook', 99);
+          opening.onsuccess = () => resolve(opening.result.close());
+        }),
+    );
+    await page.reload();
+    await page.getByText('written by a newer version').waitFor();
+    const version = await page.evaluate(async () => (await indexedDB.databases())[0]?.version);
+    expect(version).toBe(99);
+  });
+
   it('that does not start can be thrown out by the rescue page, readings kept', async () => {
     const recording = await browser.context.newPage();
     await startRecording(recording, 20);
