@@ -86,6 +86,7 @@ describe('the technician: a pump base running, then stopped and tapped', () => {
     await confirmCautions(page);
     await page.waitForURL(/#\/reading\//);
     await page
+      .getByRole('main')
       .getByText(/16\.1\d* Hz/)
       .first()
       .waitFor();
