@@ -90,6 +90,8 @@ export interface SessionOptions {
 export interface CapturePort {
   /** Whether this browser could have a sensor at all, without asking. */
   readonly support: 'likely' | 'none' | 'insecure-page';
+  /** False where the browser cannot keep the screen on: a long recording is then cut when the screen goes dark. */
+  readonly keepsScreenOn: boolean;
   readonly state: SessionState;
   subscribe(listener: (state: SessionState) => void): () => void;
   /** Must be called synchronously inside a tap: it asks for permission before any await. */

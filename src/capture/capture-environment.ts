@@ -11,6 +11,7 @@ import { holdWakeLock } from './wake-lock.ts';
 /** What capture takes from the browser: replaced in tests. */
 export interface CaptureEnvironment {
   readonly support: 'likely' | 'none' | 'insecure-page';
+  readonly keepsScreenOn: boolean;
   /** In order of preference; the first that delivers is the only one used. */
   sources(practice: string | undefined): readonly SampleSource[];
   /** The right to record, or undefined when another tab has it. */
@@ -32,6 +33,7 @@ export function browserCaptureEnvironment(): CaptureEnvironment {
   const nowMs = (): number => performance.now();
   return {
     support: supportOf(),
+    keepsScreenOn: navigator.wakeLock !== undefined,
     sources(practice) {
       if (practice !== undefined) return [createLatePracticeSource(practice, nowMs)];
       return [

@@ -68,6 +68,10 @@ class CaptureSession implements CapturePort {
     return this.#environment.support;
   }
 
+  get keepsScreenOn(): boolean {
+    return this.#environment.keepsScreenOn;
+  }
+
   get state(): SessionState {
     return this.#state;
   }
@@ -290,8 +294,8 @@ class CaptureSession implements CapturePort {
       return;
     }
     const isRecorded = before.phase === 'recording';
-    const untilS = isRecorded ? before.fromS + before.options.durationS : Infinity;
-    const recording = run.recording(untilS, reason ?? (isRecorded ? before.flags[0] : undefined));
+    const untilS = isRecorded ? before.fromS + before.options.durationS : 0;
+    const recording = isRecorded ? run.recording(untilS, reason ?? before.flags[0]) : undefined;
     run.writer?.write();
     if (reason !== undefined) run.writer?.flag(reason);
     const journalId = (await run.writer?.ended()) ?? '';

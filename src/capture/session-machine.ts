@@ -91,7 +91,7 @@ type In<P extends Session['phase']> = Extract<Session, { phase: P }>;
 
 function fromAsking(session: In<'asking'>, event: SessionEvent): Session {
   if (event.type === 'refused') return { phase: 'refused', problem: event.problem };
-  if (event.type === 'interrupted') return { phase: 'idle' };
+  if (event.type === 'interrupted') return ending(event.reason);
   if (event.type !== 'running') return session;
   const { purpose } = session;
   if (purpose.kind === 'check') {
@@ -110,11 +110,8 @@ function fromChecking(session: In<'checking'>, event: SessionEvent): Session {
 
 function fromSettling(session: In<'settling'>, event: SessionEvent): Session {
   switch (event.type) {
-    // Nothing has been recorded yet: the person starts again.
     case 'interrupted':
-      return event.reason === 'permission-withdrawn' || event.reason === 'sensor-error'
-        ? { phase: 'refused', problem: event.reason === 'sensor-error' ? 'sensor-error' : 'not-allowed' }
-        : { phase: 'idle' };
+      return beforeRecording(event.reason);
     case 'start-wanted':
       return recordingFrom(session, session.nowS, 0);
     case 'advanced': {
@@ -125,6 +122,13 @@ function fromSettling(session: In<'settling'>, event: SessionEvent): Session {
     default:
       return session;
   }
+}
+
+/** Nothing has been recorded yet: the sensor is refused, or the session is cut without samples. */
+function beforeRecording(reason: InterruptionCode): Session {
+  if (reason === 'sensor-error') return { phase: 'refused', problem: 'sensor-error' };
+  if (reason === 'permission-withdrawn') return { phase: 'refused', problem: 'not-allowed' };
+  return ending(reason);
 }
 
 /** The recording that an advance starts by itself: the timer ran out at rest, or the first tap came after rest. */

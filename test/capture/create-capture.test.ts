@@ -74,6 +74,16 @@ describe('createCapture', () => {
     expect(state.journalId).toBe('J');
   });
 
+  it('is cut without samples when the page is hidden before anything is recorded', async () => {
+    const { capture, phone } = setUp();
+    await capture.open(BY_HAND);
+    phone.pass(2);
+    phone.interrupt('hidden');
+    await phone.settle();
+    expect(capture.state).toEqual({ phase: 'cut', reason: 'hidden', recording: undefined, journalId: '' });
+    expect(phone.log).toMatchObject({ isRecorderHeld: false, isSensorOn: false });
+  });
+
   it('cuts when the sensor fails, goes silent, or the permission is withdrawn', async () => {
     const failed = await recordingOf();
     failed.phone.pass(2);

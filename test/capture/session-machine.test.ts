@@ -53,10 +53,10 @@ const run = (events: readonly SessionEvent[]): Session[] => {
 /** Phases that may follow each other; anything else is an impossible session. */
 const FOLLOWERS: Record<Session['phase'], readonly Session['phase'][]> = {
   idle: ['asking'],
-  asking: ['refused', 'checking', 'settling'],
+  asking: ['refused', 'checking', 'settling', 'ending'],
   refused: ['asking'],
   checking: ['ending'],
-  settling: ['recording', 'refused'],
+  settling: ['recording', 'refused', 'ending'],
   recording: ['ending'],
   ending: ['done', 'cut'],
   done: ['asking'],

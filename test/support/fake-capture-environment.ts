@@ -66,6 +66,7 @@ export function fakeCaptureEnvironment(signal: Signal = () => [0, 0, 9.81]) {
 
   const environment: CaptureEnvironment = {
     support: 'likely',
+    keepsScreenOn: true,
     sources: () => [source],
     takeRecorder() {
       if (phone.isRecorderBusy) return Promise.resolve(undefined);

@@ -13,6 +13,7 @@ export function fakeCapture(): CapturePort & {
   let state: SessionState = { phase: 'idle' };
   return {
     support: 'likely',
+    keepsScreenOn: true,
     get state() {
       return state;
     },
