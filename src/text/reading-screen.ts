@@ -392,6 +392,7 @@ export const readingText = {
     photo: 'Add a photo',
     photoAlt: (n: number) => `Photo ${n} of this spot`,
     removePhoto: (n: number) => `Remove photo ${n}`,
+    photoRemoved: 'Photo removed.',
     photoFailed: 'This picture could not be read.',
   },
   conflict: {

@@ -4,6 +4,7 @@ import { ladderItemAt } from '../../core/picture/ladder-item-at.ts';
 import { ladderPicture, type LadderPicture } from '../../core/picture/ladder-picture.ts';
 import { ladderShapes } from '../../core/picture/ladder-shapes.ts';
 import { useElementSize } from './element-size.ts';
+import { keyActs } from './key-acts.ts';
 import './ladder-drawing.css';
 import styles from './ladder.module.css';
 import { measureLike } from './measure-text.ts';
@@ -55,6 +56,18 @@ const idsUpwards = (content: LadderContent): string[] =>
     .sort((a, b) => a.hz - b.hz)
     .map((item) => item.id);
 
+/** The next mark up or down from one, round the ends. */
+function neighbourOf(
+  content: LadderContent,
+  current: string | undefined,
+  upwards: boolean,
+): string | undefined {
+  const ids = idsUpwards(content);
+  const from = current === undefined ? -1 : ids.indexOf(current);
+  const next = upwards ? from + 1 : from === -1 ? ids.length - 1 : from - 1;
+  return ids[(next + ids.length) % ids.length];
+}
+
 /** The ladder: modes on the left, forcings on the right of a logarithmic frequency axis; wheel, pinch, drag and keys zoom it. */
 export function Ladder(props: LadderProps) {
   const { content, sentence, words, shownPerHz = 1, selected = NONE, current, onPick } = props;
@@ -91,30 +104,18 @@ export function Ladder(props: LadderProps) {
     const scale = picture.size.widthPx / box.width;
     onPick(ladderItemAt(picture, (event.clientX - box.left) * scale, (event.clientY - box.top) * scale));
   };
-  const step = (upwards: boolean) => {
-    const ids = idsUpwards(content);
-    const from = current === undefined ? -1 : ids.indexOf(current);
-    const next = upwards ? from + 1 : from === -1 ? ids.length - 1 : from - 1;
-    onPick?.(ids[(next + ids.length) % ids.length]);
-  };
-  const onKey = (event: KeyboardEvent) => {
-    if (event.ctrlKey || event.metaKey || event.altKey) return;
-    const acts: Record<string, () => void> = {
-      ArrowUp: () => step(true),
-      ArrowDown: () => step(false),
-      PageUp: () => zoom.pan(true),
-      PageDown: () => zoom.pan(false),
-      '+': () => zoom.zoom(true),
-      '=': () => zoom.zoom(true),
-      '-': () => zoom.zoom(false),
-      '0': () => zoom.whole(),
-      Escape: () => onPick?.(undefined),
-    };
-    const act = acts[event.key];
-    if (!act) return;
-    event.preventDefault();
-    act();
-  };
+  const step = (upwards: boolean) => onPick?.(neighbourOf(content, current, upwards));
+  const onKey = keyActs({
+    ArrowUp: () => step(true),
+    ArrowDown: () => step(false),
+    PageUp: () => zoom.pan(true),
+    PageDown: () => zoom.pan(false),
+    '+': () => zoom.zoom(true),
+    '=': () => zoom.zoom(true),
+    '-': () => zoom.zoom(false),
+    '0': () => zoom.whole(),
+    Escape: () => onPick?.(undefined),
+  });
 
   const still = (
     <div ref={frame} class={`${styles.frame} ${isZoomed ? styles.zoomed : ''}`}>

@@ -1,5 +1,6 @@
 import type { App } from '../../../app/app.ts';
 import { currentPlaceIds } from '../../../app/readings.ts';
+import { readingText } from '../../../text/reading-screen.ts';
 import { photoJpeg } from './photo-jpeg.ts';
 import type { OpenedView, ReadingLinks, ReadingUseCases } from './reading-use-cases.ts';
 
@@ -47,7 +48,7 @@ export const readingUseCases = (app: App): ReadingUseCases => ({
     const { jpeg, widthPx, heightPx } = await photoJpeg(image);
     await app.readings.savePhoto(id, jpeg, widthPx, heightPx);
   },
-  removePhoto: (photoId) => app.readings.edit(photoId, { trashed: true }),
+  removePhoto: (photoId) => app.readings.edit(photoId, { trashed: true }, readingText.notes.photoRemoved),
   device: app.store.device,
 });
 

@@ -1,4 +1,4 @@
-import type { Analysis } from '../../../core/model/analysis.ts';
+import { useEffect, useRef } from 'preact/hooks';
 import type { Judgement, Separation } from '../../../core/model/judgement.ts';
 import type { Source } from '../../../core/model/source.ts';
 import { formatNumber } from '../../../text/number.ts';
@@ -15,6 +15,7 @@ import { saidHz, type ReadingUnits } from './reading-units.ts';
 import { Slider } from './slider.tsx';
 import { likelyHz } from './true-frequency.ts';
 import styles from './try-panel.module.css';
+import type { Judged } from './use-tried.ts';
 import { isNothingTried, nothingTried, presentSpeedRpm, type TriedChange } from './what-if.ts';
 
 /** Ends of the sliders: what a repair may reach (our own choice; beyond it the structure is another one). */
@@ -24,9 +25,8 @@ const DAMPING: readonly [number, number] = [0.002, 0.2];
 const SPEED: readonly [number, number] = [0.4, 2];
 
 interface TryPanelProps {
-  readonly analysis: Analysis;
-  readonly judgement: Judgement;
-  readonly shown: { readonly analysis: Analysis; readonly judgement: Judgement };
+  readonly measured: Judged;
+  readonly shown: Judged;
   readonly sources: readonly Source[];
   readonly tried: TriedChange;
   readonly units: ReadingUnits;
@@ -36,15 +36,18 @@ interface TryPanelProps {
 
 /** Sliders for what could be changed; the ladder above follows at once, and the sentence says what came of it. */
 export function TryPanel(props: TryPanelProps) {
-  const { analysis, sources, tried, units, onChange } = props;
+  const { measured, sources, tried, units, onChange } = props;
+  const place = useRef<HTMLDivElement>(null);
+  // the button that opened this is gone: the keyboard goes on at the first slider
+  useEffect(() => place.current?.querySelector('input')?.focus({ preventScroll: true }), []);
   const { trying } = readingText;
-  const mode = analysis.modes[tried.modeIndex];
+  const mode = measured.analysis.modes[tried.modeIndex];
   const now = props.shown.analysis.modes[tried.modeIndex];
   if (!mode || !now) return null;
   const times = (factor: number) =>
     Math.abs(factor - 1) < 1e-9 ? trying.asMeasured : trying.times(formatNumber(factor, 3));
   return (
-    <div class={styles.panel} role="group" aria-label={trying.title}>
+    <div ref={place} class={styles.panel} role="group" aria-label={trying.title}>
       <TriedResult {...props} />
       <p class="note">{trying.ofMode(saidHz(units, likelyHz(mode)))}</p>
       <Slider
@@ -106,15 +109,15 @@ const severity = (judgement: Judgement, index: number): number => {
 };
 
 /** What came of the change: where the mode is now, its nearest pair, a worse pair elsewhere, and what became worse. */
-function TriedResult({ analysis, judgement, shown, tried, units }: TryPanelProps) {
+function TriedResult({ measured, shown, tried, units }: TryPanelProps) {
   const { trying } = readingText;
-  const before = analysis.modes[tried.modeIndex];
+  const before = measured.analysis.modes[tried.modeIndex];
   const now = shown.analysis.modes[tried.modeIndex];
   const own = worstOfMode(shown.judgement, tried.modeIndex);
   const [worst] = shown.judgement.separations;
   const isElsewhere = worst !== undefined && own !== undefined && worst.verdict !== own.verdict;
   const worse = shown.judgement.forcings.filter(
-    (_, index) => severity(shown.judgement, index) < severity(judgement, index),
+    (_, index) => severity(shown.judgement, index) < severity(measured.judgement, index),
   );
   return (
     <div class={styles.result} aria-live="polite">
