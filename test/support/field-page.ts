@@ -12,6 +12,9 @@ import { gzip, ownBuffer, sha256Of } from '../../src/store/raw-bytes.ts';
 import type { SessionOptions, SessionState } from '../../src/app/ports.ts';
 import { readingDraft, sampleRecording } from './reading-draft.ts';
 
+// What tsx wraps named functions in, for those that tests send into the page.
+Object.assign(globalThis, { __name: (value: unknown) => value });
+
 let store: Store | undefined;
 let capture: ReturnType<typeof createCapture> | undefined;
 const heard: string[] = [];
