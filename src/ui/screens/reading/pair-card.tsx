@@ -144,8 +144,8 @@ function ToneCard(props: {
   return (
     <>
       <p class={styles.said}>
-        {readingText.pair.toneAlone(saidHz(units, likelyHz(tone), tone.frequencySdHz))}{' '}
-        {saidMps2(units, tone.amplitudeMps2, tone.amplitudeSdMps2)}.
+        {keptTogether(readingText.pair.toneAlone(saidHz(units, likelyHz(tone), tone.frequencySdHz)))}{' '}
+        {keptTogether(saidMps2(units, tone.amplitudeMps2, tone.amplitudeSdMps2))}.
       </p>
       <p class="note">
         {sentenceCase(toneMatchText(judgement, index))}. {sentenceCase(readingText.fold(tone.fold.verdict))}.

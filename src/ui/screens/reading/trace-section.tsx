@@ -41,7 +41,10 @@ export function TraceSection(props: {
       xLabel: words.x,
       wholeX: [timeS[0] ?? 0, timeS.at(-1) ?? 1],
       yLabel: words.y(units.acceleration),
-      series: axisSeries(axes, accelerationMps2, toUnit(1, units.acceleration), true),
+      // the weaker axes over the stronger ones, so that none is hidden
+      series: axisSeries(axes, accelerationMps2, toUnit(1, units.acceleration), true).sort(
+        (a, b) => rmsOf(b.values) - rmsOf(a.values),
+      ),
       marks: analysis.tapTimesS.map((at, index) => ({
         at,
         label: String(index + 1),
@@ -52,10 +55,11 @@ export function TraceSection(props: {
     }),
     [timeS, accelerationMps2, axes, units, analysis.tapTimesS],
   );
+  const inOrder = [...spec.series].sort((a, b) => a.label.localeCompare(b.label));
   const peak = Math.max(0, ...accelerationMps2.map(largestOf));
   return (
     <Section title={words.title}>
-      <SeriesToggles series={spec.series} hidden={hidden} onToggle={toggle} />
+      <SeriesToggles series={inOrder} hidden={hidden} onToggle={toggle} />
       <LineChart
         name={words.title}
         sentence={words.sentence(
