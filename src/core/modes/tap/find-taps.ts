@@ -125,7 +125,7 @@ function bestSplit(
   const n = decay.end - decay.start;
   const least = linearColumnCount(components.length) + 2;
   if (n < 2 * least) return undefined;
-  const { leading, trailing, leadingSquare, trailingSquare } = scanSplits(
+  const { leading, trailing, leadingMotion, trailingMotion } = scanSplits(
     signal,
     decay,
     components,
@@ -153,7 +153,7 @@ function bestSplit(
   if (k === 0) return undefined;
   const gain = gains[k]!;
   const j = starts[k]!;
-  const motion = Math.min(leadingSquare[k]! - leading[k]!, trailingSquare[j]! - trailing[j]!);
+  const motion = Math.min(leadingMotion[k]! - leading[k]!, trailingMotion[j]! - trailing[j]!);
   if (gain < LEAST_JUMP_SHARE * motion) return undefined;
   if (gain < SURE_JUMP_SHARE * motion && !isSudden(gains, k, halfCycleSamples(signal, decay, components)))
     return undefined;

@@ -4,48 +4,70 @@ import { strongestOnsets } from './first-decay.ts';
 import type { FirstDecay } from './first-decay.ts';
 import { fitDecays } from './fit-decays.ts';
 import { residuals } from './modelled-signal.ts';
+import { quietNoiseVariance } from './quiet-noise.ts';
 import { refit } from './ring-down-state.ts';
 import type { RingDownSearch, SearchInput } from './ring-down-state.ts';
 import { strongestDecay } from './start-bank.ts';
+
+/** A place to begin: one ring-down fitted alone, beside tones that are taken for granted. */
+export interface FirstRingDown {
+  readonly tones: readonly Component[];
+  /** The record without those tones, which the ring-down was fitted to. */
+  readonly left: readonly Float64Array[];
+  readonly search: RingDownSearch;
+}
 
 /**
  * First components: steady tones over the whole record, then the strongest decaying line: rough frequency from the
  * whole record, best onset by matched filter, and what rings in the time after that onset.
  */
-export function firstRingDowns(input: SearchInput, noise: readonly number[]): RingDownSearch[] {
-  const { signal, rateHz } = input;
-  const weights = noise.map((v) => 1 / v);
-  const whole: FreeDecay[] = [{ start: 0, end: signal.timeS.length, onset: undefined }];
+export function firstRingDowns(input: SearchInput): FirstRingDown[] {
+  const { tones, left } = steadyTones(input);
+  const noise = quietNoiseVariance(left, input.rateHz, input.stepMps2);
+  const beside = startsBeside(input, tones, left, noise);
+  // A slow ring-down tapped in step can pass for a tone: the same without tones is kept as a last resort.
+  return tones.length === 0 ? beside : [...beside, ...startsBeside(input, [], input.signal.y, noise)];
+}
+
+/** Lines that keep amplitude and phase over the whole record, and what is left without them. */
+function steadyTones(input: SearchInput): { tones: Component[]; left: readonly Float64Array[] } {
+  const { signal, rateHz, stepMps2 } = input;
+  const noise = quietNoiseVariance(signal.y, rateHz, stepMps2);
+  const whole = [{ start: 0, end: signal.timeS.length }];
   let tones: Component[] = [];
   let left: readonly Float64Array[] = signal.y;
   while (tones.length < TONE_LIMIT) {
-    const rough = strongestDecay(signal, left, whole, rateHz, weights);
-    if (rough === undefined) return [];
+    const rough = strongestDecay(
+      signal,
+      left,
+      whole,
+      rateHz,
+      noise.map((v) => 1 / v),
+    );
+    if (rough === undefined) break;
     const slow = { ...rough.component, decayPerS: STEADY_START_PER_S };
     const line = fitDecays(signal, whole, [...tones, slow], noise, 1);
     if (!isSteady(signal, left, line.components.at(-1)!)) break;
     tones = [...line.components];
     left = residuals(signal, whole, line);
   }
-  const beside = startsBeside(input, tones, left, noise);
-  // A slow ring-down tapped in step can pass for a tone: the same without tones is kept as a last resort.
-  return tones.length === 0 ? beside : [...beside, ...startsBeside(input, [], signal.y, noise)];
+  return { tones, left };
 }
 
-/** Starts that take given tones for granted, likeliest first. */
+/** Starts that take given tones for granted: the cleanest first, then the likeliest. */
 function startsBeside(
   input: SearchInput,
   tones: readonly Component[],
   left: readonly Float64Array[],
   noise: readonly number[],
-): RingDownSearch[] {
+): FirstRingDown[] {
   const { signal, rateHz } = input;
   const weights = noise.map((v) => 1 / v);
-  const whole = [{ start: 0, end: signal.timeS.length }];
-  const rough = strongestDecay(signal, left, whole, rateHz, weights);
+  const toneless = { ...signal, y: left };
+  const rough = strongestDecay(signal, left, [{ start: 0, end: signal.timeS.length }], rateHz, weights);
   if (rough === undefined) return [];
-  const singles = strongestOnsets({ ...signal, y: left }, rough.component.angularRadPerS, weights)
-    .map((onset) => localSearch(input, left, tones, onset, noise))
+  const singles = strongestOnsets(toneless, rough.component.angularRadPerS, weights)
+    .map((onset) => localSearch({ ...input, signal: toneless }, onset, noise))
     .filter((single) => single !== undefined)
     .map((single) => startOf(left, single, noise));
   const most = Math.max(...singles.map(({ gain }) => gain));
@@ -56,7 +78,7 @@ function startsBeside(
   const first = cleanest[0];
   return [first, likeliest.find((start) => start !== first)]
     .filter((start) => start !== undefined)
-    .map(({ search }) => search);
+    .map(({ search }) => ({ tones, left, search }));
 }
 
 /** Starts that explain less than this share of the most are not looked at. */
@@ -91,24 +113,21 @@ function startOf(left: readonly Float64Array[], search: RingDownSearch, noise: r
 /** The decay that begins at a given onset, fitted alone over two time constants. */
 function localSearch(
   input: SearchInput,
-  left: readonly Float64Array[],
-  tones: readonly Component[],
   onset: FirstDecay,
   noise: readonly number[],
 ): RingDownSearch | undefined {
   const { signal, rateHz } = input;
   const start = Math.min(onset.onset + 2, signal.timeS.length - 12);
-  const local: FreeDecay[] = [
-    { start, end: endAfter(signal, start, 2 / onset.decayPerS), onset: onset.onset },
-  ];
+  const end = endAfter(signal, start, 2 / onset.decayPerS);
+  const local: FreeDecay[] = [{ start, end, onset: onset.onset }];
   const peak = strongestDecay(
     signal,
-    left,
+    signal.y,
     local,
     rateHz,
     noise.map((v) => 1 / v),
   );
-  return peak && refit(signal, local, [...tones, peak.component], noise);
+  return peak && refit(signal, local, [peak.component], noise);
 }
 
 /** A line that falls less than this over the whole record is steady: a tone. */

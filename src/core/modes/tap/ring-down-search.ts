@@ -3,9 +3,9 @@ import type { Component, DecaySignal } from './decay-model.ts';
 import { bayesCost, recordCost } from './bayes-cost.ts';
 import { COARSE, FINE, TAP_LIMIT, findTaps } from './find-taps.ts';
 import { firstRingDowns } from './first-ring-downs.ts';
+import type { FirstRingDown } from './first-ring-downs.ts';
 import { fitDecays } from './fit-decays.ts';
 import { withOneMore } from './one-more-component.ts';
-import { quietNoiseVariance } from './quiet-noise.ts';
 import { found, refit } from './ring-down-state.ts';
 import type { RingDownSearch, SearchInput } from './ring-down-state.ts';
 
@@ -19,23 +19,22 @@ const LARGEST_DAMPING_RATIO = 0.3;
 /** Finds taps, modes and tones of a tap record, alternately, each with what is known of the others. */
 export function searchRingDowns(input: SearchInput): RingDownSearch | undefined {
   const { signal } = input;
-  const noise = quietNoiseVariance(signal.y, input.rateHz, input.stepMps2);
   let best: RingDownSearch | undefined;
-  for (const start of firstRingDowns(input, noise)) {
-    const result = searchFrom(input, start, noise);
+  for (const start of firstRingDowns(input)) {
+    const result = searchFrom(input, start);
     if (best === undefined || recordCost(signal, result) < recordCost(signal, best)) best = result;
     if (leavesOnlyNoise(best)) break;
   }
   return best;
 }
 
-export function searchFrom(
-  input: SearchInput,
-  start: RingDownSearch,
-  noise: readonly number[],
-): RingDownSearch {
-  const first = withOneMore(input, start, noise) ?? start;
-  const result = search(input, settle(input, first, noise, COARSE), noise);
+function searchFrom(input: SearchInput, { tones, left, search: single }: FirstRingDown): RingDownSearch {
+  const noise = single.quietVariance;
+  const local = withOneMore({ ...input, signal: { ...input.signal, y: left } }, single, noise) ?? single;
+  // Only shapes and noise are taken over: the first round fits the whole record.
+  const components = [...tones, ...local.fit.components];
+  const start: RingDownSearch = { ...local, fit: { ...local.fit, components } };
+  const result = search(input, settle(input, start, noise, COARSE), noise);
   return result.tapCount >= TAP_LIMIT ? result : withTones(input.signal, prune(input, result, noise));
 }
 

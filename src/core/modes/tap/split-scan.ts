@@ -1,5 +1,5 @@
 import { choleskyInPlace, forwardSubstitute } from '../../signal/linear-algebra.ts';
-import { linearColumnCount } from './decay-model.ts';
+import { DRIFT_COLUMNS, linearColumnCount } from './decay-model.ts';
 import type { Component, DecaySignal, Segment } from './decay-model.ts';
 
 /** Weighted residual sums of squares of the free-decay model on every leading and every trailing part of a segment. */
@@ -8,9 +8,9 @@ export interface SplitScan {
   readonly leading: Float64Array;
   /** trailing[k]: samples start+k .. end-1; length n+1. */
   readonly trailing: Float64Array;
-  /** Squares of the same parts themselves; length n+1 each. */
-  readonly leadingSquare: Float64Array;
-  readonly trailingSquare: Float64Array;
+  /** The same with drift and steady lines alone: what there is beside them, ringing included; length n+1 each. */
+  readonly leadingMotion: Float64Array;
+  readonly trailingMotion: Float64Array;
 }
 
 /**
@@ -25,16 +25,25 @@ export function scanSplits(
 ): SplitScan {
   const n = segment.end - segment.start;
   const p = linearColumnCount(components.length);
-  const columns = segmentColumns(signal, segment, components, p);
-  const leading = runningResidual(signal, segment, columns, p, axisWeights, 1, n);
-  const trailing = runningResidual(signal, segment, columns, p, axisWeights, -1, n);
+  // Drift and steady lines first: their share of the squares then comes apart from that of what decays.
+  const steady = components.filter((c) => isSteadyLine(c));
+  const ordered = [...steady, ...components.filter((c) => !isSteadyLine(c))];
+  const columns = segmentColumns(signal, segment, ordered, p);
+  const steadyColumns = DRIFT_COLUMNS + 2 * steady.length;
+  const leading = runningResidual(signal, segment, columns, p, steadyColumns, axisWeights, 1, n);
+  const trailing = runningResidual(signal, segment, columns, p, steadyColumns, axisWeights, -1, n);
   return {
     leading: leading.residual,
     trailing: trailing.residual,
-    leadingSquare: leading.whole,
-    trailingSquare: trailing.whole,
+    leadingMotion: leading.whole,
+    trailingMotion: trailing.whole,
   };
 }
+
+/** Damping below which a line counts as steady here: a tone that the fit has not yet been told to be one. */
+const STEADY_DAMPING_RATIO = 5e-4;
+
+const isSteadyLine = (c: Component): boolean => c.decayPerS < STEADY_DAMPING_RATIO * c.angularRadPerS;
 
 function segmentColumns(
   signal: DecaySignal,
@@ -55,11 +64,11 @@ function segmentColumns(
     for (let k = 0; k < m; k++) {
       const component = components[k]!;
       const envelope = component.decayPerS === 0 ? 1 : Math.exp(-component.decayPerS * tau);
-      columns[row + 2 * k] = envelope * Math.cos(component.angularRadPerS * phaseTau);
-      columns[row + 2 * k + 1] = envelope * Math.sin(component.angularRadPerS * phaseTau);
+      columns[row + DRIFT_COLUMNS + 2 * k] = envelope * Math.cos(component.angularRadPerS * phaseTau);
+      columns[row + DRIFT_COLUMNS + 2 * k + 1] = envelope * Math.sin(component.angularRadPerS * phaseTau);
     }
-    columns[row + 2 * m] = 1;
-    columns[row + 2 * m + 1] = tau / span - 0.5;
+    columns[row] = 1;
+    columns[row + 1] = tau / span - 0.5;
   }
   return columns;
 }
@@ -69,6 +78,7 @@ function runningResidual(
   segment: Segment,
   columns: Float64Array,
   p: number,
+  steadyColumns: number,
   axisWeights: readonly number[],
   step: 1 | -1,
   n: number,
@@ -101,9 +111,10 @@ function runningResidual(
     for (let a = 0; a < axisCount; a++) {
       forwardSubstitute(lower, p, v, a * p);
       let rss = square[a]!;
-      for (let r = 0; r < p; r++) rss -= v[a * p + r]! * v[a * p + r]!;
+      for (let r = 0; r < steadyColumns; r++) rss -= v[a * p + r]! * v[a * p + r]!;
+      all += axisWeights[a]! * Math.max(rss, 0);
+      for (let r = steadyColumns; r < p; r++) rss -= v[a * p + r]! * v[a * p + r]!;
       sum += axisWeights[a]! * Math.max(rss, 0);
-      all += axisWeights[a]! * square[a]!;
     }
     const at = step === 1 ? count : k;
     residual[at] = sum;

@@ -40,6 +40,8 @@ const LARGEST_DAMPING_SPREAD = 0.3;
 const LARGEST_FREQUENCY_SPREAD = 0.02;
 /** Above this damping nothing rings that a tap test could read: a tenth is left after two cycles. */
 const LARGEST_DAMPING_RATIO = 0.2;
+/** A mode must be seen ringing for this many cycles between two taps: less is a shape, not a vibration. */
+const LEAST_CYCLES = 4;
 /** Two lines that cancel each other have amplitudes beyond anything measured. */
 const LARGEST_AMPLITUDE_FACTOR = 3;
 /** Share of the motion under the ring-downs that the fit must explain; below, it is not free decay. */
@@ -127,7 +129,7 @@ function answerOf(
       const colour = residualColour(signal, decays, fit, left, fit.components[k]!);
       return { k, estimate: modeEstimate(signal, decays, fit, k, colour) };
     })
-    .filter(({ estimate }) => isAnswer(estimate, fit, largest))
+    .filter(({ estimate }) => isAnswer(signal, decays, estimate, fit, largest))
     .sort((a, b) => ringEnergy(b.estimate) - ringEnergy(a.estimate));
   if (estimates.length === 0) return failure(search.tapCount === 0 ? 'no-taps' : 'no-decay');
   const strongest = fit.components[estimates[0]!.k]!;
@@ -199,13 +201,32 @@ function explainedShare(
 const ringEnergy = ({ amplitudesMps2, dampingRatio, frequencyHz }: ModeEstimate): number =>
   Math.max(...amplitudesMps2) ** 2 / (dampingRatio * frequencyHz);
 
-function isAnswer(estimate: ModeEstimate, fit: DecayFit, largestMps2: number): boolean {
+/** Cycles of a mode within a decay, averaged over the decays by its energy in them. */
+function cyclesSeen(signal: DecaySignal, decays: readonly FreeDecay[], estimate: ModeEstimate): number {
+  let cycles = 0;
+  let energy = 0;
+  decays.forEach(({ start, end }, s) => {
+    const weight = estimate.amplitudesMps2[s]! ** 2;
+    cycles += weight * estimate.frequencyHz * (signal.timeS[end - 1]! - signal.timeS[start]!);
+    energy += weight;
+  });
+  return cycles / Math.max(energy, 1e-30);
+}
+
+function isAnswer(
+  signal: DecaySignal,
+  decays: readonly FreeDecay[],
+  estimate: ModeEstimate,
+  fit: DecayFit,
+  largestMps2: number,
+): boolean {
   const noise = Math.sqrt(fit.variance.reduce((a, b) => a + b, 0) / fit.variance.length);
   return (
     Math.max(...estimate.amplitudesMps2) > LEAST_AMPLITUDE_SDS * noise &&
     Math.max(...estimate.amplitudesMps2) < LARGEST_AMPLITUDE_FACTOR * largestMps2 &&
     estimate.frequencySdHz < LARGEST_FREQUENCY_SPREAD * estimate.frequencyHz &&
     estimate.dampingRatio < LARGEST_DAMPING_RATIO &&
+    cyclesSeen(signal, decays, estimate) > LEAST_CYCLES &&
     estimate.dampingRatioSd < LARGEST_DAMPING_SPREAD * estimate.dampingRatio
   );
 }

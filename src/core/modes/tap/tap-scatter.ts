@@ -15,8 +15,8 @@ export interface Combination {
 
 /** Taps that know this many times less than the best one say nothing about scatter. */
 const LEAST_INFORMATION_SHARE = 0.03;
-/** Standard normal quantile of the scatter test: one honest record in fifty is widened for nothing. */
-const SCATTER_TEST_Z = 2.054;
+/** Standard normal quantile of the scatter test: one honest record in two hundred is widened for nothing. */
+const SCATTER_TEST_Z = 2.576;
 const Z95 = 1.959964;
 
 /**
