@@ -3,6 +3,7 @@
 import './ui/styles/index.css';
 import { render } from 'preact';
 import { createApp } from './app/app.ts';
+import { takeLaunchedFiles } from './app/launched-files.ts';
 import { createNavigation } from './app/navigation.ts';
 import { createOfflineUpdates } from './app/offline-updates.ts';
 import { createCapture } from './capture/create-capture.ts';
@@ -61,6 +62,7 @@ async function assemble(place: HTMLElement): Promise<void> {
     if (what === 'closed') app.notices.show(screenText.storeClosed, { tone: 'failure' });
   });
   render(<Root app={app} />, place);
+  takeLaunchedFiles(window, (file) => void app.take.openFile(file));
 }
 
 const errorText = (error: unknown) => (error instanceof Error ? error.message : String(error));

@@ -24,7 +24,7 @@ export type TakeState =
       readonly journalId: string;
     }
   | { readonly phase: 'analysing' }
-  | { readonly phase: 'failed'; readonly problem: Problem }
+  | { readonly phase: 'failed'; readonly problem: Problem; readonly journalId: string | undefined }
   | { readonly phase: 'unsaved'; readonly detail: string; readonly retry: () => void }
   | { readonly phase: 'kept'; readonly id: string };
 
@@ -63,16 +63,22 @@ export function createTakeFlow(parts: TakeParts): TakeFlow {
   const state = live<TakeState>({ phase: 'prepare' });
   const plan = live(parts.plan);
   let abort: AbortController | undefined;
+  /** Journal of the recording that is being worked out. */
+  let inHand: string | undefined;
+  const drop = (journalId: string | undefined) => {
+    if (journalId) void parts.store.dropJournal(journalId);
+  };
 
   async function analyseAndKeep(recording: Recording, journalId?: string, label?: string): Promise<void> {
     abort = new AbortController();
+    inHand = journalId;
     const { signal } = abort;
     state.set({ phase: 'analysing' });
     const isFile = recording.sensor.source === 'file';
     const settings: AnalysisSettings = { procedure: isFile ? 'auto' : plan.get().procedure, timing: 'auto' };
     const outcome = await parts.analysis.analyse(recording, settings, signal);
     if (signal.aborted) return;
-    if (!outcome.ok) return state.set({ phase: 'failed', problem: outcome.problem });
+    if (!outcome.ok) return state.set({ phase: 'failed', problem: outcome.problem, journalId });
     const keep = async () => {
       try {
         const draft = await readingDraft(parts, plan.get(), recording, outcome.value.analysis);
@@ -103,8 +109,11 @@ export function createTakeFlow(parts: TakeParts): TakeFlow {
     start: () => parts.capture.start(),
     finish: () => parts.capture.finish(),
     cancel() {
+      const left = state.get();
       abort?.abort();
       parts.capture.cancel();
+      if (left.phase === 'analysing') drop(inHand);
+      if (left.phase === 'failed' || left.phase === 'cut') drop(left.journalId);
       state.set({ phase: 'prepare' });
     },
     useCut() {
@@ -113,7 +122,7 @@ export function createTakeFlow(parts: TakeParts): TakeFlow {
     },
     reset() {
       const left = state.get();
-      if (left.phase === 'cut') void parts.store.dropJournal(left.journalId);
+      if (left.phase === 'cut' || left.phase === 'failed') drop(left.journalId);
       state.set({ phase: 'prepare' });
     },
     takeFile: (recording, name) => analyseAndKeep(recording, undefined, name),

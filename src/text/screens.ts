@@ -167,6 +167,8 @@ const english = {
     tapsOf: (n: number) =>
       n < 3 ? `${count(n, 'tap', 'taps')}, at least 3 wanted` : count(n, 'tap', 'taps'),
     left: (seconds: number) => `${seconds} s left`,
+    screenMayDim:
+      'This browser cannot keep the screen on. Touch the screen edge now and then, away from the phone’s middle, or set a longer screen time: when it locks, the recording ends.',
     finish: 'Finish',
     finishEnough: 'Enough, work it out',
     hints: {
@@ -311,7 +313,8 @@ const english = {
     setSpot: 'Set spot',
     spotSet: (n: number) => `Spot set for ${count(n, 'reading', 'readings')}.`,
     noFrequency: 'no mode or tone',
-    pick: 'Choose a reading to see it here.',
+    newer: (n: number) =>
+      `${count(n, 'reading was', 'readings were')} made by a newer version of the program: kept, and shown after an update.`,
   },
 } as const;
 

@@ -92,7 +92,7 @@ describe('the office: opens, compares, edits, undoes', () => {
 describe('every screen under axe, in three themes', () => {
   /** WCAG 2.2 AA and the axe rules of good practice. */
   const findings = async (rules?: readonly string[]): Promise<string[]> => {
-    const builder = new AxeBuilder({ page: browser.page });
+    const builder = new AxeBuilder({ page: browser.page }).setLegacyMode();
     const { violations } = await (rules ? builder.withRules([...rules]) : builder).analyze();
     return violations.flatMap((violation) =>
       violation.nodes.map((node) => `${violation.id}: ${node.target.join(' ')} ${node.failureSummary ?? ''}`),

@@ -5,6 +5,7 @@
 import { mkdirSync } from 'node:fs';
 import { launchBrowser, serveApp } from '../support/browser.ts';
 import { furnish, screenHashes } from '../support/furnish.ts';
+import { walkTakeStates } from '../support/take-states.ts';
 
 const SIZES = [
   { width: 360, height: 740 },
@@ -26,10 +27,21 @@ const shoot = async (name: string, theme: string, width: number, whole: boolean)
   await page.screenshot({ path: `${FOLDER}/${name}-${width}-${theme}.png`, fullPage: whole });
 };
 
-const ids = await furnish(page, app.url, async (name) => {
-  if (!wanted || name.includes(wanted)) await shoot(name, 'light', SIZES[0].width, false);
-});
 let count = 0;
+const inThemes = (width: number) => async (name: string) => {
+  if (wanted && !name.includes(wanted)) return;
+  for (const theme of THEMES) {
+    await page.evaluate((next) => void (document.documentElement.dataset['theme'] = next), theme);
+    await shoot(name, theme, width, false);
+    count += 1;
+  }
+};
+for (const size of SIZES) {
+  await page.setViewportSize(size);
+  if (!wanted || wanted.startsWith('take')) await walkTakeStates(page, app.url, inThemes(size.width));
+}
+await page.setViewportSize(SIZES[0]);
+const ids = await furnish(page, app.url, inThemes(SIZES[0].width));
 for (const [name, hash] of Object.entries(screenHashes)) {
   if (wanted && !name.includes(wanted)) continue;
   for (const size of SIZES) {
@@ -37,11 +49,7 @@ for (const [name, hash] of Object.entries(screenHashes)) {
     await page.goto(`${app.url}${hash(ids)}`);
     await page.getByRole('heading', { level: 1 }).first().waitFor();
     await page.waitForTimeout(name === 'reading' ? 900 : 250);
-    for (const theme of THEMES) {
-      await page.evaluate((next) => void (document.documentElement.dataset['theme'] = next), theme);
-      await shoot(name, theme, size.width, false);
-      count += 1;
-    }
+    await inThemes(size.width)(name);
   }
 }
 process.stdout.write(

@@ -69,11 +69,6 @@ export const IconFile = () => (
     <path d="M6 3h8l4 4v14H6zM14 3v4h4M9 13h6M9 16.5h6" />
   </Drawing>
 );
-export const IconDone = () => (
-  <Drawing>
-    <path d="M5 12.5l4.5 4.5L19 7.5" />
-  </Drawing>
-);
 export const IconCaution = () => (
   <Drawing>
     <path d="M12 4l9 16H3zM12 10v5M12 17.6v.1" />

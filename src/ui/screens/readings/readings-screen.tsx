@@ -25,6 +25,7 @@ export function ReadingsScreen({ app, trashed }: { readonly app: App; readonly t
     () => app.readings.list({ ...(search.trim() ? { text: search.trim() } : {}), trashed }),
     [search, trashed],
   );
+  const newer = useLoaded(app.store, () => app.store.newerReadings(), []);
   const { shown, sentinel } = useShownCount(readings?.length ?? 0, search);
   const stop = () => {
     setSelected(new Set());
@@ -68,6 +69,7 @@ export function ReadingsScreen({ app, trashed }: { readonly app: App; readonly t
           onChange={(on) => setSelected(new Set(on ? readings?.map((reading) => reading.id) : []))}
         />
       )}
+      {newer !== undefined && newer.length > 0 && <p class="note">{text.newer(newer.length)}</p>}
       {readings?.length === 0 && <p class="quiet">{search ? text.noneFound : text.none}</p>}
       {readings && readings.length > 0 && (
         <Rows label={text.title}>

@@ -18,6 +18,9 @@ const text = screenText.take;
 /** Below this many taps the finish button does not yet say "enough"; estimators want at least three. */
 const ENOUGH_TAPS = 3;
 
+/** Phones dim their screen after about this long without a touch, s. */
+const SHORT_S = 30;
+
 type Session = Exclude<SessionState, { phase: 'idle' | 'done' | 'cut' | 'refused' }>;
 
 export function CaptureStep(props: {
@@ -47,9 +50,17 @@ export function CaptureStep(props: {
       )}
       {session.phase === 'recording' && (
         <>
-          {isTap && <Tally count={session.tapCount} label={text.taps(session.tapCount)} />}
+          {isTap && (
+            <div class="row">
+              <span class="figure" aria-hidden="true">
+                {session.tapCount}
+              </span>
+              <Tally count={session.tapCount} label={text.taps(session.tapCount)} />
+            </div>
+          )}
           {isTap && <p aria-live="polite">{text.tapsOf(session.tapCount)}</p>}
           <TimeLeft session={session} />
+          {!app.capture.keepsScreenOn && plan.durationS > SHORT_S && <p class="note">{text.screenMayDim}</p>}
         </>
       )}
       <p role="status" aria-live="polite">
