@@ -103,6 +103,12 @@ const decayText = (ringDown: RingDown, specs: Specs, units: ReadingUnits, index:
     : `${head}: ${words.measured} ${saidMps2(units, value / per)}, ${curve}`;
 };
 
+const peakOf = ({ measuredMps2 }: RingDown): number => Math.max(0, ...measuredMps2.map(Math.abs));
+
+/** The ring-down to begin with: the one that stands highest above the noise. */
+const strongestOf = (ringDowns: readonly RingDown[]): number =>
+  ringDowns.reduce((best, one, i) => (peakOf(one) > peakOf(ringDowns[best]!) ? i : best), 0);
+
 /** One ring-down at a time: measured points over the fitted curve, and below it what the fit leaves. */
 export function RingDownSection(props: {
   readonly ringDowns: readonly RingDown[];
@@ -110,13 +116,13 @@ export function RingDownSection(props: {
 }) {
   const { ringDowns, units } = props;
   const words = readingText.ringDown;
-  const [chosen, setChosen] = useState(0);
+  const [chosen, setChosen] = useState(() => strongestOf(ringDowns));
   const [range, setRange] = useState<Interval | undefined>();
   const index = Math.min(chosen, ringDowns.length - 1);
   const ringDown = ringDowns[index]!;
   const specs = useMemo(() => specsOf(ringDown, units), [ringDown, units]);
   const residualRms = saidMps2(units, rmsOf(residualOf(ringDown)));
-  const peak = saidMps2(units, Math.max(0, ...ringDown.measuredMps2.map(Math.abs)));
+  const peak = saidMps2(units, peakOf(ringDown));
   const choose = (next: number) => {
     setChosen(next);
     setRange(undefined);
@@ -167,7 +173,7 @@ export function RingDownSection(props: {
             rows: ringDowns.map((one, i) => [
               String(i + 1),
               `${formatNumber(one.tapTimeS, 3)} s`,
-              saidMps2(units, Math.max(0, ...one.measuredMps2.map(Math.abs))),
+              saidMps2(units, peakOf(one)),
               saidMps2(units, rmsOf(residualOf(one))),
               formatPercent(explainedShare(one), 3),
             ]),
