@@ -2,11 +2,14 @@
  * What the app needs of the edges. Capture, store, exchange and worker satisfy these; main.tsx plugs them in;
  * tests plug in fakes. No edge imports another edge.
  */
-import type { AnalysisSettings } from '../core/model/analysis.ts';
-import type { AnalysisResult } from '../core/model/pictures.ts';
+import type { Analysis, AnalysisSettings } from '../core/model/analysis.ts';
+import type { Judgement } from '../core/model/judgement.ts';
+import type { AnalysisPictures, AnalysisResult } from '../core/model/pictures.ts';
+import type { Place } from '../core/model/place.ts';
+import type { Source } from '../core/model/source.ts';
 import type { Outcome } from '../core/model/outcome.ts';
 import type { Problem } from '../core/model/problem.ts';
-import type { InterruptionCode, Recording } from '../core/model/recording.ts';
+import type { AxisName, InterruptionCode, Recording } from '../core/model/recording.ts';
 import type {
   EditFact,
   Entity,
@@ -17,6 +20,7 @@ import type {
   ReadingFact,
   ResultFact,
 } from '../core/model/fact.ts';
+import type { AccelerationUnit, DisplacementUnit, FrequencyUnit, VelocityUnit } from '../text/quantity.ts';
 
 // ---------------------------------------------------------------- worker
 export interface AnalysisPort {
@@ -243,9 +247,88 @@ export interface JournalPort {
 }
 
 // ---------------------------------------------------------------- exchange
+/** Long work can be watched and stopped; aborting rejects with the signal's reason and leaves nothing half done. */
+export interface Watch {
+  readonly signal: AbortSignal;
+  /** Share done, 0 to 1. */
+  readonly onProgress: (share: number) => void;
+}
+
+/** A reading with everything that a report prints of it. */
+export interface ReportReading {
+  readonly reading: ReadingFact;
+  /** The newest kept analysis; `redoneAt` where that is not the first. */
+  readonly analysis: Analysis;
+  readonly redoneAt?: string;
+  readonly judgement: Judgement;
+  readonly sources: readonly Source[];
+  readonly names: { readonly site?: string; readonly asset?: string; readonly spot?: string };
+  readonly place?: Place;
+  readonly label?: string;
+  readonly notes?: string;
+  /** Of the reading first, then of its spot. */
+  readonly photos: readonly Uint8Array[];
+  readonly axes: readonly AxisName[];
+  /** Absent where the stored samples give no answer any more. */
+  readonly pictures?: AnalysisPictures;
+}
+
+export interface ReportUnits {
+  readonly frequency: FrequencyUnit;
+  readonly acceleration: AccelerationUnit;
+  readonly velocity: VelocityUnit;
+  readonly displacement: DisplacementUnit;
+}
+
+export interface ReportContent {
+  readonly readings: readonly ReportReading[];
+  readonly units: ReportUnits;
+}
+
+/** A chart of a reading as a file. */
+export const CHARTS = ['ladder', 'spectrum', 'ring-down'] as const;
+export type Chart = (typeof CHARTS)[number];
+
+export interface NewReading {
+  readonly id: string;
+  readonly recordedAt: string;
+  readonly procedure: ReadingFact['procedure'];
+  readonly practice: boolean;
+  /** Site, asset, spot or name, as far as the packet tells. */
+  readonly where: readonly string[];
+  readonly analysis: Analysis;
+}
+
+/** What a packet holds, told before anything of it is taken. */
 export interface ImportPreview {
-  readonly newCount: number;
-  readonly knownCount: number;
+  readonly newReadings: readonly NewReading[];
+  readonly knownReadingCount: number;
+  /** Places, sources, names, notes, photos, redone analyses that are not here yet. */
+  readonly otherNewCount: number;
+  /** Of a kind or version that this program does not know: kept and handed on untouched. */
+  readonly newerCount: number;
   readonly refused: readonly { readonly name: string; readonly problem: Problem }[];
-  take(): Promise<{ readonly added: number }>;
+  /** Put if absent, in steps; what was taken before an abort stays, and taking again goes on from there. */
+  take(watch: Watch): Promise<{ readonly added: number; readonly damaged: readonly string[] }>;
+}
+
+/** Files in and out. Everything is made before the tap that hands it over: browsers allow sharing only right after one. */
+export interface ExchangePort {
+  /** `report` is printed into it; without one it gets a list of its readings. */
+  packet(readings: readonly string[] | 'all', report: ReportContent | undefined, watch: Watch): Promise<File>;
+  /** One page that carries the packet of its readings inside. */
+  report(content: ReportContent, watch: Watch): Promise<File>;
+  readingsTable(readings: readonly string[] | 'all', watch: Watch): Promise<File>;
+  samples(opened: OpenedReading, as: 'csv' | 'npy'): File;
+  /** Undefined where this reading has no such chart. */
+  chart(of: ReportReading, units: ReportUnits, chart: Chart, as: 'svg' | 'png'): Promise<File | undefined>;
+  /** Packet, or report with a packet inside. */
+  preview(file: Blob, watch: Watch): Promise<Outcome<ImportPreview>>;
+  /** Whether this browser's share sheet takes such a file. */
+  canShare(file: File): boolean;
+  /** Whether saving would trap the person (home-screen app on iOS): then only sharing is offered. */
+  readonly savesSafely: boolean;
+  /** Call it right in the tap. */
+  share(file: File): Promise<'shared' | 'cancelled' | 'refused'>;
+  save(file: File): void;
 }
