@@ -128,6 +128,8 @@ function loadedOnce<T>(load: () => Promise<T>): () => Promise<T> {
 
 /** A name for this phone in edits, made once; says nothing about its owner. */
 async function deviceOf(connection: Connection, environment: StoreEnvironment): Promise<string> {
+  const made = await connection.run((database) => database.get('settings', 'device'));
+  if (typeof made === 'string') return made;
   return connection.change(['settings'], 'strict', async (change) => {
     const settings = change.objectStore('settings');
     const known = await settings.get('device');
