@@ -1,4 +1,5 @@
 import { complexTransform, nextPowerOfTwo } from '../signal/fft.ts';
+import { envelopeDirection } from './narrow-band.ts';
 import type { Envelope } from './narrow-band.ts';
 
 /** Passes of the cyclic refinement; each line is re-estimated with the others taken out. */
@@ -9,8 +10,9 @@ const STEPS = 4;
 export interface SteadyLines {
   /** Frequencies against the band's centre, Hz. */
   readonly offsetsHz: readonly number[];
-  /** Summed squared amplitude over axes of each line. */
+  /** Summed squared amplitude over axes of each line, and its direction (unit vector). */
   readonly powers: readonly number[];
+  readonly directions: readonly (readonly number[])[];
   /** Mean squared envelope left over, and of the whole, summed over axes. */
   readonly leftPower: number;
   readonly totalPower: number;
@@ -51,6 +53,12 @@ export function fitSteadyLines(envelope: Envelope, count: number): SteadyLines {
   return {
     offsetsHz: lines.map((l) => l.offsetHz),
     powers: lines.map(power),
+    directions: lines.map((line) =>
+      envelopeDirection({
+        re: line.re.map((v) => Float64Array.of(v)),
+        im: line.im.map((v) => Float64Array.of(v)),
+      }),
+    ),
     leftPower: meanPower(left.re, left.im),
     totalPower,
   };

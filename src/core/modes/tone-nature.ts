@@ -46,6 +46,7 @@ export interface BandNature {
   readonly power: number;
   /** Squared amplitude of each steady line, summed over axes; same order as the frequencies. */
   readonly linePowers: readonly number[];
+  readonly lineDirections: readonly (readonly number[])[];
   /** Floor along the direction, (m/s²)²/Hz. */
   readonly floorPerHz: number;
 }
@@ -77,6 +78,7 @@ export function bandNature(
       kind: 'steady',
       frequenciesHz: lines.offsetsHz.map((offset) => narrowest.envelope.centreHz + offset),
       linePowers: lines.powers,
+      lineDirections: lines.directions,
     };
   const judged = looks.find((look) => look.noise <= NOISE_SHARE_LIMIT * look.power) ?? narrowest;
   const kind = kindOf(judged, wholeHz, source.durationS);
@@ -131,6 +133,7 @@ const describe = (look: Look): Omit<BandNature, 'kind'> => ({
   direction: look.direction,
   power: Math.max(look.power - look.noise, 1e-12),
   linePowers: [Math.max(look.power - look.noise, 1e-12)],
+  lineDirections: [look.direction],
   floorPerHz: look.noise / (4 * look.halfWidthHz),
 });
 
