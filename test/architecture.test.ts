@@ -26,7 +26,7 @@ const LAYERS: readonly Layer[] = [
   { within: 'core/packet/', sees: ['core/model/'], packages: ['valibot', 'fflate'] },
   { within: 'core/picture/', sees: ['core/model/'] },
   { within: 'core/', sees: ['core/'] },
-  { within: 'text/', sees: ['core/model/'] },
+  { within: 'text/', sees: ['core/model/', 'core/picture/'] },
   { within: 'worker/', sees: ['core/'], types: [PORTS] },
   { within: 'capture/', sees: ['core/'], types: [PORTS] },
   { within: 'store/', sees: ['core/'], packages: ['idb', 'fflate', 'valibot'], types: [PORTS] },

@@ -2,7 +2,7 @@ import type { Analysis } from '../../../core/model/analysis.ts';
 import type { Judgement } from '../../../core/model/judgement.ts';
 import { doubtText } from '../../../text/doubts.ts';
 import { readingText } from '../../../text/reading-screen.ts';
-import { allDoubts } from './all-doubts.ts';
+import { allDoubts } from '../../../text/all-doubts.ts';
 import styles from './doubts-section.module.css';
 import { Section } from './section.tsx';
 

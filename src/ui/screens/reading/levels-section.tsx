@@ -5,7 +5,7 @@ import { formatDisplacement, formatFrequencyRange, formatVelocity } from '../../
 import { readingText } from '../../../text/reading-screen.ts';
 import { FactRows } from './fact-rows.tsx';
 import styles from './levels-section.module.css';
-import { saidMps2, type ReadingUnits } from './reading-units.ts';
+import { saidMps2, type ReadingUnits } from '../../../text/reading-units.ts';
 import { Section } from './section.tsx';
 
 /** How strong the shaking is, and what published guidance says to that; never a pass on half a band. */

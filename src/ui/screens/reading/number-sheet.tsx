@@ -6,11 +6,11 @@ import { formatDamping, formatPercent, formatVelocity, toUnit } from '../../../t
 import { readingText } from '../../../text/reading-screen.ts';
 import { refusalSentence } from '../../../text/refusals.ts';
 import { DataTable } from '../../charts/data-table.tsx';
-import { allDoubts } from './all-doubts.ts';
+import { allDoubts } from '../../../text/all-doubts.ts';
 import styles from './number-sheet.module.css';
 import { toneMatchText } from './pair-card.tsx';
-import { saidHz, saidMps2, type ReadingUnits } from './reading-units.ts';
-import { likelyDampingRatio, likelyHz, otherCandidatesHz } from './true-frequency.ts';
+import { saidHz, saidMps2, type ReadingUnits } from '../../../text/reading-units.ts';
+import { likelyDampingRatio, likelyHz, otherCandidatesHz } from '../../../text/true-frequency.ts';
 
 /** Half the amplitude is left after ln 2 / (2 pi zeta) cycles (identity; Thomson & Dahleh, ch. 2). */
 const HALVING_CYCLES = Math.LN2 / (2 * Math.PI);

@@ -11,9 +11,9 @@ import { VerdictMark } from '../../components/verdict-mark.tsx';
 import { timesText } from './amplification-text.tsx';
 import styles from './pair-card.module.css';
 import { keptTogether } from './kept-together.ts';
-import { pickedSeparation, type Picked } from './pairs.ts';
-import { saidHz, saidMps2, type ReadingUnits } from './reading-units.ts';
-import { likelyDampingRatio, likelyHz } from './true-frequency.ts';
+import { pickedSeparation, type Picked } from '../../../text/pairs.ts';
+import { saidHz, saidMps2, type ReadingUnits } from '../../../text/reading-units.ts';
+import { likelyDampingRatio, likelyHz } from '../../../text/true-frequency.ts';
 
 interface PairCardProps {
   readonly analysis: Analysis;

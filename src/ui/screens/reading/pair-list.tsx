@@ -11,8 +11,8 @@ import { VerdictMark } from '../../components/verdict-mark.tsx';
 import { timesText } from './amplification-text.tsx';
 import { sentenceCase } from './pair-card.tsx';
 import styles from './pair-list.module.css';
-import { forcingVerdict, pairRows, type PairRow, type Picked } from './pairs.ts';
-import { saidHz, type ReadingUnits } from './reading-units.ts';
+import { forcingVerdict, pairRows, type PairRow, type Picked } from '../../../text/pairs.ts';
+import { saidHz, type ReadingUnits } from '../../../text/reading-units.ts';
 
 /** Enough to see what matters without scrolling past twenty harmonics. */
 const FIRST_ROWS = 5;

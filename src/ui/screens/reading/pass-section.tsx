@@ -6,7 +6,7 @@ import { toUnit } from '../../../text/quantity.ts';
 import { readingText } from '../../../text/reading-screen.ts';
 import { LineChart } from '../../charts/line-chart.tsx';
 import type { PlotSeries, PlotSpec } from '../../charts/plot-spec.ts';
-import { saidHz, saidMps2, type ReadingUnits } from './reading-units.ts';
+import { saidHz, saidMps2, type ReadingUnits } from '../../../text/reading-units.ts';
 import { Section } from './section.tsx';
 import { SeriesLegend } from './series-legend.tsx';
 

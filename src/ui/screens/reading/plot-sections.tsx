@@ -6,7 +6,7 @@ import { readingText } from '../../../text/reading-screen.ts';
 import { ProgressLine } from '../../components/progress-line.tsx';
 import { PassSection } from './pass-section.tsx';
 import styles from './plot-sections.module.css';
-import type { ReadingUnits } from './reading-units.ts';
+import type { ReadingUnits } from '../../../text/reading-units.ts';
 import { currentAnalysis, type ReadingUseCases, type ReadingView } from './reading-use-cases.ts';
 import { RingDownSection } from './ring-down-section.tsx';
 import { Section } from './section.tsx';

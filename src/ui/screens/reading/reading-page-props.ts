@@ -1,5 +1,5 @@
 import type { ComponentChildren } from 'preact';
-import type { ReadingUnits } from './reading-units.ts';
+import type { ReadingUnits } from '../../../text/reading-units.ts';
 import type { ReadingLinks, ReadingUseCases } from './reading-use-cases.ts';
 
 export interface ReadingPageProps {

@@ -4,7 +4,7 @@ import { Later } from '../../later.tsx';
 import { useLive } from '../../use-live.ts';
 import { readingLinks, readingUseCases } from './app-cases.ts';
 import { ReadingPage } from './reading-page.tsx';
-import type { ReadingUnits } from './reading-units.ts';
+import type { ReadingUnits } from '../../../text/reading-units.ts';
 
 /** One kept reading: verdict first, then the picture, then the numbers. Loaded when the first reading is opened. */
 export function ReadingScreen({ id, app }: { readonly id: string; readonly app: App }) {

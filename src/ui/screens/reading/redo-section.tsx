@@ -9,13 +9,13 @@ import { trustWord } from '../../../text/sentence.ts';
 import { Button } from '../../components/button.tsx';
 import { SelectField } from '../../components/field.tsx';
 import { ProgressLine } from '../../components/progress-line.tsx';
-import { allDoubts } from './all-doubts.ts';
+import { allDoubts } from '../../../text/all-doubts.ts';
 import { sentenceCase } from './pair-card.tsx';
-import { saidHz, type ReadingUnits } from './reading-units.ts';
+import { saidHz, type ReadingUnits } from '../../../text/reading-units.ts';
 import { currentAnalysis, type ReadingUseCases, type ReadingView } from './reading-use-cases.ts';
 import { Section } from './section.tsx';
 import styles from './redo-section.module.css';
-import { likelyDampingRatio, likelyHz } from './true-frequency.ts';
+import { likelyDampingRatio, likelyHz } from '../../../text/true-frequency.ts';
 import { whenText } from './when-text.ts';
 
 interface RedoProps {

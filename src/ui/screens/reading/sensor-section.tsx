@@ -5,7 +5,7 @@ import { formatNumber } from '../../../text/number.ts';
 import { formatFrequencyRange, formatPercent } from '../../../text/quantity.ts';
 import { readingText } from '../../../text/reading-screen.ts';
 import { FactRows } from './fact-rows.tsx';
-import { saidMps2, type ReadingUnits } from './reading-units.ts';
+import { saidMps2, type ReadingUnits } from '../../../text/reading-units.ts';
 import { Section } from './section.tsx';
 
 /** What the sensor delivered, measured on the recording itself, never what the browser claimed. */

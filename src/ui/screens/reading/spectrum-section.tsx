@@ -9,7 +9,7 @@ import { LineChart } from '../../charts/line-chart.tsx';
 import type { PlotMark, PlotSpec } from '../../charts/plot-spec.ts';
 import { Button } from '../../components/button.tsx';
 import { axisSeries } from './axis-series.ts';
-import { saidHz, saidMps2, type ReadingUnits } from './reading-units.ts';
+import { saidHz, saidMps2, type ReadingUnits } from '../../../text/reading-units.ts';
 import { Section } from './section.tsx';
 import { SeriesToggles } from './series-legend.tsx';
 import { useHiddenLines } from './use-hidden-lines.ts';

@@ -8,7 +8,7 @@ import { readingText } from '../../../text/reading-screen.ts';
 import { LineChart } from '../../charts/line-chart.tsx';
 import type { PlotSpec } from '../../charts/plot-spec.ts';
 import { axisSeries } from './axis-series.ts';
-import { saidMps2, type ReadingUnits } from './reading-units.ts';
+import { saidMps2, type ReadingUnits } from '../../../text/reading-units.ts';
 import { Section } from './section.tsx';
 import { SeriesToggles } from './series-legend.tsx';
 import { useHiddenLines } from './use-hidden-lines.ts';

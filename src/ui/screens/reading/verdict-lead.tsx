@@ -4,10 +4,10 @@ import { readingText } from '../../../text/reading-screen.ts';
 import { sourcesSentence } from '../../../text/sentence.ts';
 import { verdictWord } from '../../../text/verdicts.ts';
 import { VerdictMark } from '../../components/verdict-mark.tsx';
-import { allDoubts } from './all-doubts.ts';
+import { allDoubts } from '../../../text/all-doubts.ts';
 import { AmplificationText } from './amplification-text.tsx';
 import { sentenceCase } from './pair-card.tsx';
-import type { ReadingUnits } from './reading-units.ts';
+import type { ReadingUnits } from '../../../text/reading-units.ts';
 import styles from './verdict-lead.module.css';
 
 /** What drives it, right below what rings: mark, sentence, how much it would be amplified. */

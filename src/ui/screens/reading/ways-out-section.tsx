@@ -5,7 +5,7 @@ import { verdictWord } from '../../../text/verdicts.ts';
 import { wayOutName, wayOutSentence } from '../../../text/ways-out.ts';
 import { VerdictMark } from '../../components/verdict-mark.tsx';
 import { sentenceCase } from './pair-card.tsx';
-import { saidHz, type ReadingUnits } from './reading-units.ts';
+import { saidHz, type ReadingUnits } from '../../../text/reading-units.ts';
 import { Section } from './section.tsx';
 import styles from './ways-out-section.module.css';
 

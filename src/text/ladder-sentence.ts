@@ -1,7 +1,7 @@
-import type { Analysis } from '../../../core/model/analysis.ts';
-import type { Judgement } from '../../../core/model/judgement.ts';
-import { readingText } from '../../../text/reading-screen.ts';
-import { sourcesSentence } from '../../../text/sentence.ts';
+import type { Analysis } from '../core/model/analysis.ts';
+import type { Judgement } from '../core/model/judgement.ts';
+import { readingText } from './reading-screen.ts';
+import { sourcesSentence } from './sentence.ts';
 import { saidHz, type ReadingUnits } from './reading-units.ts';
 import { likelyHz } from './true-frequency.ts';
 

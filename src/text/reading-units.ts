@@ -1,10 +1,5 @@
-import type {
-  AccelerationUnit,
-  DisplacementUnit,
-  FrequencyUnit,
-  VelocityUnit,
-} from '../../../text/quantity.ts';
-import { formatAcceleration, formatFrequency } from '../../../text/quantity.ts';
+import type { AccelerationUnit, DisplacementUnit, FrequencyUnit, VelocityUnit } from './quantity.ts';
+import { formatAcceleration, formatFrequency } from './quantity.ts';
 
 /** Units the person chose; everything inside is SI. */
 export interface ReadingUnits {

@@ -1,4 +1,4 @@
-import type { Fold, Mode } from '../../../core/model/analysis.ts';
+import type { Fold, Mode } from '../core/model/analysis.ts';
 
 /** The most likely true frequency of a mode or tone: where it appears unless it is folded. */
 export const likelyHz = (seen: { readonly frequencyHz: number; readonly fold: Fold }): number =>

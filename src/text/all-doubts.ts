@@ -1,6 +1,6 @@
-import type { Analysis } from '../../../core/model/analysis.ts';
-import type { Doubt } from '../../../core/model/doubt.ts';
-import type { Judgement } from '../../../core/model/judgement.ts';
+import type { Analysis } from '../core/model/analysis.ts';
+import type { Doubt } from '../core/model/doubt.ts';
+import type { Judgement } from '../core/model/judgement.ts';
 
 /** Doubts of the reading, of its circumstances and of its modes, each once; those that carry figures first. */
 export function allDoubts(analysis: Analysis, judgement?: Judgement): Doubt[] {

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { judge } from '../../../src/core/survey/judge.ts';
+import { judge } from '../../src/core/survey/judge.ts';
 import {
   firstPick,
   forcingVerdict,
@@ -7,8 +7,8 @@ import {
   pickedIds,
   pickedSeparation,
   pickOf,
-} from '../../../src/ui/screens/reading/pairs.ts';
-import { READING_EXAMPLES } from '../../support/reading-examples.ts';
+} from '../../src/text/pairs.ts';
+import { READING_EXAMPLES } from '../support/reading-examples.ts';
 
 const of = (name: string) => {
   const { reading, sources } = READING_EXAMPLES.find((one) => one.name === name)!;

@@ -1,4 +1,4 @@
-import type { Judgement, Separation, UnpairedVerdict, Verdict } from '../../../core/model/judgement.ts';
+import type { Judgement, Separation, UnpairedVerdict, Verdict } from '../core/model/judgement.ts';
 
 /** What the person has picked on the ladder or in the list. */
 export type Picked =

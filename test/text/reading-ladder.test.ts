@@ -1,15 +1,11 @@
 import { describe, expect, it } from 'vitest';
-import { judge } from '../../../src/core/survey/judge.ts';
-import { allDoubts } from '../../../src/ui/screens/reading/all-doubts.ts';
-import { keptTogether } from '../../../src/ui/screens/reading/kept-together.ts';
-import { ladderSentence } from '../../../src/ui/screens/reading/ladder-sentence.ts';
-import { readingLadder } from '../../../src/ui/screens/reading/reading-ladder.ts';
-import {
-  likelyDampingRatio,
-  likelyHz,
-  otherCandidatesHz,
-} from '../../../src/ui/screens/reading/true-frequency.ts';
-import { READING_EXAMPLES } from '../../support/reading-examples.ts';
+import { judge } from '../../src/core/survey/judge.ts';
+import { allDoubts } from '../../src/text/all-doubts.ts';
+import { keptTogether } from '../../src/ui/screens/reading/kept-together.ts';
+import { ladderSentence } from '../../src/text/ladder-sentence.ts';
+import { readingLadder } from '../../src/text/reading-ladder.ts';
+import { likelyDampingRatio, likelyHz, otherCandidatesHz } from '../../src/text/true-frequency.ts';
+import { READING_EXAMPLES } from '../support/reading-examples.ts';
 
 const units = { frequency: 'Hz', acceleration: 'm/s²', velocity: 'mm/s', displacement: 'µm' } as const;
 const of = (name: string) => {

@@ -1,14 +1,9 @@
-import type { Analysis, Mode } from '../../../core/model/analysis.ts';
-import type { Judgement } from '../../../core/model/judgement.ts';
-import type { Forcing } from '../../../core/model/source.ts';
-import type {
-  LadderContent,
-  LadderForcing,
-  LadderMode,
-  LadderTone,
-} from '../../../core/picture/ladder-content.ts';
-import { formatDamping } from '../../../text/quantity.ts';
-import { readingText } from '../../../text/reading-screen.ts';
+import type { Analysis, Mode } from '../core/model/analysis.ts';
+import type { Judgement } from '../core/model/judgement.ts';
+import type { Forcing } from '../core/model/source.ts';
+import type { LadderContent, LadderForcing, LadderMode, LadderTone } from '../core/picture/ladder-content.ts';
+import { formatDamping } from './quantity.ts';
+import { readingText } from './reading-screen.ts';
 import { forcingId, forcingVerdict, modeId, toneId, worstOfForcing } from './pairs.ts';
 import { saidHz, saidMps2, type ReadingUnits } from './reading-units.ts';
 import { likelyDampingRatio, likelyHz, otherCandidatesHz } from './true-frequency.ts';
