@@ -89,6 +89,28 @@ describe('the office: opens, compares, edits, undoes', () => {
   });
 });
 
+describe('text at 200 % on a phone', () => {
+  it('is never cut off at the side', async () => {
+    const { page } = browser;
+    const devtools = await page.context().newCDPSession(page);
+    await page.setViewportSize({ width: 360, height: 740 });
+    await devtools.send('Page.setFontSizes', { fontSizes: { standard: 32, fixed: 26 } });
+    const tooWide: string[] = [];
+    for (const [name, hash] of Object.entries(screenHashes)) {
+      await open(hash(ids));
+      await page.getByRole('heading', { level: 1 }).first().waitFor();
+      await page.waitForTimeout(100);
+      const surplusPx = await page.evaluate(
+        () => document.documentElement.scrollWidth - document.documentElement.clientWidth,
+      );
+      if (surplusPx > 0) tooWide.push(`${name}: ${surplusPx} px`);
+    }
+    await devtools.send('Page.setFontSizes', { fontSizes: { standard: 16, fixed: 13 } });
+    await page.setViewportSize({ width: 1280, height: 800 });
+    expect(tooWide).toEqual([]);
+  });
+});
+
 describe('every screen under axe, in three themes', () => {
   /** WCAG 2.2 AA and the axe rules of good practice. */
   const findings = async (rules?: readonly string[]): Promise<string[]> => {

@@ -4,8 +4,8 @@ import type { ComponentChildren } from 'preact';
 function Drawing({ children }: { readonly children: ComponentChildren }) {
   return (
     <svg
-      width="24"
-      height="24"
+      width="1.5rem"
+      height="1.5rem"
       viewBox="0 0 24 24"
       fill="none"
       stroke="currentColor"
