@@ -22,6 +22,7 @@ function Tried({ name, content, first }: { name: string; content: LadderContent;
           closer: 'Closer',
           wider: 'Wider',
           whole: 'Whole',
+          hidden: (count) => `${count} without a label`,
         }}
         selected={new Set(picked)}
         current={picked[0]}

@@ -15,6 +15,8 @@ import { ZoomTools, type ZoomWords } from './zoom-tools.tsx';
 export interface LadderWords extends ZoomWords {
   readonly name: string;
   readonly keys: string;
+  /** Said when there was no room for so many labels. */
+  readonly hidden?: (count: number) => string;
 }
 
 export interface LadderProps {
@@ -137,6 +139,7 @@ export function Ladder(props: LadderProps) {
     </div>
   );
   if (!onPick) return still;
+  const unlabelled = picture?.right.unlabelled.length ?? 0;
   return (
     <div class={styles.whole}>
       <div
@@ -149,13 +152,16 @@ export function Ladder(props: LadderProps) {
         {still}
       </div>
       {!props.isCompact && (
-        <ZoomTools
-          words={words}
-          of={words.name}
-          isZoomed={isZoomed}
-          onZoom={(closer) => zoom.zoom(closer)}
-          onWhole={() => zoom.whole()}
-        />
+        <div class={styles.foot}>
+          <p class="note">{unlabelled > 0 ? words.hidden?.(unlabelled) : ''}</p>
+          <ZoomTools
+            words={words}
+            of={words.name}
+            isZoomed={isZoomed}
+            onZoom={(closer) => zoom.zoom(closer)}
+            onWhole={() => zoom.whole()}
+          />
+        </div>
       )}
     </div>
   );
