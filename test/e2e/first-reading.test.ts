@@ -7,10 +7,11 @@ import { tappedStructureSamples } from '../support/tapped-structure.ts';
 
 const RAIL = {
   rateHz: 60,
-  durationS: 15,
+  // Until the last ring-down is below the noise: going back to rest before would be a knock of its own.
+  durationS: 17,
   frequencyHz: 7.4,
   dampingRatio: 0.012,
-  tapTimesS: [1.005, 5.505, 10.005],
+  tapTimesS: [1.005, 4.005, 7.005],
   amplitudeMps2: 1,
 };
 
