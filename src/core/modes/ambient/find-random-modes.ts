@@ -30,6 +30,7 @@ const SCAN_GAIN = 14;
 /** A mode is kept when its fit gains at least this log-likelihood: three parameters and the search for the place. */
 export const FIT_GAIN = 16;
 const MOST_MODES = 8;
+const POLISHING_ROUNDS = 2;
 const MOST_LOOKS = 24;
 /** A mode nearer to a stronger one than this many summed half-widths is taken for a misfit of that one. */
 const APART_HALF_WIDTHS = 1.5;
@@ -69,7 +70,27 @@ export function findRandomModes(spectra: RecordSpectra, bandHz: readonly [number
     if (next) found = next;
     else refused.push(rise);
   }
-  return withEnvelopes(spectra, found);
+  return withEnvelopes(spectra, polished(spectra, found, [first, last]));
+}
+
+/** Each mode fitted again beside the final ones, so that the order in which they were met leaves no trace. */
+function polished(
+  spectra: RecordSpectra,
+  found: readonly RandomMode[],
+  limits: readonly [number, number],
+): RandomMode[] {
+  let modes = [...found];
+  for (let round = 0; round < (found.length > 1 ? POLISHING_ROUNDS : 0); round++)
+    modes = modes.map((mode) => {
+      const fit = refined(
+        spectra,
+        mode,
+        modes.filter((m) => m !== mode),
+        limits,
+      );
+      return { ...mode, ...fit, bandwidthTimesDuration: timesDuration(spectra, fit) };
+    });
+  return modes;
 }
 
 /** Total over modes already found and the background of what is left. */
@@ -113,7 +134,7 @@ function withRise(
     peakPerHz: meanOver(periodogram, rise.bin - rise.halfWidthBins, rise.bin + rise.halfWidthBins),
   };
   const band = bandOf(start, limits, stepHz);
-  const beside = found.filter((m) => m.frequencyHz > band[0] * stepHz && m.frequencyHz < band[1] * stepHz);
+  const beside = besideOf(found, band, stepHz, direction);
   const data = bandData(spectra, periodogram, band);
   const floor = quietLevel(periodogram, band);
   const without = fitRandomModes(data, beside, floor);
@@ -129,7 +150,7 @@ function withRise(
   };
   // Modes beside it are fitted again now that this one is known.
   const others = found.map((m) =>
-    beside.includes(m)
+    beside.some((b) => b.frequencyHz === m.frequencyHz)
       ? { ...m, ...refined(spectra, m, [mode, ...found.filter((o) => o !== m)], limits) }
       : m,
   );
@@ -185,7 +206,7 @@ const MOST_DAMPING = 0.17;
 function refined(
   spectra: RecordSpectra,
   mode: RandomModeFit,
-  others: readonly RandomModeFit[],
+  others: readonly RandomMode[],
   limits: readonly [number, number],
 ): RandomModeFit & { direction: readonly number[]; floorPerHz: number } {
   const { stepHz } = spectra;
@@ -195,11 +216,29 @@ function refined(
   );
   const periodogram = periodogramAlong(spectra, direction);
   const band = bandOf(mode, limits, stepHz);
-  const beside = others.filter((m) => m.frequencyHz > band[0] * stepHz && m.frequencyHz < band[1] * stepHz);
+  const beside = besideOf(others, band, stepHz, direction);
   const data = bandData(spectra, periodogram, band);
   const fit = fitRandomModes(data, [mode, ...beside], quietLevel(periodogram, band));
   return { ...(fit.modes[0] as RandomModeFit), direction, floorPerHz: fit.floorPerHz };
 }
+
+/** Modes within the band; those of another direction keep their shape, which their own direction shows far better. */
+function besideOf<M extends RandomMode>(
+  others: readonly M[],
+  band: readonly [number, number],
+  stepHz: number,
+  direction: readonly number[],
+): M[] {
+  return others
+    .filter((m) => m.frequencyHz > band[0] * stepHz && m.frequencyHz < band[1] * stepHz)
+    .map((m) => ({ ...m, isShapeHeld: Math.abs(cosine(m.direction, direction)) < SAME_DIRECTION }));
+}
+
+const cosine = (a: readonly number[], b: readonly number[]): number =>
+  a.reduce((sum, v, i) => sum + v * (b[i] as number), 0);
+
+/** Cosine of two directions above which modes beside each other are fitted jointly. */
+const SAME_DIRECTION = 0.5;
 
 function bandOf(mode: RandomModeStart, limits: readonly [number, number], stepHz: number): [number, number] {
   const reachHz = Math.max(

@@ -14,6 +14,8 @@ export interface RandomModeStart {
   readonly dampingRatio: number;
   /** Density at the resonance, (m/s²)²/Hz. */
   readonly peakPerHz: number;
+  /** Frequency and damping are known from elsewhere (a mode of another direction showing through): only its height is fitted. */
+  readonly isShapeHeld?: boolean;
 }
 
 export interface RandomModeFit extends RandomModeStart {
@@ -73,7 +75,7 @@ export function fitRandomModes(
     theta[3 * i + 2] = Math.log(mode.peakPerHz);
   });
   theta[size - 3] = Math.log(floorPerHz);
-  const work = workspace(data, starts.length);
+  const work = workspace(data, starts);
   let at: Point = { theta, cost: costAt(data, work, theta) };
   const leastFloor = Math.log(floorPerHz) - FLOOR_DEPTH;
   let damping = 1e-3;
@@ -98,6 +100,7 @@ export function fitRandomModes(
 
 interface Workspace {
   readonly shapes: readonly Float64Array[];
+  readonly isHeld: readonly boolean[];
   readonly shifted: Float64Array;
   readonly slopes: readonly Float64Array[];
   readonly density: Float64Array;
@@ -106,12 +109,14 @@ interface Workspace {
   readonly floor: Float64Array;
 }
 
-function workspace(data: BandData, modeCount: number): Workspace {
+function workspace(data: BandData, starts: readonly RandomModeStart[]): Workspace {
+  const modeCount = starts.length;
   const length = data.last - data.first + 1;
   const array = (): Float64Array => new Float64Array(length);
   const centre = (data.first + data.last) / 2;
   return {
     shapes: Array.from({ length: modeCount }, array),
+    isHeld: starts.map((mode) => mode.isShapeHeld === true),
     shifted: array(),
     slopes: Array.from({ length: 3 * modeCount + 3 }, array),
     density: array(),
@@ -184,11 +189,16 @@ function scoreAndFisher(
     const shape = shapes[i] as Float64Array;
     const f = Math.exp(theta[3 * i] as number);
     const z = Math.exp(theta[3 * i + 1] as number);
+    if (work.isHeld[i]) {
+      slopes[3 * i]?.fill(0);
+      slopes[3 * i + 1]?.fill(0);
+    }
     // Steps small against the half-power width (f) and against the damping itself (zeta).
     for (const [which, h] of [
       [0, 0.02 * Math.max(z, 1e-4)],
       [1, 0.02],
     ] as const) {
+      if (work.isHeld[i]) continue;
       const moved = which === 0 ? [f * Math.exp(h), z] : [f, z * Math.exp(h)];
       expectedModeDensity(moved[0] as number, moved[1] as number, data.piece, data.first, data.last, shifted);
       const out = slopes[3 * i + which] as Float64Array;
@@ -236,6 +246,10 @@ function accumulated(
       fisher[j * size + i] = data.pieceCount * product;
     }
   }
+  work.isHeld.forEach((held, i) => {
+    if (!held) return;
+    for (const index of [3 * i, 3 * i + 1]) fisher[index * size + index] = 1;
+  });
   for (const { index, sd } of priors(data, size)) {
     score[index] = (score[index] as number) - (theta[index] as number) / sd ** 2;
     fisher[index * size + index] = (fisher[index * size + index] as number) + 1 / sd ** 2;
