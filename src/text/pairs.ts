@@ -1,4 +1,5 @@
 import type { Judgement, Separation, UnpairedVerdict, Verdict } from '../core/model/judgement.ts';
+import { headlinePair } from './sentence.ts';
 
 /** What the person has picked on the ladder or in the list. */
 export type Picked =
@@ -60,11 +61,10 @@ export function pairRows(judgement: Judgement): PairRow[] {
     .sort((a, b) => place(a) - place(b) || rank(a) - rank(b) || a.forcingIndex - b.forcingIndex);
 }
 
-/** What is worth showing first: the worst pair that is not simply apart, else the first mode, else the first tone. */
+/** What is worth showing first: the pair that the sentence speaks of, else the first mode, else the first tone. */
 export function firstPick(judgement: Judgement, modeCount: number, toneCount: number): Picked | undefined {
-  const [worst] = judgement.separations;
-  if (worst && worst.verdict !== 'apart' && worst.verdict !== 'blind')
-    return { kind: 'pair', forcing: worst.forcingIndex, mode: worst.modeIndex };
+  const pair = headlinePair(judgement.separations);
+  if (pair) return { kind: 'pair', forcing: pair.forcingIndex, mode: pair.modeIndex };
   if (modeCount > 0) return { kind: 'mode', index: 0 };
   return toneCount > 0 ? { kind: 'tone', index: 0 } : undefined;
 }

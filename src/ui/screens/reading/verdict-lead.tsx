@@ -1,7 +1,7 @@
 import type { Analysis } from '../../../core/model/analysis.ts';
 import type { Judgement } from '../../../core/model/judgement.ts';
 import { readingText } from '../../../text/reading-screen.ts';
-import { sourcesSentence } from '../../../text/sentence.ts';
+import { headlinePair, sourcesSentence } from '../../../text/sentence.ts';
 import { verdictWord } from '../../../text/verdicts.ts';
 import { VerdictMark } from '../../components/verdict-mark.tsx';
 import { allDoubts } from '../../../text/all-doubts.ts';
@@ -17,20 +17,19 @@ export function VerdictLead(props: {
   readonly units: ReadingUnits;
 }) {
   const { analysis, judgement } = props;
-  const [worst] = judgement.separations;
-  const isWorth = worst !== undefined && worst.verdict !== 'apart' && worst.verdict !== 'blind';
+  const pair = headlinePair(judgement.separations);
   // the mark says the verdict's word already
   const sentence = sourcesSentence(analysis, judgement)?.replace(/: \w+\.$/, '.');
   const trust = judgement.trust;
   return (
     <div class={styles.lead}>
       <p class={styles.said}>
-        {isWorth && (
+        {pair && (
           <>
-            <VerdictMark verdict={worst.verdict} word={`${sentenceCase(verdictWord(worst.verdict))}.`} />{' '}
+            <VerdictMark verdict={pair.verdict} word={`${sentenceCase(verdictWord(pair.verdict))}.`} />{' '}
           </>
         )}
-        {sentence ?? readingText.pair.none} {isWorth && <AmplificationText separation={worst} />}
+        {sentence ?? readingText.pair.none} {pair && <AmplificationText separation={pair} />}
       </p>
       <p class={styles.trust}>
         {readingText.trust[trust]} {readingText.trustName},{' '}
