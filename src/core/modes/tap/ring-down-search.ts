@@ -20,10 +20,12 @@ const LARGEST_DAMPING_RATIO = 0.3;
 export function searchRingDowns(input: SearchInput): RingDownSearch | undefined {
   const { signal } = input;
   let best: RingDownSearch | undefined;
+  let restless = 0;
   for (const start of firstRingDowns(input)) {
     const result = searchFrom(input, start);
     if (best === undefined || recordCost(signal, result) < recordCost(signal, best)) best = result;
-    if (leavesOnlyNoise(best)) break;
+    if (result.tapCount >= TAP_LIMIT) restless++;
+    if (leavesOnlyNoise(best) || restless >= RESTLESS_LIMIT) break;
   }
   return best;
 }
@@ -37,6 +39,9 @@ function searchFrom(input: SearchInput, { tones, left, search: single }: FirstRi
   const result = search(input, settle(input, start, noise, COARSE), noise);
   return result.tapCount >= TAP_LIMIT ? result : withTones(input.signal, prune(input, result, noise));
 }
+
+/** Starts that end in more taps than anyone gives: after so many the record is walking or handling, not tapping. */
+const RESTLESS_LIMIT = 1;
 
 /** Residual above this many times the quiet stretches' variance: another start may do better. */
 const NOISE_EXCESS = 1.4;

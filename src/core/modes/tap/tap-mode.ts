@@ -56,7 +56,7 @@ export function modeOf(context: ModeContext): Mode {
     direction,
     ...(upShare === undefined ? {} : { verticalShare: Math.min(upShare, 1) }),
     method: context.isRounded ? 'ring-down-fit-rounding-aware' : 'ring-down-fit',
-    eventCount: Math.max(decays.filter((_, s) => amplitudeAtStart(fit, s, k) > 0).length, 1),
+    eventCount: Math.max(decays.filter((d) => d.onset !== undefined).length, 1),
     ...checks,
     ...(softening === undefined ? {} : { softening }),
     fold,

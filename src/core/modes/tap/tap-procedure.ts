@@ -144,16 +144,16 @@ function ringDownPictures(
   k: number,
   direction: readonly number[],
 ): RingDown[] {
-  return decays.map((decay, s) => {
+  const tapped = decays.some((d) => d.onset !== undefined);
+  return decays.flatMap((decay, s) => {
+    // Silence before the first tap is fitted too, but is no ring-down to look at.
+    if (tapped && decay.onset === undefined) return [];
     const measuredMps2 = decayAlone(signal, decays, fit, left, s, k, direction);
     const fittedMps2 = measuredMps2.map(
       (v, i) => v - direction.reduce((sum, d, a) => sum + d * left[a]![decay.start + i]!, 0),
     );
-    return {
-      tapTimeS: signal.timeS[decay.onset ?? decay.start]!,
-      timeS: signal.timeS.slice(decay.start, decay.end),
-      measuredMps2,
-      fittedMps2,
-    };
+    const tapTimeS = signal.timeS[decay.onset ?? decay.start]!;
+    const timeS = signal.timeS.slice(decay.start, decay.end);
+    return [{ tapTimeS, timeS, measuredMps2, fittedMps2 }];
   });
 }

@@ -1,7 +1,10 @@
-import { describe, expect, it } from 'vitest';
+import { describe, expect, it, vi } from 'vitest';
 import { analyse } from '../../../../src/core/analyse.ts';
 import type { Recording } from '../../../../src/core/model/recording.ts';
 import { seededRandom } from '../../../support/cases/random.ts';
+
+/** Whole analyses on a machine that may be busy with other tests. */
+vi.setConfig({ testTimeout: 60_000 });
 
 /** Ring-downs whose frequency falls by 1 % and damping rises by 30 % of itself per m/s², integrated cycle by cycle. */
 function softeningRecording(seed: number, frequencySlope: number, dampingSlope: number): Recording {

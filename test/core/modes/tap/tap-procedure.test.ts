@@ -1,6 +1,6 @@
 import { existsSync, readFileSync } from 'node:fs';
 import fc from 'fast-check';
-import { describe, expect, it } from 'vitest';
+import { describe, expect, it, vi } from 'vitest';
 import { analyse } from '../../../../src/core/analyse.ts';
 import type { Analysis } from '../../../../src/core/model/analysis.ts';
 import type { ProblemCode } from '../../../../src/core/model/problem.ts';
@@ -12,6 +12,9 @@ import { scoreRecord } from '../../../support/cases/score-case.ts';
 import { freeDecay } from '../../../support/integrated-decay.ts';
 import { ringingRecording } from '../../../support/ringing-recording.ts';
 import type { Ringing } from '../../../support/ringing-recording.ts';
+
+/** Whole analyses on a machine that may be busy with other tests. */
+vi.setConfig({ testTimeout: 60_000 });
 
 const SETTINGS = { procedure: 'tap', timing: 'auto' } as const;
 
@@ -172,10 +175,10 @@ describe('tapProcedure on what it must answer', () => {
 
 describe('tapProcedure on generated records (seed 90)', () => {
   it.each([
-    ['A1', 8],
-    ['A2', 4],
-    ['A2c', 3],
-    ['A3', 4],
+    ['A1', 6],
+    ['A2', 3],
+    ['A2c', 2],
+    ['A3', 3],
   ] as const)('%s: no mode missed or invented in %i records, all within five bounds', (kind, count) => {
     for (let index = 0; index < count; index++) {
       const { name, truth, recording } = generateCase(kind, 90, index);
