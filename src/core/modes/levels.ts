@@ -1,6 +1,12 @@
 import type { Levels, Tone } from '../model/analysis.ts';
 import type { ConditionedSignal } from '../signal/condition-recording.ts';
-import { bandMotion, edgeWeight, weightedSamples, type BandMotion } from '../signal/integration.ts';
+import {
+  bandMotion,
+  edgeWeight,
+  rmsWithin,
+  weightedSamples,
+  type BandMotion,
+} from '../signal/integration.ts';
 import { largestRunningRms, peak, rms } from '../signal/running-rms.ts';
 import { weightingMagnitude, type WeightingKind } from '../signal/weighting.ts';
 import { alongDirection } from './fold.ts';
@@ -48,7 +54,7 @@ export function levelsOf(signal: ConditionedSignal, tones: readonly Tone[]): Lev
   return {
     peakMps2: peak(magnitude),
     rmsMps2: rms(magnitude),
-    ...integratedLevels(motions, leftOutHz, up !== undefined, grid.periodS),
+    ...integratedLevels(motions, leftOutHz, up !== undefined, facts.usableBandHz, grid.periodS),
     bandHz: facts.usableBandHz,
     runningRmsMaxMps2: largestRunningRms(running, RUNNING_S * perS),
     ...(up ? uprightLevels(motions, facts.usableBandHz, grid.periodS, n) : {}),
@@ -94,6 +100,7 @@ function integratedLevels(
   motions: readonly BandMotion[],
   leftOutHz: readonly (readonly [number, number])[],
   hasVertical: boolean,
+  bandHz: readonly [number, number],
   periodS: number,
 ): Partial<Levels> {
   if (leftOutHz.length && leftPowerShare(motions, leftOutHz, periodS) < LEAST_LEFT_POWER) return {};
@@ -111,6 +118,27 @@ function integratedLevels(
     displacementRmsM: largest(displacements.map(rms)),
     largestAxisVelocityPeakMps: velocityPeakMps,
     ...(hasVertical ? { horizontalVelocityPeakMps: largest(velocities.slice(1).map(peak)) } : {}),
+    ...machineLevels(motions, bandHz, periodS),
+  };
+}
+
+/** Machine standards measure from here up (ISO 20816-3), Hz: slow sway of a building is not theirs. */
+const MACHINE_LOWEST_HZ = 10;
+
+/** Velocity and displacement of the largest axis from 10 Hz up; nothing where the band ends below. */
+function machineLevels(
+  motions: readonly BandMotion[],
+  bandHz: readonly [number, number],
+  periodS: number,
+): Partial<Levels> {
+  const upper = [Math.max(MACHINE_LOWEST_HZ, bandHz[0]), bandHz[1]] as const;
+  if (upper[1] <= upper[0]) return {};
+  const n = motions[0]!.velocityMps.length;
+  return {
+    velocityRmsFrom10HzMps: Math.max(...motions.map((m) => rmsWithin(m.velocitySpectrum, periodS, n, upper))),
+    displacementRmsFrom10HzM: Math.max(
+      ...motions.map((m) => rmsWithin(m.displacementSpectrum, periodS, n, upper)),
+    ),
   };
 }
 

@@ -13,6 +13,8 @@ export interface BandMotion {
   readonly displacementM: Float64Array;
   /** Transform of the faded samples, for further weightings of the same record. */
   readonly spectrum: HalfSpectrum;
+  readonly velocitySpectrum: HalfSpectrum;
+  readonly displacementSpectrum: HalfSpectrum;
 }
 
 /**
@@ -65,6 +67,8 @@ export function bandMotion(
     velocityMps: v.subarray(0, n),
     displacementM: d.subarray(0, n),
     spectrum,
+    velocitySpectrum: velocity,
+    displacementSpectrum: displacement,
   };
 }
 
@@ -83,6 +87,22 @@ export function weightedSamples(
     weighted.im[k] = g * spectrum.im[k]!;
   }
   return inverseTwoReal(weighted, weighted)[0].subarray(0, n);
+}
+
+/** Rms of the part of a spectrum within a band, over n samples (Parseval); no transform back, so no ends to ring. */
+export function rmsWithin(
+  spectrum: HalfSpectrum,
+  periodS: number,
+  n: number,
+  bandHz: readonly [number, number],
+): number {
+  const stepHz = 1 / (spectrum.size * periodS);
+  let sum = 0;
+  for (let k = 1; k < spectrum.re.length; k++) {
+    const weight = edgeWeight(k * stepHz, bandHz);
+    if (weight > 0) sum += 2 * weight * weight * (spectrum.re[k]! ** 2 + spectrum.im[k]! ** 2);
+  }
+  return Math.sqrt(sum / (spectrum.size * n));
 }
 
 const blank = (like: HalfSpectrum): HalfSpectrum => ({

@@ -64,12 +64,16 @@ function markRail(axis: Float32Array, sign: 1 | -1, stepMps2: number, clipped: U
   let extreme = -Infinity;
   let mean = 0;
   let square = 0;
+  let lowest = Infinity;
   for (let i = 0; i < axis.length; i++) {
     const v = sign * (axis[i] as number);
     if (v > extreme) extreme = v;
+    if (v < lowest) lowest = v;
     mean += v / axis.length;
     square += (v * v) / axis.length;
   }
+  // An axis that never moves (a made-up record) is at no rail.
+  if (extreme - lowest <= stepMps2 || extreme === lowest) return;
   const isFullScale = FULL_SCALES_G.some(
     (g) => Math.abs(extreme / (g * STANDARD_GRAVITY_MPS2) - 1) < FULL_SCALE_TOLERANCE,
   );

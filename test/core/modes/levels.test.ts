@@ -62,6 +62,18 @@ describe('levelsOf', () => {
     expect(ratio(levels.rmsMps2, Math.sqrt((1 + 0.25) / 2))).toBeLessThan(0.02);
   });
 
+  it('takes machine velocity from 10 Hz up only (ISO 20816-3)', () => {
+    const both = (t: number): [number, number, number] => [0, 0, tone(3, 0.5)(t)[2] + tone(20, 0.5)(t)[2]];
+    const levels = levelsOf(conditioned(steadyRecording(both, OPTIONS)), []);
+    expect(ratio(levels.velocityRmsFrom10HzMps, (0.5 * Math.SQRT1_2) / (2 * Math.PI * 20))).toBeLessThan(
+      0.02,
+    );
+    expect(levels.velocityRmsMps).toBeGreaterThan(5 * levels.velocityRmsFrom10HzMps!);
+    expect(
+      ratio(levels.displacementRmsFrom10HzM, (0.5 * Math.SQRT1_2) / (2 * Math.PI * 20) ** 2),
+    ).toBeLessThan(0.02);
+  });
+
   it('gives no velocity when what is left is little, or nothing but noise', () => {
     const signal = conditioned(steadyRecording(tone(20, 1), OPTIONS));
     expect(levelsOf(signal, [toneAt(20, 'undecided')]).velocityRmsMps).toBeUndefined();

@@ -32,6 +32,10 @@ describe('clippedCount', () => {
     expect(clippedCount([axis], [0])).toBe(4);
   });
 
+  it('does not count an axis that never moves', () => {
+    expect(clippedCount([new Float32Array(500).fill(9.81), new Float32Array(500)], [0, 0])).toBe(0);
+  });
+
   it('does not count the crests of a sine, nor a coarse step', () => {
     const [x, y, z] = steadyRecording(tone(3, 2), { stepMps2: 0.1, noiseMps2: 0 }).accelerationMps2;
     expect(clippedCount([x!, y!, z!], [0.1, 0.1, 0.1])).toBe(0);

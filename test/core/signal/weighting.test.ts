@@ -1,3 +1,4 @@
+import { signalGolden } from '../../support/signal-golden.ts';
 import { describe, expect, it } from 'vitest';
 import { weightingMagnitude } from '../../../src/core/signal/weighting.ts';
 
@@ -46,5 +47,20 @@ describe('weightings Wk and Wd', () => {
     expect(weightingMagnitude('Wk', 0)).toBe(0);
     expect(() => weightingMagnitude('Wk', -1)).toThrow(RangeError);
     expect(() => weightingMagnitude('Wk', Number.NaN)).toThrow(RangeError);
+  });
+});
+
+describe('weightingMagnitude against SciPy', () => {
+  it('agrees with the filters as polynomials in s (scipy.signal.freqs)', () => {
+    const { frequencyHz, Wk, Wd } = signalGolden().weighting;
+    frequencyHz.forEach((f, i) => {
+      expect(weightingMagnitude('Wk', f)).toBeCloseTo(Wk[i]!, 9);
+      expect(weightingMagnitude('Wd', f)).toBeCloseTo(Wd[i]!, 9);
+    });
+  });
+
+  it('passes nothing at rest and refuses what is no frequency', () => {
+    expect(weightingMagnitude('Wk', 0)).toBe(0);
+    expect(() => weightingMagnitude('Wd', -1)).toThrow(RangeError);
   });
 });
