@@ -45,6 +45,8 @@ export interface Whereabouts extends PlaceIds {
 export interface Places {
   tree(): Promise<PlaceTree>;
   whereabouts(ids: PlaceIds): Promise<Whereabouts>;
+  /** Names of all places by id, those in the trash included: an old reading keeps its name. */
+  names(): Promise<ReadonlyMap<string, string>>;
   /** Readings of one spot, oldest first, trashed ones left out. */
   visits(spot: string): Promise<readonly ReadingSummary[]>;
   addSite(name: string): Promise<string>;
@@ -84,6 +86,10 @@ export function createPlaces(store: StorePort): Places {
       return placeTree(sites, assets, spots);
     },
     whereabouts: (ids) => whereabouts(store, ids),
+    async names() {
+      const all = await Promise.all((['site', 'asset', 'spot'] as const).map((kind) => store.entities(kind)));
+      return new Map(all.flat().map((entity) => [entity.id, textField(entity, 'name') ?? '']));
+    },
     async visits(spot) {
       const found = await store.listReadings({ spot, trashed: false });
       return [...found].sort((a, b) => a.recordedAt.localeCompare(b.recordedAt));

@@ -60,7 +60,7 @@ export function Shell(props: {
       >
         {text.skip}
       </a>
-      {practice && <div class={`${styles.strip} no-print`}>{screenText.practiceStrip}</div>}
+      {practice && <header class={`${styles.strip} no-print`}>{screenText.practiceStrip}</header>}
       {props.list && <aside class={styles.list}>{props.list}</aside>}
       <main class={styles.main} id="main">
         {props.children}

@@ -3,6 +3,7 @@ import { AxeBuilder } from '@axe-core/playwright';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { launchBrowser, serveApp, type ServedApp, type TestBrowser } from '../support/browser.ts';
 import { furnish, screenHashes, type Furnished } from '../support/furnish.ts';
+import { walkTakeStates } from '../support/take-states.ts';
 
 let app: ServedApp;
 let browser: TestBrowser;
@@ -120,6 +121,16 @@ describe('every screen under axe, in three themes', () => {
       violation.nodes.map((node) => `${violation.id}: ${node.target.join(' ')} ${node.failureSummary ?? ''}`),
     );
   };
+
+  it('the states of taking a reading', async () => {
+    const found: string[] = [];
+    await browser.page.setViewportSize({ width: 360, height: 740 });
+    await walkTakeStates(browser.page, app.url, async (state) => {
+      found.push(...(await findings()).map((finding) => `${state}: ${finding}`));
+    });
+    await browser.page.setViewportSize({ width: 1280, height: 800 });
+    expect(found).toEqual([]);
+  }, 90_000);
 
   it.each(Object.keys(screenHashes))('%s', async (name) => {
     const { page } = browser;

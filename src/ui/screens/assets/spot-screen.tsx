@@ -19,6 +19,7 @@ import { Rows } from '../../components/rows.tsx';
 import { useLive } from '../../use-live.ts';
 import { useLoaded } from '../../use-loaded.ts';
 import { LostScreen } from '../lost-screen.tsx';
+import { usePlaceNames } from '../readings/place-names.ts';
 import { ReadingRow } from '../readings/reading-row.tsx';
 import { EditPlaceDialog } from './edit-place-dialog.tsx';
 import { VisitChart, type Visit } from './visit-chart.tsx';
@@ -26,6 +27,7 @@ import { VisitChart, type Visit } from './visit-chart.tsx';
 const text = officeText.places;
 
 export function SpotScreen({ app, id }: { readonly app: App; readonly id: string }) {
+  const names = usePlaceNames(app);
   const { frequencyUnit } = useLive(app.settings);
   const loaded = useLoaded(
     app.store,
@@ -77,7 +79,7 @@ export function SpotScreen({ app, id }: { readonly app: App; readonly id: string
           <h2>{text.visits}</h2>
           <Rows label={text.visits}>
             {[...visits].reverse().map((visit) => (
-              <ReadingRow key={visit.id} app={app} reading={visit} />
+              <ReadingRow key={visit.id} names={names} app={app} reading={visit} />
             ))}
           </Rows>
           <div class="row">

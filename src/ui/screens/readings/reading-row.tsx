@@ -4,19 +4,20 @@ import { formatDamping, formatFrequency } from '../../../text/quantity.ts';
 import { screenText } from '../../../text/screens.ts';
 import { Row } from '../../components/rows.tsx';
 import { useLive } from '../../use-live.ts';
-import { useLoaded } from '../../use-loaded.ts';
+import { readingName, type PlaceNames } from './place-names.ts';
 import { dayAndTime } from '../../day-and-time.ts';
 
 /** One reading in a list: where, what it rings at, when; practice is said in words. */
 export function ReadingRow(props: {
   readonly app: App;
   readonly reading: ReadingSummary;
+  readonly names: PlaceNames;
   readonly isCurrent?: boolean;
   readonly select?: { readonly checked: boolean; readonly onChange: (on: boolean) => void };
 }) {
   const { app, reading } = props;
   const { frequencyUnit } = useLive(app.settings);
-  const name = useReadingName(app, reading);
+  const name = readingName(reading, props.names);
   const note = [
     dayAndTime(reading.recordedAt),
     screenText.procedures[reading.procedure].verb,
@@ -49,21 +50,3 @@ export function ReadingRow(props: {
     />
   );
 }
-
-function useReadingName(app: App, reading: ReadingSummary): string {
-  const where = useLoaded(
-    app.store,
-    () =>
-      app.places.whereabouts({
-        ...pick('spot', reading),
-        ...pick('asset', reading),
-        ...pick('site', reading),
-      }),
-    [reading.spot, reading.asset, reading.site],
-  );
-  const place = [where?.names.asset, where?.names.spot].filter(Boolean).join(' · ') || where?.names.site;
-  return reading.label ?? (place || screenText.common.unnamed);
-}
-
-const pick = (key: 'spot' | 'asset' | 'site', reading: ReadingSummary) =>
-  reading[key] === undefined ? {} : { [key]: reading[key] };

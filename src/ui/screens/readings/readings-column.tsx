@@ -4,11 +4,13 @@ import { screenText } from '../../../text/screens.ts';
 import { TextField } from '../../components/field.tsx';
 import { Rows } from '../../components/rows.tsx';
 import { useLoaded } from '../../use-loaded.ts';
+import { usePlaceNames } from './place-names.ts';
 import { ReadingRow } from './reading-row.tsx';
 import { useShownCount } from './use-shown-count.ts';
 
 /** Readings beside the open one, on a laptop. */
 export function ReadingsColumn({ app, current }: { readonly app: App; readonly current?: string }) {
+  const names = usePlaceNames(app);
   const [search, setSearch] = useState('');
   const readings = useLoaded(
     app.store,
@@ -25,7 +27,13 @@ export function ReadingsColumn({ app, current }: { readonly app: App; readonly c
       <TextField type="search" label={screenText.readings.search} value={search} onInput={setSearch} />
       <Rows>
         {readings?.slice(0, shown).map((reading) => (
-          <ReadingRow key={reading.id} app={app} reading={reading} isCurrent={reading.id === current} />
+          <ReadingRow
+            key={reading.id}
+            names={names}
+            app={app}
+            reading={reading}
+            isCurrent={reading.id === current}
+          />
         ))}
       </Rows>
       <div ref={sentinel} />

@@ -11,12 +11,14 @@ import { Page } from '../../components/page.tsx';
 import { Rows } from '../../components/rows.tsx';
 import { useLoaded } from '../../use-loaded.ts';
 import { PickSpotDialog } from '../assets/pick-spot-dialog.tsx';
+import { usePlaceNames } from './place-names.ts';
 import { ReadingRow } from './reading-row.tsx';
 import { useShownCount } from './use-shown-count.ts';
 
 const text = screenText.readings;
 
 export function ReadingsScreen({ app, trashed }: { readonly app: App; readonly trashed: boolean }) {
+  const names = usePlaceNames(app);
   const [search, setSearch] = useState('');
   const [selected, setSelected] = useState<ReadonlySet<string>>(new Set());
   const [isSelecting, setIsSelecting] = useState(false);
@@ -76,6 +78,7 @@ export function ReadingsScreen({ app, trashed }: { readonly app: App; readonly t
           {readings.slice(0, shown).map((reading) => (
             <ReadingRow
               key={reading.id}
+              names={names}
               app={app}
               reading={reading}
               {...(isSelecting

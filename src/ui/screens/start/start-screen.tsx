@@ -13,6 +13,7 @@ import { Rows } from '../../components/rows.tsx';
 import { dayAndTime } from '../../day-and-time.ts';
 import { useLive } from '../../use-live.ts';
 import { useLoaded } from '../../use-loaded.ts';
+import { usePlaceNames } from '../readings/place-names.ts';
 import { ReadingRow } from '../readings/reading-row.tsx';
 import { UpdateNote } from './update-note.tsx';
 
@@ -22,6 +23,7 @@ const text = screenText.start;
 const RECENT_COUNT = 6;
 
 export function StartScreen({ app }: { readonly app: App }) {
+  const names = usePlaceNames(app);
   const { round } = useLive(app.settings);
   const [dropped, setDropped] = useState(0);
   const loaded = useLoaded(
@@ -65,7 +67,7 @@ export function StartScreen({ app }: { readonly app: App }) {
           </div>
           <Rows label={text.round}>
             {inRound.map((reading) => (
-              <ReadingRow key={reading.id} app={app} reading={reading} />
+              <ReadingRow key={reading.id} names={names} app={app} reading={reading} />
             ))}
           </Rows>
         </section>
@@ -75,7 +77,7 @@ export function StartScreen({ app }: { readonly app: App }) {
           <h2>{text.recent}</h2>
           <Rows label={text.recent}>
             {earlier.map((reading) => (
-              <ReadingRow key={reading.id} app={app} reading={reading} />
+              <ReadingRow key={reading.id} names={names} app={app} reading={reading} />
             ))}
           </Rows>
         </section>
