@@ -50,7 +50,10 @@ function isWeakNeighbour(segments: readonly Segment[], trial: DecayFit): boolean
   );
 }
 
-/** What softening or a poor start looks like: a second line inside the resolution of the first. */
+/** Nearer than this share of the broader one's bandwidth, two modes are one whose frequency scatters from tap to tap. */
+const CLOSEST_BANDWIDTHS = 0.4;
+
+/** What softening, scatter or a poor start looks like: a second line inside the resolution or the width of the first. */
 function areTooClose(
   signal: DecaySignal,
   segments: readonly Segment[],
@@ -58,8 +61,13 @@ function areTooClose(
 ): boolean {
   const longestS = Math.max(...segments.map((s) => signal.timeS[s.end - 1]! - signal.timeS[s.start]!));
   const share = segments.length > 1 ? CLOSEST_IN_SEVERAL : CLOSEST_IN_ONE_DECAY;
-  const leastRadPerS = (2 * Math.PI * share) / longestS;
+  const resolved = (2 * Math.PI * share) / longestS;
   return components.some((a, i) =>
-    components.some((b, j) => j < i && Math.abs(a.angularRadPerS - b.angularRadPerS) < leastRadPerS),
+    components.some((b, j) => {
+      // Half-power bandwidth of a mode, rad/s: twice its decay rate.
+      const width = 2 * Math.max(a.decayPerS, b.decayPerS);
+      const apart = Math.abs(a.angularRadPerS - b.angularRadPerS);
+      return j < i && apart < Math.max(resolved, CLOSEST_BANDWIDTHS * width);
+    }),
   );
 }

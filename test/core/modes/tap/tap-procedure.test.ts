@@ -244,7 +244,7 @@ describe('tapProcedure on what it must refuse or doubt', () => {
     });
     const { modes } = analysed({ ...mixed, timeS: mixed.timeS.map((_, i) => i / 60) });
     expect(modes[0]!.doubts).toContain('tap-scatter');
-    expect(modes[0]!.frequencySdHz).toBeGreaterThan(0.004);
+    expect(modes[0]!.frequencySdHz).toBeGreaterThan(0.003);
     expect(Math.abs(modes[0]!.frequencyHz - 7.4)).toBeLessThan(2 * modes[0]!.frequencySdHz);
   });
 
