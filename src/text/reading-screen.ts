@@ -192,6 +192,7 @@ export const readingText = {
     limited: 'with the cycles it has to build up',
     stopped: 'Found at rest, held against the running machine: it may shift when running.',
     mode: (frequency: string, damping: string) => `Mode at ${frequency}, damping ${damping}.`,
+    pace: 'Show a pace to walk it by',
     modeAlone: 'No forcing is held against it.',
     toneAlone: (tone: string) => `A measured tone at ${tone}.`,
     image: (frequency: string) => `This recording would see it folded, at ${frequency}.`,

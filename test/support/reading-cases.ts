@@ -10,6 +10,7 @@ export const noLinks: ReadingLinks = {
   spot: (id) => `#/spot/${id}`,
   source: (id) => `#/source/${id}`,
   newSource: (id) => `#/source/new?reading=${id}`,
+  pace: (hz) => `#/pace?hz=${hz}`,
   handOver: (id) => `#/hand-over?reading=${id}`,
 };
 

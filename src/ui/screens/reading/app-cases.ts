@@ -59,5 +59,7 @@ export const readingLinks = (app: App): ReadingLinks => ({
   spot: (id) => app.navigation.href({ screen: 'spot', id }),
   source: (id) => app.navigation.href({ screen: 'source', id }),
   newSource: (reading) => app.navigation.href({ screen: 'source', id: 'new', reading }),
+  pace: (frequencyHz) =>
+    app.navigation.href({ screen: 'pace', frequencyHz: Number(frequencyHz.toPrecision(4)) }),
   handOver: (reading) => app.navigation.href({ screen: 'hand-over', reading }),
 });

@@ -20,6 +20,7 @@ export interface LadderSectionProps {
   readonly judge: (analysis: Analysis, sources: readonly Source[]) => Judgement;
   readonly units: ReadingUnits;
   readonly newSource: string;
+  readonly paceLink: (frequencyHz: number) => string;
 }
 
 const pickedMode = (picked: Picked | undefined, judgement: Judgement): number | undefined => {
@@ -74,6 +75,7 @@ export function LadderSection(props: LadderSectionProps) {
           picked={picked}
           modeIndex={modeIndex}
           units={units}
+          paceLink={props.paceLink}
           onPick={setPicked}
         />
       </div>

@@ -21,6 +21,7 @@ interface LadderSheetProps {
   /** The mode that a change would be tried on. */
   readonly modeIndex: number;
   readonly units: ReadingUnits;
+  readonly paceLink: (frequencyHz: number) => string;
   readonly onPick: (picked: Picked | undefined) => void;
 }
 
@@ -74,6 +75,7 @@ export function LadderSheet(props: LadderSheetProps) {
             judgement={measured.judgement}
             picked={picked}
             units={units}
+            paceLink={props.paceLink}
           />
           <TryButton {...props} />
           <p class="note">{readingText.ladder.caption}</p>

@@ -1,5 +1,6 @@
 import type { Analysis, Mode } from '../../../core/model/analysis.ts';
 import type { Judgement, Separation } from '../../../core/model/judgement.ts';
+import type { Forcing } from '../../../core/model/source.ts';
 import { foldedFrequencyHz } from '../../../core/picture/folded-frequency.ts';
 import { formatInterval } from '../../../text/number.ts';
 import { formatDamping, formatFrequencyRange } from '../../../text/quantity.ts';
@@ -20,6 +21,7 @@ interface PairCardProps {
   readonly judgement: Judgement;
   readonly picked: Picked | undefined;
   readonly units: ReadingUnits;
+  readonly paceLink: (frequencyHz: number) => string;
 }
 
 export const sentenceCase = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1);
@@ -33,7 +35,7 @@ export function PairCard(props: PairCardProps) {
   );
 }
 
-function CardContent({ analysis, judgement, picked, units }: PairCardProps) {
+function CardContent({ analysis, judgement, picked, units, paceLink }: PairCardProps) {
   if (picked === undefined) return <p class="quiet">{readingText.pair.pick}</p>;
   if (picked.kind === 'tone') return <ToneCard {...{ analysis, judgement, units }} index={picked.index} />;
   const separation = pickedSeparation(judgement, picked);
@@ -41,7 +43,7 @@ function CardContent({ analysis, judgement, picked, units }: PairCardProps) {
     return (
       <>
         {picked.kind === 'mode' && <ModeLine mode={analysis.modes[picked.index]} units={units} />}
-        <SeparationCard {...{ judgement, separation, units }} />
+        <SeparationCard {...{ judgement, separation, units, paceLink }} />
       </>
     );
   if (picked.kind === 'forcing')
@@ -53,6 +55,9 @@ function CardContent({ analysis, judgement, picked, units }: PairCardProps) {
     </>
   );
 }
+
+/** Whether a person can walk it on purpose, to feel and record what it does. */
+const isWalked = ({ activity }: Forcing): boolean => activity === 'walking' || activity === 'stairs';
 
 function ModeLine({ mode, units }: { readonly mode: Mode | undefined; readonly units: ReadingUnits }) {
   if (mode === undefined) return null;
@@ -69,8 +74,9 @@ function SeparationCard(props: {
   readonly judgement: Judgement;
   readonly separation: Separation;
   readonly units: ReadingUnits;
+  readonly paceLink: (frequencyHz: number) => string;
 }) {
-  const { separation, judgement, units } = props;
+  const { separation, judgement, units, paceLink } = props;
   const forcing = judgement.forcings[separation.forcingIndex];
   if (!forcing) return null;
   const { kind, interval } = separation.amplification;
@@ -99,6 +105,13 @@ function SeparationCard(props: {
         , {forcingOrigin(forcing)}.{separation.stoppedAgainstRunning ? ` ${readingText.pair.stopped}` : ''}
         {separation.buildUpLimited ? ` ${sentenceCase(readingText.pair.limited)}.` : ''}
       </p>
+      {isWalked(forcing) && separation.verdict !== 'apart' && (
+        <p class="no-print">
+          <a class={styles.pace} href={paceLink(separation.modeHz)}>
+            {readingText.pair.pace}
+          </a>
+        </p>
+      )}
     </>
   );
 }

@@ -45,6 +45,7 @@ export function ReadingBody({ view, cases, links, units, spotDialog }: BodyProps
   const [isNaming, setNaming] = useState(false);
   const { reading } = view;
   const analysis = currentAnalysis(view);
+  const newSource = links.newSource(reading._id);
   const isRunning = analysis.procedure === 'running';
   const sources = useMemo(() => view.sources.map(({ source }) => source), [view.sources]);
   const judgement = useMemo(() => view.judge(analysis, sources), [view, analysis, sources]);
@@ -84,7 +85,8 @@ export function ReadingBody({ view, cases, links, units, spotDialog }: BodyProps
           sources={sources}
           judge={view.judge}
           units={units}
-          newSource={links.newSource(reading._id)}
+          newSource={newSource}
+          paceLink={links.pace}
         />
         <p class="note">{PLUS_MINUS_NOTE}</p>
         {isRunning && <NoModeAdvice analysis={analysis} />}

@@ -75,4 +75,6 @@ export interface ReadingLinks {
   readonly source: (id: string) => string;
   readonly newSource: (readingId: string) => string;
   readonly handOver: (readingId: string) => string;
+  /** A pace to walk by, for a structure at this frequency. */
+  readonly pace: (frequencyHz: number) => string;
 }
