@@ -243,7 +243,7 @@ export const readingText = {
     y: (unit: string) => `amplitude, ${unit}`,
     note: (window: string, resolution: string, averages: string) =>
       `Window ${window}, resolution ${resolution}, ${averages}. Hatched: this recording could not see it.`,
-    averages: (said: string) => (said === '1' || said === '1.0' ? '1 average' : `${said} averages`),
+    averages: (said: string) => (said === '1' ? '1 average' : `${said} averages`),
     head: ['Frequency', 'Amplitude', 'What it is'],
     mode: 'mode',
     tone: 'tone',

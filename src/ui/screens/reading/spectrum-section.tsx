@@ -136,7 +136,7 @@ export function SpectrumSection({ analysis, pictures, units, axes }: SpectrumPro
         {words.note(
           spectrum.window,
           `${formatNumber(toUnit(resolutionHz, units.frequency), 2)} ${units.frequency}`,
-          words.averages(formatNumber(spectrum.averageCount, 2)),
+          words.averages(String(Number(spectrum.averageCount.toPrecision(2)))),
         )}
       </p>
     </Section>
