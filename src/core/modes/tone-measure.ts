@@ -93,6 +93,9 @@ function signedOf(fold: Fold, apparentHz: number, rateHz: number): number {
   );
 }
 
+/** Noise in a block beyond this share of the line's power: its phase cannot be followed from block to block. */
+const WEAK_NOISE_SHARE = 0.3;
+
 interface Measured {
   readonly frequencyHz: number;
   readonly amplitudeMps2: number;
@@ -115,7 +118,8 @@ function measure(
     { ...envelope, centreHz: apparentHz, stepS: blockS, startS: 0 },
     direction,
   );
-  const noise = (4 * band.floorPerHz) / blockS;
+  // Floor S, one-sided: cosine and sine of a block each have the variance S/block.
+  const noise = (2 * band.floorPerHz) / blockS;
   let power = 0;
   for (let i = 0; i < re.length; i++) power += (re[i]! ** 2 + im[i]! ** 2) / re.length;
   power = Math.max(power - noise, 0);
@@ -128,9 +132,17 @@ function measure(
       direction,
     };
   }
+  if (band.kind === 'steady' && noise > WEAK_NOISE_SHARE * power) {
+    // Too weak block by block: the whole record's coherent sum.
+    return {
+      frequencyHz: apparentHz,
+      amplitudeMps2: Math.sqrt(band.linePowers[0]!),
+      direction: band.lineDirections[0]!,
+    };
+  }
   const amplitudeMps2 = Math.sqrt(power * (band.kind === 'mixed' ? band.lineShare : 1));
   const track =
-    noise < 0.3 * power
+    noise < WEAK_NOISE_SHARE * power
       ? phaseTrack(envelope.timeS, re, im, noise / (2 * Math.max(power, 1e-30)))
       : undefined;
   return {
@@ -147,5 +159,5 @@ function totalPower(envelope: ReturnType<typeof toneEnvelope>, band: BandNature,
   envelope.re.forEach((re, a) => {
     for (let i = 0; i < re.length; i++) power += (re[i]! ** 2 + envelope.im[a]![i]! ** 2) / re.length;
   });
-  return Math.max(0, power - (4 * band.floorPerHz * envelope.re.length) / blockS);
+  return Math.max(0, power - (2 * band.floorPerHz * envelope.re.length) / blockS);
 }

@@ -88,6 +88,25 @@ describe('runningProcedure: one line', () => {
   });
 });
 
+describe('runningProcedure: doubts', () => {
+  it('short: fifteen seconds', () => {
+    expect(answerOf(tone(9, 0.2), { durationS: 15 }).doubts.map((d) => d.code)).toEqual(['short']);
+    expect(answerOf(tone(9, 0.2)).doubts).toEqual([]);
+  });
+
+  it('low-signal: a tone of a third of the noise', () => {
+    const { tones, doubts } = answerOf(tone(17.3, 0.0075), { noiseMps2: 0.025 });
+    expect(tones[0]!.frequencyHz).toBeCloseTo(17.3, 1);
+    expect(doubts.map((d) => d.code)).toEqual(['low-signal']);
+  });
+
+  it('answers a record without any noise: one tone, nothing beside it', () => {
+    const { tones, modes } = answerOf(tone(9.3, 0.4), { noiseMps2: 0 });
+    expect(tones.map((t) => Math.round(100 * t.frequencyHz) / 100)).toEqual([9.3]);
+    expect(modes).toEqual([]);
+  });
+});
+
 describe('runningProcedure: refusals', () => {
   it('finds no tone and no mode in a phone at rest', () => {
     for (const seed of [1, 2, 3, 4]) {
