@@ -1,6 +1,7 @@
 /** Sites, assets and spots: where readings belong, and what can be told of a spot from its visits. */
 import type { Entity, EntityKind, FieldValue } from '../core/model/fact.ts';
 import { SPOT_KINDS, type Place, type SpotKind } from '../core/model/place.ts';
+import { parsePlace } from '../core/survey/parse-place.ts';
 import type { ReadingSummary, StorePort } from './ports.ts';
 
 export interface Spot {
@@ -60,17 +61,9 @@ export const textField = (entity: Entity | undefined, key: string): string | und
 };
 
 /** What the criteria need to know of a spot, as far as it was entered. */
-export const placeOf = (spot: Entity): Place => {
-  const { machine, building, floorUse } = spot.fields as unknown as Partial<Place>;
-  return {
-    kind: spotKindOf(spot.fields.kind),
-    ...(machine ? { machine } : {}),
-    ...(building ? { building } : {}),
-    ...(floorUse ? { floorUse } : {}),
-  };
-};
+export const placeOf = (spot: Entity): Place => parsePlace(spot.fields);
 
-export const spotKindOf = (value: unknown): SpotKind => SPOT_KINDS.find((kind) => kind === value) ?? 'other';
+const spotKindOf = (value: unknown): SpotKind => SPOT_KINDS.find((kind) => kind === value) ?? 'other';
 
 export function createPlaces(store: StorePort): Places {
   const kept = async (kind: EntityKind) => (await store.entities(kind)).filter((entity) => !entity.trashed);

@@ -2,7 +2,8 @@
 import type { Entity, FieldValue } from '../core/model/fact.ts';
 import type { Source } from '../core/model/source.ts';
 import type { StorePort } from './ports.ts';
-import { textField } from './places.ts';
+import type { FoldedForcing } from '../core/model/folded-forcing.ts';
+import { textField, type PlaceIds } from './places.ts';
 
 export interface KnownSource {
   readonly id: string;
@@ -15,6 +16,8 @@ export interface Sources {
   list(): Promise<readonly KnownSource[]>;
   /** Those of the asset, those of the site, and those that belong nowhere. */
   validFor(place: { readonly asset?: string; readonly site?: string }): Promise<readonly KnownSource[]>;
+  /** Forcings valid there that this phone would show folded: said before the recording. */
+  foldedAt(place: PlaceIds, rateHz: number): Promise<readonly FoldedForcing[]>;
   open(id: string): Promise<KnownSource | undefined>;
   save(
     source: Source,
@@ -78,6 +81,13 @@ export function createSources(store: StorePort, loadParser: () => Promise<ParseS
     list,
     async validFor(place) {
       return (await list()).filter((entry) => isValidFor(entry, place));
+    },
+    async foldedAt(place, rateHz) {
+      const valid = (await list()).filter((entry) => isValidFor(entry, place));
+      const { forcingsOf } = await import('../core/survey/forcings.ts');
+      const { foldedForcings } = await import('../core/survey/folded-images.ts');
+      const forcings = forcingsOf(valid.map((entry) => entry.source));
+      return forcings.ok ? foldedForcings(forcings.value, rateHz) : [];
     },
     async open(id) {
       const entity = await store.entity(id);

@@ -7,4 +7,3 @@ export { parseSource } from '../core/survey/parse-sources.ts';
 export { speedSeries } from '../core/survey/speed-series.ts';
 export { modePairs } from '../core/survey/mode-pairs.ts';
 export { visitChange, levelRatio, type Visit } from '../core/survey/visits.ts';
-export { changedAnalysis } from '../core/survey/structural-change.ts';

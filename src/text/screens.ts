@@ -130,6 +130,10 @@ const english = {
     title: 'Take a reading',
     leave: 'Leave',
     change: 'Change',
+    folded: (n: number) =>
+      n === 1
+        ? 'One forcing here lies above what this phone samples'
+        : `${n} forcings here lie above what this phone samples`,
     whatKind: 'What are you measuring on?',
     procedureLegend: 'Procedure',
     spotLegend: 'Kind of spot',

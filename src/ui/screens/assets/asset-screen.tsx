@@ -3,6 +3,7 @@ import { useState } from 'preact/hooks';
 import type { App } from '../../../app/app.ts';
 import type { Asset, Spot } from '../../../app/places.ts';
 import type { NextStep } from '../../../core/model/asset-verdict.ts';
+import { nextStepSentence } from '../../../text/assets.ts';
 import { INDICATIVE_LINE } from '../../../text/indicative.ts';
 import { formatDamping, formatFrequency } from '../../../text/quantity.ts';
 import { officeText } from '../../../text/office-screens.ts';
@@ -158,7 +159,7 @@ function Pooled(props: { readonly app: App; readonly asset: Asset; readonly load
 function Next(props: { readonly app: App; readonly step: NextStep; readonly spots: readonly Spot[] }) {
   const { app, step } = props;
   const spot = props.spots.find((entry) => entry.id === step.spot);
-  const sentence = text.next[step.kind](spot?.name || screenText.common.unnamed);
+  const sentence = nextStepSentence(step, spot?.name);
   return step.spot ? (
     <a href={app.navigation.href({ screen: 'take', spot: step.spot })}>{sentence}</a>
   ) : (

@@ -4,7 +4,7 @@ import type { OpenedReading } from '../../../app/ports.ts';
 import { currentAnalysis, currentPlaceIds } from '../../../app/readings.ts';
 import { levelRatio, visitChange, type Visit } from '../../../app/survey-desk.ts';
 import type { Circumstances } from '../../../core/model/fact.ts';
-import { changeSentence } from '../../../text/change.ts';
+import { changeSentence, conditionName } from '../../../text/assets.ts';
 import { INDICATIVE_LINE } from '../../../text/indicative.ts';
 import { formatNumber } from '../../../text/number.ts';
 import { formatDamping, formatFrequency, formatVelocity } from '../../../text/quantity.ts';
@@ -171,7 +171,7 @@ function Differences(pair: Pair) {
         {differ && <li>{text.differentProcedure}</li>}
         {conditions.map((key) => (
           <li key={key}>
-            {text.conditions[key]}: {shown(key, before.reading.circumstances)} →{' '}
+            {capital(conditionName(key))}: {shown(key, before.reading.circumstances)} →{' '}
             {shown(key, after.reading.circumstances)}
           </li>
         ))}
@@ -179,6 +179,8 @@ function Differences(pair: Pair) {
     </section>
   );
 }
+
+const capital = (words: string) => words.charAt(0).toUpperCase() + words.slice(1);
 
 function shown(key: keyof Circumstances, circumstances: Circumstances): string {
   const value = circumstances[key];

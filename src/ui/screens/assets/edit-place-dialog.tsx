@@ -1,14 +1,15 @@
 import { useState } from 'preact/hooks';
 import type { App } from '../../../app/app.ts';
-import { textField, spotKindOf } from '../../../app/places.ts';
+import { placeOf, textField } from '../../../app/places.ts';
 import type { Entity, FieldValue } from '../../../core/model/fact.ts';
-import { SPOT_KINDS } from '../../../core/model/place.ts';
+import { SPOT_KINDS, type Place } from '../../../core/model/place.ts';
 import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
 import { Button } from '../../components/button.tsx';
 import { Dialog } from '../../components/dialog.tsx';
 import { SelectField, TextField } from '../../components/field.tsx';
 import { useLoaded } from '../../use-loaded.ts';
+import { SpotDetails, type Details } from './spot-details.tsx';
 
 const text = officeText.places;
 
@@ -21,8 +22,9 @@ export function EditPlaceDialog(props: {
 }) {
   const { app, entity } = props;
   const [name, setName] = useState(textField(entity, 'name') ?? '');
-  const [kind, setKind] = useState(spotKindOf(entity.fields.kind));
+  const [kind, setKind] = useState(placeOf(entity).kind);
   const [direction, setDirection] = useState(textField(entity, 'direction') ?? '');
+  const [details, setDetails] = useState<Details>(() => detailsOf(placeOf(entity)));
   const parentKey = entity.kind === 'spot' ? 'asset' : 'site';
   const [parent, setParent] = useState(textField(entity, parentKey) ?? '');
   const tree = useLoaded(app.store, () => app.places.tree(), []);
@@ -33,8 +35,11 @@ export function EditPlaceDialog(props: {
   const save = async () => {
     const set: Record<string, FieldValue> = { name: name.trim() };
     if (entity.kind !== 'site') set[parentKey] = parent || null;
-    if (entity.kind === 'spot') Object.assign(set, { kind, direction: direction.trim() || null });
-    const changed = Object.entries(set).filter(([key, value]) => (entity.fields[key] ?? null) !== value);
+    if (entity.kind === 'spot')
+      Object.assign(set, { kind, direction: direction.trim() || null, ...detailFields(details) });
+    const changed = Object.entries(set).filter(
+      ([key, value]) => JSON.stringify(entity.fields[key] ?? null) !== JSON.stringify(value),
+    );
     if (changed.length > 0) await app.readings.edit(entity.id, Object.fromEntries(changed), text.changed);
     props.onClose();
   };
@@ -77,6 +82,7 @@ export function EditPlaceDialog(props: {
             options={SPOT_KINDS.map((value) => ({ value, label: screenText.spotKinds[value] }))}
             onChange={setKind}
           />
+          <SpotDetails key={kind} kind={kind} details={details} onChange={setDetails} />
           <TextField
             label={text.direction}
             note={text.directionNote}
@@ -88,3 +94,16 @@ export function EditPlaceDialog(props: {
     </Dialog>
   );
 }
+
+const detailsOf = ({ machine, building, floorUse }: Place): Details => ({
+  ...(machine ? { machine } : {}),
+  ...(building ? { building } : {}),
+  ...(floorUse ? { floorUse } : {}),
+});
+
+/** As fields of an edit: what is no longer given is cleared. */
+const detailFields = ({ machine, building, floorUse }: Details): Record<string, FieldValue> => ({
+  machine: machine && Object.keys(machine).length > 0 ? { ...machine } : null,
+  building: building ?? null,
+  floorUse: floorUse ?? null,
+});

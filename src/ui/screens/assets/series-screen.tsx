@@ -5,6 +5,7 @@ import type { OpenedReading, ReadingSummary } from '../../../app/ports.ts';
 import { currentAnalysis } from '../../../app/readings.ts';
 import { addedMassTest, modePairs, speedSeries } from '../../../app/survey-desk.ts';
 import { problemSentence } from '../../../text/problems.ts';
+import { speedSeriesSentence } from '../../../text/assets.ts';
 import { INDICATIVE_LINE } from '../../../text/indicative.ts';
 import { withUncertainty } from '../../../text/number.ts';
 import { formatAcceleration, formatFrequency } from '../../../text/quantity.ts';
@@ -150,11 +151,7 @@ function SpeedSeries({ app, visits }: { readonly app: App; readonly visits: read
   );
   return (
     <>
-      <p>
-        {series.ok
-          ? text.findings[series.value.finding](series.value.peakRpm?.map(Math.round).join(' to ') ?? '')
-          : problemSentence(series.problem)}
-      </p>
+      <p>{series.ok ? speedSeriesSentence(series.value) : problemSentence(series.problem)}</p>
       <div class={styles.scroll} tabIndex={0} role="region" aria-label={text.kinds.speed}>
         <table class={styles.table}>
           <thead>

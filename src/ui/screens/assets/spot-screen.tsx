@@ -8,7 +8,7 @@ import { visitChange, type Visit as SurveyVisit } from '../../../app/survey-desk
 import { INDICATIVE_LINE } from '../../../text/indicative.ts';
 import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
-import { changeSentence } from '../../../text/change.ts';
+import { changeSentence } from '../../../text/assets.ts';
 import { BottomBar } from '../../components/bottom-bar.tsx';
 import { Button, LinkButton } from '../../components/button.tsx';
 import { IconStart } from '../../components/icons.tsx';

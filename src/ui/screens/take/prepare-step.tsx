@@ -2,6 +2,7 @@
 import { useState } from 'preact/hooks';
 import type { App } from '../../../app/app.ts';
 import { unseenCautions, withSeen } from '../../../app/cautions.ts';
+import type { Whereabouts } from '../../../app/places.ts';
 import { replan, type TakePlan } from '../../../app/take-plan.ts';
 import { PROCEDURES } from '../../../core/model/analysis.ts';
 import { SPOT_KINDS, type SpotKind } from '../../../core/model/place.ts';
@@ -14,11 +15,15 @@ import { Page } from '../../components/page.tsx';
 import { PlacementDrawing } from '../../components/placement-drawing.tsx';
 import { Later } from '../../later.tsx';
 import { useLive } from '../../use-live.ts';
+import { useLoaded } from '../../use-loaded.ts';
 import { CautionDialog } from './caution-dialog.tsx';
 import { CircumstancesForm } from './circumstances-form.tsx';
 import styles from './prepare-step.module.css';
 
 const text = screenText.take;
+
+/** Samples a second that browsers give when they are asked for the most, before this phone was checked. */
+const USUAL_RATE_HZ = 60;
 
 export function PrepareStep({ app, onLeave }: { readonly app: App; readonly onLeave: () => void }) {
   const plan = useLive(app.take.plan);
@@ -43,6 +48,7 @@ export function PrepareStep({ app, onLeave }: { readonly app: App; readonly onLe
       <PlacementDrawing kind={plan.spotKind} />
       {plan.procedure === 'tap' && <p class="quiet">{text.tapHow[plan.spotKind]}</p>}
       {plan.procedure !== 'tap' && <p class="quiet">{text.settledNote[plan.procedure]}</p>}
+      {plan.procedure !== 'tap' && <FoldedNote app={app} where={plan.where} />}
       <ul class={styles.settings}>
         <Setting name={text.spot} value={whereText(plan)} onClick={() => setOpen('spot')} />
         <Setting
@@ -135,6 +141,33 @@ export function PrepareStep({ app, onLeave }: { readonly app: App; readonly onLe
         />
       )}
     </Page>
+  );
+}
+
+/** What this phone cannot tell apart at this spot, known before anything is recorded. */
+function FoldedNote({ app, where }: { readonly app: App; readonly where: Whereabouts }) {
+  const folded = useLoaded(
+    app.store,
+    async () => {
+      const check = await app.phone.lastCheck();
+      const found = await app.sources.foldedAt(where, check?.rateHz ?? USUAL_RATE_HZ);
+      const { foldedForcingSentence } = await import('../../../text/sources.ts');
+      return found.map(foldedForcingSentence);
+    },
+    [where],
+  );
+  if (!folded || folded.length === 0) return null;
+  return (
+    <details>
+      <summary>{text.folded(folded.length)}</summary>
+      <ul class="stack stack-tight">
+        {folded.map((sentence) => (
+          <li key={sentence} class="note">
+            {sentence}
+          </li>
+        ))}
+      </ul>
+    </details>
   );
 }
 
