@@ -71,13 +71,17 @@ async function examined(
 ): Promise<{ readonly sound: readonly Incoming[]; readonly damaged: readonly string[] }> {
   const sound: Incoming[] = [];
   const damaged: string[] = [];
-  for (const { fact, raw } of facts) {
+  // Hashing and packing run beside each other, outside this thread where the browser can.
+  const packed = await Promise.all(
+    facts.map(async ({ fact, raw }) => (raw === undefined ? undefined : packedIfGenuine(fact, raw))),
+  );
+  facts.forEach(({ fact }, index) => {
     const parsed = parseFact(fact);
-    const bytes = raw === undefined ? undefined : await packedIfGenuine(fact, raw);
+    const bytes = packed[index];
     if (!parsed.ok || bytes === 'damaged')
       damaged.push(String((fact as Partial<Fact> | undefined)?._id ?? ''));
     else sound.push({ fact: parsed.value.fact, ...(bytes === undefined ? {} : { raw: bytes }) });
-  }
+  });
   return { sound, damaged };
 }
 

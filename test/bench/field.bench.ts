@@ -60,6 +60,22 @@ try {
     }
     return times;
   });
+  const mergeMs = await page.evaluate(async () => {
+    const { readingDraft, noisyRecording } = window.field;
+    const store = window.field.store();
+    const incoming = [];
+    for (let i = 0; i < 50; i += 1) {
+      const { _id } = await store.saveReading(readingDraft(), noisyRecording(3600));
+      const raw = (await store.rawOf(_id))!;
+      incoming.push({ fact: (await store.fact(_id))!.fact, raw });
+    }
+    await window.field.deleteDatabase();
+    await window.field.openStore();
+    await window.field.store().listReadings();
+    const startMs = performance.now();
+    const { added } = await window.field.store().putFacts(incoming);
+    return (performance.now() - startMs) / added;
+  });
   const rounded = (values: readonly number[]) => values.map((value) => Math.round(value));
   console.log(`fill ${COUNT} readings: ${Math.round(fillMs)} ms`);
   console.log(`open store: ${rounded(openMs).join(' ')} ms`);
@@ -67,6 +83,7 @@ try {
   console.log(
     `filters, first and again: ${rounded(filterMs.times).join(' ')} ms (budget 100), found ${filterMs.counts.join(' ')}`,
   );
+  console.log(`merge one of 60 s, in batches of 50: ${mergeMs.toFixed(1)} ms (budget of a packet: 10)`);
   console.log(`save one of 60 s: ${rounded(saveMs).join(' ')} ms`);
 } finally {
   await browser.close();

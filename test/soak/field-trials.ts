@@ -127,28 +127,34 @@ export async function wholeReadings(page: Page): Promise<number> {
   });
 }
 
-/** A database of version 1 with readings, then a kill `afterMs` into its migration. */
+export interface MigrationKill {
+  readonly versionFound: number;
+  /** Summaries there after the kill, before anything was repaired: none or all. */
+  readonly summaryCount: number;
+  /** Readings listed, each opened, after the next start. */
+  readonly listed: number;
+}
+
+/** A database of version 1 with readings, then a kill `afterMs` into its migration and the making of its summaries. */
 export async function killWhileMigrating(
   browser: TestBrowser,
   url: string,
   readingCount: number,
   afterMs: number,
-): Promise<{ readonly browser: TestBrowser; readonly versionFound: number; readonly listed: number }> {
+): Promise<{ readonly browser: TestBrowser; readonly kill: MigrationKill }> {
   const { page } = browser;
   await page.goto(url);
   await page.evaluate(async (count) => {
     await window.field.deleteDatabase();
     await window.field.fillVersion1(count);
   }, readingCount);
-  await page.evaluate(() => void window.field.openStore().then(() => window.field.heard.push('open')));
+  await page.evaluate(() => void window.field.openStore());
   await pause(afterMs);
   const restarted = await browser.killAndRestart();
   await restarted.page.goto(url);
-  const versionFound = await restarted.page.evaluate(
-    async () => (await indexedDB.databases()).find(({ name }) => name === 'thrumbook')?.version ?? 0,
-  );
+  const found = await restarted.page.evaluate(() => window.field.rawState());
   const listed = await wholeReadings(restarted.page);
-  return { browser: restarted, versionFound, listed };
+  return { browser: restarted, kill: { ...found, listed } };
 }
 
 export interface QuotaTrial {

@@ -59,13 +59,16 @@ async function savingKills(): Promise<void> {
 }
 
 async function migrationKills(): Promise<void> {
+  const readingCount = 2000;
   const found: Record<string, number> = {};
   let isGood = true;
   for (let i = 0; i < killCount; i += 1) {
-    const trial = await killWhileMigrating(browser, served.url, 500, 400 * chance.uniform() ** 2);
+    const trial = await killWhileMigrating(browser, served.url, readingCount, 3000 * chance.uniform());
     browser = trial.browser;
-    found[`version ${trial.versionFound}`] = (found[`version ${trial.versionFound}`] ?? 0) + 1;
-    isGood &&= trial.listed === 500 && [1, 2].includes(trial.versionFound);
+    const { versionFound, summaryCount, listed } = trial.kill;
+    const state = `version ${versionFound}, ${summaryCount} summaries`;
+    found[state] = (found[state] ?? 0) + 1;
+    isGood &&= listed === readingCount && [0, readingCount].includes(summaryCount);
   }
   report('kill while migrating', isGood, { killCount, ...found });
 }

@@ -95,6 +95,14 @@ const field = {
       await store!.putFacts(facts);
     }
   },
+  /** Version and summaries of the database as it lies there, past the store. */
+  async rawState() {
+    const database = await openDB('thrumbook');
+    const { version, objectStoreNames } = database;
+    const summaryCount = objectStoreNames.contains('summaries') ? await database.count('summaries') : 0;
+    database.close();
+    return { versionFound: version, summaryCount };
+  },
   async deleteDatabase() {
     store?.close();
     await deleteDB('thrumbook');
