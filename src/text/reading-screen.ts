@@ -133,6 +133,13 @@ export const readingText = {
   velocity: 'rms velocity',
   velocityAtLeast: 'rms velocity, at least',
   strongest: 'peak acceleration',
+  halving: {
+    taps: (n: number) => `${count(n, 'more tap', 'more taps')} would halve what stands after ±.`,
+    seconds: (seconds: number) =>
+      seconds < 120
+        ? `${seconds} s more would halve what stands after ±.`
+        : `${Math.round(seconds / 60)} min more would halve what stands after ±.`,
+  },
   modes: (n: number) => (n === 1 ? 'The mode in full' : `All ${n} modes`),
   tones: (n: number) => (n === 1 ? 'The tone in full' : `All ${n} tones`),
   modeNumber: (n: number) => `Mode ${n}`,

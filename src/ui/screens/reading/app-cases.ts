@@ -4,13 +4,10 @@ import { readingText } from '../../../text/reading-screen.ts';
 import { photoJpeg } from './photo-jpeg.ts';
 import type { OpenedView, ReadingLinks, ReadingUseCases } from './reading-use-cases.ts';
 
-/** The version of reading facts that this code reads. */
-const KNOWN_VERSION = 1;
-
 async function openView(app: App, id: string): Promise<OpenedView> {
   const opened = await app.readings.open(id);
-  if (!opened) return { state: 'missing' };
-  if ((opened.reading.v as number) > KNOWN_VERSION) return { state: 'newer' };
+  // kept but not understood: made by a newer version
+  if (!opened) return { state: (await app.store.fact(id)) ? 'newer' : 'missing' };
   const where = await app.readings.whereabouts(opened);
   const [sources, photos, history, judge] = await Promise.all([
     app.sources.validFor(where),

@@ -1,4 +1,5 @@
 import type { ComponentChildren } from 'preact';
+import { moreToHalve } from '../../../app/reading-desk.ts';
 import type { Analysis, Mode } from '../../../core/model/analysis.ts';
 import type { Judgement } from '../../../core/model/judgement.ts';
 import { formatNumber, numberText } from '../../../text/number.ts';
@@ -38,9 +39,20 @@ export function NumberSheet(props: NumberSheetProps) {
           note={`${readingText.trustName}, ${readingText.doubtCount(allDoubts(analysis, judgement).length)}`}
         />
       </dl>
+      <HalvingNote analysis={analysis} />
       {analysis.modes.length > 0 && <ModeTable analysis={analysis} units={units} />}
       {analysis.tones.length > 0 && <ToneTable analysis={analysis} judgement={judgement} units={units} />}
     </section>
+  );
+}
+
+/** How much more of the same would halve the ±: what it costs to know better. */
+function HalvingNote({ analysis }: { readonly analysis: Analysis }) {
+  const more = moreToHalve(analysis);
+  if (more === undefined) return null;
+  const words = readingText.halving;
+  return (
+    <p class="note">{more.kind === 'taps' ? words.taps(more.extraTapCount) : words.seconds(more.extraS)}</p>
   );
 }
 

@@ -1,4 +1,4 @@
-import { changedAnalysis } from '../../../app/survey-desk.ts';
+import { changedAnalysis } from '../../../app/reading-desk.ts';
 import type { Analysis } from '../../../core/model/analysis.ts';
 import type { Source } from '../../../core/model/source.ts';
 
