@@ -11,6 +11,13 @@ import type { Outcome } from '../core/model/outcome.ts';
 import type { Problem } from '../core/model/problem.ts';
 import type { AxisName, InterruptionCode, Recording } from '../core/model/recording.ts';
 import type {
+  TeamStoreAccount,
+  TeamStoreProblem,
+  TeamStoreProgress,
+  TeamStoreReport,
+  TeamStoreStanding,
+} from '../core/model/team-store.ts';
+import type {
   EditFact,
   Entity,
   EntityKind,
@@ -331,4 +338,28 @@ export interface ExchangePort {
   /** Call it right in the tap. */
   share(file: File): Promise<'shared' | 'cancelled' | 'refused'>;
   save(file: File): void;
+  /** Lays a report out beside the screen and opens the browser's print dialog. */
+  print(file: File): Promise<void>;
+}
+
+// ---------------------------------------------------------------- team store
+/** A database server that a team's phones replicate with. Nothing is asked of it unless one of these is called. */
+export interface TeamStorePort {
+  /** The address as it will be used, without a slash at its end; or what is wrong with it. */
+  address(typed: string): { readonly url: string } | { readonly problem: TeamStoreProblem };
+  /** Asks the server whether account and database are right; undefined when they are. */
+  check(account: TeamStoreAccount, signal: AbortSignal): Promise<TeamStoreProblem | undefined>;
+  /**
+   * Sends what the server lacks, fetches what is missing here, tries again after cuts. Never rejects for reasons of the
+   * link or the server; failures of the phone's own store reject. `again`: compare everything, whatever was done before.
+   */
+  replicate(
+    account: TeamStoreAccount,
+    options: {
+      readonly signal: AbortSignal;
+      readonly onProgress: (progress: TeamStoreProgress) => void;
+      readonly again?: boolean;
+    },
+  ): Promise<TeamStoreReport>;
+  standing(url: string): Promise<TeamStoreStanding>;
 }
