@@ -72,8 +72,11 @@ function spreadOf(
   const floorPerHz = tone.direction.reduce((sum, d, a) => sum + d * d * spectrum.floorPerHz[a]![bin]!, 0);
   const amplitudeMps2 = Math.max(tone.amplitudeMps2, 1e-9);
   const noiseHz = Math.sqrt((12 * floorPerHz) / durationS) / (2 * Math.PI * durationS * amplitudeMps2);
-  const clockRatio = ((1 - timing.trueShare) * timing.scatterSdS * Math.sqrt(12 / sampleCount)) / durationS;
-  const clockHz = clockRatio * (fold.verdict === 'direct' ? tone.frequencyHz : rateHz);
+  // An image appears against the sample clock, whose rate is known to the scatter of the stamps; a true line on true stamps is not.
+  const isDirect = fold.verdict === 'direct';
+  const lateShare = isDirect ? 1 - timing.trueShare : 1;
+  const clockRatio = (lateShare * timing.scatterSdS * Math.sqrt(12 / sampleCount)) / durationS;
+  const clockHz = clockRatio * (isDirect ? tone.frequencyHz : rateHz);
   const wanderHz = band.kind === 'steady' ? 0 : WANDER_OF_MEAN * (tone.deviationHz ?? 0);
   const looks = Math.max(1, band.halfWidthHz * durationS);
   return {
