@@ -92,6 +92,8 @@ function offline() {
       background_color: '#f7f4ec',
       theme_color: '#f7f4ec',
       categories: ['utilities', 'productivity'],
+      // An installed app on a laptop opens packets by double click (or by "Open with").
+      file_handlers: [{ action: './', accept: { 'application/zip': ['.zip'], 'text/csv': ['.csv'] } }],
       icons: [
         { src: 'icon.svg', sizes: 'any', type: 'image/svg+xml' },
         { src: 'icon-192.png', sizes: '192x192', type: 'image/png' },

@@ -36,8 +36,9 @@ async function assemble(place: HTMLElement): Promise<void> {
     isOff,
     onError: (error) => store.noteError(errorText(error)),
   });
+  const about = { version: __APP_VERSION__, commit: __APP_COMMIT__, analysisVersion: ANALYSIS_VERSION };
   const app = await createApp({
-    about: { version: __APP_VERSION__, commit: __APP_COMMIT__, analysisVersion: ANALYSIS_VERSION },
+    about,
     navigation,
     capture: createCapture({ journal: store }),
     analysis: createAnalysisClient(),
@@ -47,7 +48,13 @@ async function assemble(place: HTMLElement): Promise<void> {
       const { readRecordingFile } = await import('./app/read-recording-file.ts');
       return readRecordingFile(file);
     },
-    receivePacket: () => navigation.go({ screen: 'hand-over' }),
+    exchange: async () => {
+      const [{ createExchange }, { default: tokensCss }] = await Promise.all([
+        import('./exchange/create-exchange.ts'),
+        import('./ui/styles/tokens.css?raw'),
+      ]);
+      return createExchange({ store, about, tokensCss, now: () => new Date() });
+    },
     problemSentence,
     environment: {
       now: () => new Date(),
@@ -61,8 +68,20 @@ async function assemble(place: HTMLElement): Promise<void> {
   store.onChange((what) => {
     if (what === 'closed') app.notices.show(screenText.storeClosed, { tone: 'failure' });
   });
+  openLaunchedFiles((file) => void app.take.openFile(file));
   render(<Root app={app} />, place);
   takeLaunchedFiles(window, (file) => void app.take.openFile(file));
+}
+
+/** Files that the system opened the installed app with (the manifest's file_handlers). */
+function openLaunchedFiles(open: (file: File) => void): void {
+  const queue = (globalThis as { launchQueue?: LaunchQueue }).launchQueue;
+  queue?.setConsumer(({ files }) => void files[0]?.getFile().then(open));
+}
+interface LaunchQueue {
+  setConsumer(
+    consumer: (launched: { readonly files: readonly { getFile(): Promise<File> }[] }) => void,
+  ): void;
 }
 
 const errorText = (error: unknown) => (error instanceof Error ? error.message : String(error));

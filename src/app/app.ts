@@ -4,12 +4,13 @@ import type { Outcome } from '../core/model/outcome.ts';
 import type { Problem } from '../core/model/problem.ts';
 import type { Recording } from '../core/model/recording.ts';
 import { screenText } from '../text/screens.ts';
+import { createHandOver, type HandOver } from './hand-over.ts';
 import { live, type Live } from './live-state.ts';
 import type { Navigation } from './navigation.ts';
 import { createNotices, type Notices } from './notices.ts';
 import { createPhone, type Phone } from './phone.ts';
 import { createPlaces, type PlaceIds, type Places } from './places.ts';
-import type { AnalysisPort, CapturePort, StorePort } from './ports.ts';
+import type { AnalysisPort, CapturePort, ExchangePort, StorePort } from './ports.ts';
 import { createReadings, type Readings } from './readings.ts';
 import { createRounds, type Rounds } from './rounds.ts';
 import { openSettings, type SettingsHolder } from './settings.ts';
@@ -35,6 +36,7 @@ export interface App {
   readonly rounds: Rounds;
   readonly phone: Phone;
   readonly take: Take;
+  readonly handOver: HandOver;
   /** Readings picked in a list to be handed over; empty means all. */
   readonly selection: Live<readonly string[]>;
   /** Kept on this phone, shown under This phone; nothing leaves it. */
@@ -69,8 +71,8 @@ export interface AppParts {
   readonly store: StorePort;
   readonly update: UpdatePort;
   readonly readRecording: (file: File) => Promise<Outcome<Recording>>;
-  /** Packets dropped or picked anywhere go to the Hand over screen. */
-  readonly receivePacket: (file: File) => void;
+  /** Loaded when something is first handed over or taken in. */
+  readonly exchange: () => Promise<ExchangePort>;
   readonly problemSentence: (problem: Problem) => string;
   readonly environment: {
     now(): Date;
@@ -126,6 +128,16 @@ export async function createApp(parts: AppParts): Promise<App> {
         });
     },
   });
+  const handOver = createHandOver({
+    store,
+    readings,
+    places,
+    sources,
+    settings,
+    exchange: parts.exchange,
+    now: environment.now,
+    noteError,
+  });
   let { practice } = environment;
   const take: Take = {
     ...flow,
@@ -153,7 +165,7 @@ export async function createApp(parts: AppParts): Promise<App> {
       const { practice: _, ...plan } = flow.plan.get();
       flow.plan.set(plan);
     },
-    openFile: (file) => openFile(parts, flow, notices, file),
+    openFile: (file) => openFile(parts, flow, handOver, notices, file),
   };
   return {
     about,
@@ -166,6 +178,7 @@ export async function createApp(parts: AppParts): Promise<App> {
     rounds,
     phone: createPhone(parts.capture, store),
     take,
+    handOver,
     selection: live<readonly string[]>([]),
     noteError,
     today: () => localDay(environment.now()),
@@ -176,8 +189,17 @@ export async function createApp(parts: AppParts): Promise<App> {
 }
 
 /** A recording becomes a reading; a packet goes to its screen; anything else is refused with row and reason. */
-async function openFile(parts: AppParts, flow: TakeFlow, notices: Notices, file: File): Promise<void> {
-  if (/\.zip$/i.test(file.name)) return parts.receivePacket(file);
+async function openFile(
+  parts: AppParts,
+  flow: TakeFlow,
+  handOver: HandOver,
+  notices: Notices,
+  file: File,
+): Promise<void> {
+  if (/\.(?:zip|html?)$/i.test(file.name)) {
+    parts.navigation.go({ screen: 'hand-over' });
+    return handOver.look(file);
+  }
   const recording = await parts.readRecording(file);
   if (!recording.ok) {
     notices.show(`${file.name}: ${parts.problemSentence(recording.problem)}`, { tone: 'failure' });

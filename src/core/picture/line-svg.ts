@@ -5,6 +5,8 @@ import { svgText, type SvgPaint, type SvgShape } from './svg-shape.ts';
 export interface LineSvgSeries {
   readonly label: string;
   readonly values: ArrayLike<number>;
+  /** Where its values stand, where that is not the plot's own `x`. */
+  readonly x?: ArrayLike<number>;
   /** `dots` for what was measured. */
   readonly kind: 'line' | 'dots' | 'dashes';
 }
@@ -80,7 +82,8 @@ const extent = (lists: readonly ArrayLike<number>[]): Interval => {
 };
 const widened = ([low, high]: Interval): Interval => (high > low ? [low, high] : [low - 1, high + 1]);
 
-const seriesPath = (series: LineSvgSeries, x: ArrayLike<number>, across: Scale, up: Scale): string => {
+const seriesPath = (series: LineSvgSeries, plotX: ArrayLike<number>, across: Scale, up: Scale): string => {
+  const x = series.x ?? plotX;
   const parts: string[] = [];
   for (let i = 0; i < x.length; i += 1) {
     const point = `${at(across.toPx(x[i]!))} ${at(up.toPx(series.values[i] ?? 0))}`;
