@@ -14,6 +14,8 @@ export interface LineTrack {
 /** Lengths and hop of the short transforms, s: the short one follows fast sweeps, the long one finds weak slow ones. */
 export const TRACK_WINDOWS_S = [1.4, 2.8] as const;
 const HOP_S = 0.2;
+/** Long records are followed in longer steps, so that time and memory stay bounded. */
+const MOST_FRAMES = 3000;
 const PADDING = 4;
 /** Fastest change followed, Hz/s. */
 const FASTEST_HZ_PER_S = 4;
@@ -33,8 +35,9 @@ export function trackLine(
 ): LineTrack | undefined {
   const rateHz = 1 / grid.periodS;
   const length = Math.round(windowS * rateHz);
-  const hop = Math.max(1, Math.round(HOP_S * rateHz));
   const n = grid.present.length;
+  const hopS = Math.max(HOP_S, (n * grid.periodS) / MOST_FRAMES);
+  const hop = Math.max(1, Math.round(hopS * rateHz));
   const frameCount = Math.floor((n - length) / hop) + 1;
   if (frameCount < 8) return undefined;
   const size = PADDING * nextPowerOfTwo(length);
