@@ -62,7 +62,7 @@ describe('the inspector: five spots, one of them twice, no signal', () => {
     await page.getByRole('link', { name: /Gallery rail/ }).click();
     await page.getByRole('link', { name: /^Post 4/ }).click();
     await heading('Post 4').waitFor();
-    await page.getByText(/no change seen/).waitFor();
+    await page.getByText(/^Frequency since the first visit: no change/i).waitFor();
     await page.goBack();
     await heading('Gallery rail').waitFor();
     await page.goBack();

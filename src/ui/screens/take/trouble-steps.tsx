@@ -59,10 +59,14 @@ export function CutStep(props: {
       <p role="alert">{interruptionSentence(cut.reason)}</p>
       {isUsable && <p class="quiet">{text.cutNote(lengthS)}</p>}
       <BottomBar>
-        {isUsable && <Button onClick={() => app.take.useCut()}>{text.useCut}</Button>}
-        <Button kind="main" onClick={() => app.take.reset()}>
+        <Button kind={isUsable ? 'plain' : 'main'} onClick={() => app.take.reset()}>
           {isUsable ? text.dropCut : text.again}
         </Button>
+        {isUsable && (
+          <Button kind="main" onClick={() => app.take.useCut()}>
+            {text.useCut}
+          </Button>
+        )}
       </BottomBar>
     </Page>
   );
