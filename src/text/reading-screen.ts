@@ -218,7 +218,8 @@ export const readingText = {
     speedOf: (name: string) => `Speed of ${name}`,
     times: (factor: string) => `× ${factor}`,
     asMeasured: 'as measured',
-    nowAt: (now: string, before: string) => `Mode at ${now}, was ${before}.`,
+    nowAt: (now: string, before: string) =>
+      now === before ? `Mode at ${now}, as measured.` : `Mode at ${now}, was ${before}.`,
     nothingNear: 'No forcing is held against this mode.',
     worse: (list: string) => `Made worse: ${list}.`,
   },
