@@ -21,6 +21,7 @@ const SUDDEN_RATIO = 3;
 
 /** Least share of the strongest tap's fall while the modes are still being found, and after. */
 export const COARSE = 0.05;
+export const LESS_COARSE = 0.02;
 export const FINE = 0.0005;
 
 export interface TapSearch {
@@ -54,7 +55,7 @@ export function findTaps(
     { decay: whole, split: bestSplit(signal, whole, components, axisWeights, search) },
   ];
   let strongest = 0;
-  const limit = search.relativeThreshold >= COARSE ? COARSE_TAP_LIMIT : TAP_LIMIT;
+  const limit = search.relativeThreshold > FINE ? COARSE_TAP_LIMIT : TAP_LIMIT;
   for (let count = 0; count < limit; count++) {
     const at = indexOfLargest(splits.map((s) => s.split?.gain ?? 0));
     const { decay, split } = splits[at]!;

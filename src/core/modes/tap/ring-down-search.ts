@@ -1,7 +1,7 @@
 import { linearColumnCount, parameterCount, parameterIndex } from './decay-model.ts';
 import type { Component, DecaySignal } from './decay-model.ts';
 import { bayesCost, recordCost } from './bayes-cost.ts';
-import { COARSE, FINE, TAP_LIMIT, findTaps } from './find-taps.ts';
+import { COARSE, FINE, LESS_COARSE, TAP_LIMIT, findTaps } from './find-taps.ts';
 import { firstRingDowns } from './first-ring-downs.ts';
 import type { FirstRingDown } from './first-ring-downs.ts';
 import { fitDecays } from './fit-decays.ts';
@@ -22,7 +22,11 @@ export function searchRingDowns(input: SearchInput): RingDownSearch | undefined 
   let best: RingDownSearch | undefined;
   let restless = 0;
   for (const start of firstRingDowns(input)) {
-    const result = searchFrom(input, start);
+    let result = searchFrom(input, start, COARSE);
+    if (isCrowded(result)) {
+      const other = searchFrom(input, start, LESS_COARSE);
+      if (recordCost(signal, other) < recordCost(signal, result)) result = other;
+    }
     if (best === undefined || recordCost(signal, result) < recordCost(signal, best)) best = result;
     if (result.tapCount >= TAP_LIMIT) restless++;
     if (leavesOnlyNoise(best) || restless >= RESTLESS_LIMIT) break;
@@ -30,13 +34,32 @@ export function searchRingDowns(input: SearchInput): RingDownSearch | undefined 
   return best;
 }
 
-function searchFrom(input: SearchInput, { tones, left, search: single }: FirstRingDown): RingDownSearch {
+/** Lines nearer than this to each other may be two modes, or one whose missed tap they make up for. */
+const NEIGHBOUR_SHARE = 0.1;
+
+/** Close lines, many lines or no mode: reasons to look for weaker taps from the beginning. */
+function isCrowded({ fit: { components }, tapCount }: RingDownSearch): boolean {
+  if (tapCount >= TAP_LIMIT) return false;
+  return (
+    components.length > 2 ||
+    components.every((c) => c.kind === 'tone') ||
+    components.some((a, i) =>
+      components.some((b, j) => j < i && Math.abs(a.angularRadPerS / b.angularRadPerS - 1) < NEIGHBOUR_SHARE),
+    )
+  );
+}
+
+function searchFrom(
+  input: SearchInput,
+  { tones, left, search: single }: FirstRingDown,
+  coarse: number,
+): RingDownSearch {
   const noise = single.quietVariance;
   const local = withOneMore({ ...input, signal: { ...input.signal, y: left } }, single, noise) ?? single;
   // Only shapes and noise are taken over: the first round fits the whole record.
   const components = [...tones, ...local.fit.components];
   const start: RingDownSearch = { ...local, fit: { ...local.fit, components } };
-  const result = search(input, settle(input, start, noise, COARSE), noise);
+  const result = search(input, settle(input, start, noise, coarse), noise, coarse);
   return result.tapCount >= TAP_LIMIT ? result : withTones(input.signal, prune(input, result, noise));
 }
 
@@ -46,7 +69,8 @@ const RESTLESS_LIMIT = 1;
 /** Residual above this many times the quiet stretches' variance: another start may do better. */
 const NOISE_EXCESS = 1.4;
 
-function leavesOnlyNoise({ fit, quietVariance }: RingDownSearch): boolean {
+/** Whether the fit explains the record down to its noise. */
+export function leavesOnlyNoise({ fit, quietVariance }: RingDownSearch): boolean {
   const sum = (values: readonly number[]): number => values.reduce((a, b) => a + b, 0);
   return sum(fit.variance) < NOISE_EXCESS * sum(quietVariance);
 }
@@ -58,10 +82,15 @@ const STEP_LIMIT = 10;
  * Either one more component or the weaker taps, whichever the record pays more for (a missed tap passes for a second
  * mode, a missed mode for many weak taps), until neither pays.
  */
-function search(input: SearchInput, start: RingDownSearch, noise: readonly number[]): RingDownSearch {
+function search(
+  input: SearchInput,
+  start: RingDownSearch,
+  noise: readonly number[],
+  coarse: number,
+): RingDownSearch {
   const { signal } = input;
   let current = start;
-  let threshold = COARSE;
+  let threshold = coarse;
   for (let step = 0; step < STEP_LIMIT && current.tapCount < TAP_LIMIT; step++) {
     const cost = recordCost(signal, current);
     const larger = withOneMore(input, current, noise);

@@ -6,19 +6,20 @@ import type { ConditionedSignal } from '../../signal/condition-recording.ts';
 import { median } from '../../signal/sample-counter.ts';
 import type { ProcedureAnswer } from '../procedure-answer.ts';
 import type { DecaySignal } from './decay-model.ts';
+import { recordCost } from './bayes-cost.ts';
 import { TAP_LIMIT } from './find-taps.ts';
 import type { FreeDecay } from './find-taps.ts';
 import type { DecayFit } from './fit-decays.ts';
 import { modeEstimate } from './mode-estimate.ts';
 import { decayAlone, residuals } from './modelled-signal.ts';
 import { residualColour } from './residual-colour.ts';
-import { searchRingDowns } from './ring-down-search.ts';
+import { leavesOnlyNoise, searchRingDowns } from './ring-down-search.ts';
 import type { RingDownSearch } from './ring-down-state.ts';
 import { fitRounded, isStepCoarse } from './rounding-likelihood.ts';
 import { softenedFit } from './softening.ts';
 import { explainedShare, isAnswer, ringEnergy } from './tap-gates.ts';
 import { modeOf, toneOf } from './tap-mode.ts';
-import { unfoldedSignal } from './unfolded-signal.ts';
+import { supposedUnfolded, unfoldedSignal } from './unfolded-signal.ts';
 
 /** Fewer samples than this hold no ring-down worth fitting. */
 const FEWEST_SAMPLES = 64;
@@ -44,10 +45,21 @@ export function tapProcedure(
   const input = { rateHz: facts.rateHz, stepMps2: facts.stepMps2 };
   const search = searchRingDowns({ ...input, signal });
   if (search === undefined) return failure('no-motion');
-  const unfolded = unfoldedSignal(conditioned, signal, search);
-  if (unfolded === undefined) return answerOf(conditioned, signal, search);
-  const again = searchRingDowns({ ...input, signal: unfolded });
-  return again === undefined ? answerOf(conditioned, signal, search) : answerOf(conditioned, unfolded, again);
+  const unfolded = unfoldedFor(conditioned, signal, search);
+  const again = unfolded && searchRingDowns({ ...input, signal: unfolded });
+  if (again === undefined || recordCost(unfolded!, again) > recordCost(signal, search))
+    return answerOf(conditioned, signal, search);
+  return answerOf(conditioned, unfolded!, again);
+}
+
+function unfoldedFor(
+  conditioned: ConditionedSignal,
+  signal: DecaySignal,
+  search: RingDownSearch,
+): DecaySignal | undefined {
+  const decided = unfoldedSignal(conditioned, signal, search);
+  if (decided !== undefined || leavesOnlyNoise(search) || search.tapCount >= TAP_LIMIT) return decided;
+  return supposedUnfolded(conditioned, signal, search);
 }
 
 /** Sensor values about their median: the slow part stays, for the fit's own constant and slope to take up. */

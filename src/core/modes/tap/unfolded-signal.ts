@@ -14,10 +14,7 @@ export function unfoldedSignal(
   search: RingDownSearch,
 ): DecaySignal | undefined {
   const { fit, fitted } = search;
-  const energies = fit.components.map((c, k) =>
-    c.kind === 'mode' ? Math.max(...fitted.map((_, s) => amplitudeAtStart(fit, s, k))) ** 2 / c.decayPerS : 0,
-  );
-  const k = energies.indexOf(Math.max(...energies));
+  const k = strongestComponent(search);
   const component = fit.components[k]!;
   if (component.kind !== 'mode') return undefined;
   const frequencyHz = component.angularRadPerS / (2 * Math.PI);
@@ -30,8 +27,40 @@ export function unfoldedSignal(
   const trueHz = signedCandidatesHz(frequencyHz, conditioned.facts.rateHz).find(
     (hz) => Math.abs(Math.abs(hz) - fold.candidatesHz[0]!) < 1e-6 * Math.abs(hz),
   );
-  if (trueHz === undefined) return undefined;
+  return trueHz === undefined ? undefined : pacedSignal(conditioned, signal, trueHz / frequencyHz);
+}
+
+/** Scatter of the stamps that leaves a mark on an image's phase, s. */
+const TELLING_SCATTER_S = 2e-4;
+
+/**
+ * The same on the mere supposition that the strongest line is the nearest image: for a record whose fit left more than
+ * noise. Whoever asks must compare the fits.
+ */
+export function supposedUnfolded(
+  conditioned: ConditionedSignal,
+  signal: DecaySignal,
+  search: RingDownSearch,
+): DecaySignal | undefined {
+  const { facts, hasClock } = conditioned;
+  if (!hasClock || facts.timing.scatterSdS < TELLING_SCATTER_S) return undefined;
+  const { angularRadPerS } = search.fit.components[strongestComponent(search)]!;
+  const frequencyHz = angularRadPerS / (2 * Math.PI);
+  return pacedSignal(conditioned, signal, (frequencyHz - facts.rateHz) / frequencyHz);
+}
+
+function strongestComponent({ fit, fitted }: RingDownSearch): number {
+  const energies = fit.components.map(
+    (c, k) =>
+      Math.max(...fitted.map((_, s) => amplitudeAtStart(fit, s, k))) ** 2 / Math.max(c.decayPerS, SLOW_PER_S),
+  );
+  return energies.indexOf(Math.max(...energies));
+}
+
+/** Decay rate below which a line is as strong as a steady one, 1/s. */
+const SLOW_PER_S = 0.05;
+
+function pacedSignal(conditioned: ConditionedSignal, signal: DecaySignal, pace: number): DecaySignal {
   const { clockS, deviationS } = conditioned;
-  const pace = trueHz / frequencyHz;
   return { ...signal, timeS: clockS, phaseTimeS: clockS.map((t, i) => t + pace * deviationS[i]!) };
 }
