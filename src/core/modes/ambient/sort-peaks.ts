@@ -12,6 +12,8 @@ const HARMONIC_SHARE = 0.012;
 const MOST_HARMONICS = 12;
 /** Peaks that are multiples of one frequency, at least so many of them consecutive: steps or strokes, no structure. */
 const SERIES_LENGTH = 3;
+/** Steps and strokes of people are slower than this (running, one foot: about 3.5 Hz). */
+const FASTEST_STRIDE_HZ = 4;
 /** Fewer half-power bandwidths in the record than this, or a wider spread of ln zeta, leave no honest damping. */
 export const LEAST_BANDWIDTHS = 1.5;
 export const MOST_DAMPING_LOG_SD = 0.6;
@@ -36,12 +38,14 @@ export function sortPeaks(peaks: readonly RandomMode[]): SortedPeaks {
   const harmonics = rest.filter((p) => lines.some((line) => isMultiple(p.frequencyHz, line.frequencyHz)));
   const others = rest.filter((p) => !harmonics.includes(p));
   const series = harmonicSeries(others);
-  const free = others.filter((p) => !series.includes(p));
+  const strides = harmonicSeries([...lines, ...harmonics, ...series]);
+  const steps = others.filter((p) => !series.includes(p) && isStep(p, strides));
+  const free = others.filter((p) => !series.includes(p) && !steps.includes(p));
   const resolved = (p: RandomMode): boolean =>
     p.bandwidthTimesDuration >= LEAST_BANDWIDTHS && p.dampingLogSd <= MOST_DAMPING_LOG_SD;
   return {
     modes: free.filter(resolved),
-    lines: [...lines, ...harmonics, ...series],
+    lines: [...lines, ...harmonics, ...series, ...steps],
     unresolved: free.filter((p) => !resolved(p)),
   };
 }
@@ -60,6 +64,20 @@ function isMultiple(frequencyHz: number, baseHz: number): boolean {
   return (
     order >= 2 && order <= MOST_HARMONICS && Math.abs(frequencyHz / (order * baseHz) - 1) < HARMONIC_SHARE
   );
+}
+
+/**
+ * Beside a series of steps, a peak within its own width of a multiple is one of them: a gait wanders by a per cent or two,
+ * which widens its higher multiples.
+ */
+function isStep(peak: RandomMode, series: readonly RandomMode[]): boolean {
+  const stepHz = Math.min(...series.map((p) => p.frequencyHz));
+  if (!(stepHz < FASTEST_STRIDE_HZ)) return false;
+  // Left and right foot differ: half the step rate is there as well.
+  const baseHz = stepHz / 2;
+  const order = Math.round(peak.frequencyHz / baseHz);
+  const off = Math.abs(peak.frequencyHz / (Math.max(1, order) * baseHz) - 1);
+  return order <= 2 * MOST_HARMONICS && off < Math.max(HARMONIC_SHARE, peak.dampingRatio);
 }
 
 /** Longest run of consecutive multiples of one of the peaks (or of half of it: left and right foot differ). */

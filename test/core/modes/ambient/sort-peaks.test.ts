@@ -35,6 +35,16 @@ describe('sortPeaks', () => {
     expect(hz(modes)).toEqual([9.3]);
   });
 
+  it('takes a broadened multiple beside a series of steps for a step, but not a narrow peak between them', () => {
+    const steps = [peak(1.85), peak(3.7), peak(5.55)];
+    const { modes } = sortPeaks([
+      ...steps,
+      peak(8.44, { dampingRatio: 0.025 }),
+      peak(10.6, { dampingRatio: 0.01 }),
+    ]);
+    expect(hz(modes)).toEqual([10.6]);
+  });
+
   it('leaves two modes an octave apart alone', () => {
     expect(hz(sortPeaks([peak(4), peak(8)]).modes)).toEqual([4, 8]);
   });
