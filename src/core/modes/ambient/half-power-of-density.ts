@@ -35,7 +35,6 @@ export function halfPowerOfDensity(
     return { refusal: 'no-half-power-points' };
   return {
     dampingRatio: halfPowerDamping(lower * density.stepHz, upper * density.stepHz, 'acceleration'),
-    biasNote: 'window-widens',
   };
 }
 
