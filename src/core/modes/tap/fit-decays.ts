@@ -10,6 +10,10 @@ import type { Component, DecaySignal, Evaluation, Segment } from './decay-model.
 /** Stop when a step promises less than this part of the cost's unit (cost is in noise variances). */
 const STOP_DECREASE = 1e-4;
 const ITERATION_LIMIT = 40;
+/** Rounds of shapes and noise in turn. */
+const ROUND_LIMIT = 5;
+/** A noise variance that falls by more than this in a round was a poor guess. */
+const NOISE_SETTLED_FACTOR = 1.5;
 /** Smallest damping ratio searched: below it a free decay cannot be told from a line in a minute. */
 export const SMALLEST_DECAY_RATIO = 1e-5;
 
@@ -44,8 +48,9 @@ export function fitDecays(
     components,
     noise.map((v) => 1 / v),
   );
-  for (let round = 0; round < rounds; round++) {
+  for (let round = 0; round < ROUND_LIMIT; round++) {
     ({ components, evaluation } = descend(signal, segments, components, noise, evaluation));
+    const before = noise;
     noise = residualVariance(signal, segments, components.length, evaluation, variance);
     evaluation = evaluateDecays(
       signal,
@@ -53,6 +58,9 @@ export function fitDecays(
       components,
       noise.map((v) => 1 / v),
     );
+    // Against a noise guessed too large the descent rests too early: it goes on until the guess has come down.
+    const hasSettled = noise.every((v, a) => before[a]! < NOISE_SETTLED_FACTOR * v);
+    if (round + 1 >= rounds && hasSettled) break;
   }
   const sampleCount = segments.reduce((n, s) => n + s.end - s.start, 0);
   return {
