@@ -171,6 +171,10 @@ const english = {
     tapsOf: (n: number) =>
       n < 3 ? `${count(n, 'tap', 'taps')}, at least 3 wanted` : count(n, 'tap', 'taps'),
     left: (seconds: number) => `${seconds} s left`,
+    leaveTitle: 'Drop this recording?',
+    leaveNote: 'It goes on meanwhile. To keep what there is, go on and press Finish.',
+    leaveDrop: 'Drop it',
+    leaveStay: 'Go on recording',
     screenMayDim:
       'This browser cannot keep the screen on. Touch the screen edge now and then, away from the phone’s middle, or set a longer screen time: when it locks, the recording ends.',
     finish: 'Finish',

@@ -56,11 +56,27 @@ describe('the inspector: five spots, one of them twice, no signal', () => {
     expect(await round.getByRole('link', { name: /Gallery rail · Post 4/ }).count()).toBe(2);
   });
 
+  it('loses nothing when the back button ends a recording', async () => {
+    const { page } = browser;
+    await page.getByRole('link', { name: 'Start' }).click();
+    await button('Take a reading').click();
+    await button('Switch the practice rig on').click();
+    await button('Enough, work it out').waitFor();
+    await page.goBack();
+    await page.getByText('The reading is kept.').waitFor();
+    await page.getByRole('button', { name: 'Open', exact: true }).click();
+    await heading(/Rings at 7\.[34]/).waitFor();
+    await page.getByRole('link', { name: 'Start' }).click();
+  });
+
   it('sees what the visits to that spot say, and the way back leads back', async () => {
     const { page } = browser;
     await page.getByRole('link', { name: 'Assets' }).click();
     await page.getByRole('link', { name: /Gallery rail/ }).click();
-    await page.getByRole('link', { name: /^Post 4/ }).click();
+    await page
+      .getByRole('list', { name: 'Spots' })
+      .getByRole('link', { name: /^Post 4/ })
+      .click();
     await heading('Post 4').waitFor();
     await page.getByText(/^Frequency since the first visit: no change/i).waitFor();
     await page.goBack();

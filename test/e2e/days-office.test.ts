@@ -1,6 +1,6 @@
 /** The day of the office side (design: the job), at laptop size, without a network; and every screen under axe. */
-import { AxeBuilder } from '@axe-core/playwright';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { axeFindings, showTheme } from '../support/axe-findings.ts';
 import { launchBrowser, serveApp, type ServedApp, type TestBrowser } from '../support/browser.ts';
 import { furnish, screenHashes, type Furnished } from '../support/furnish.ts';
 import { walkTakeStates } from '../support/take-states.ts';
@@ -112,21 +112,15 @@ describe('text at 200 % on a phone', () => {
   });
 });
 
-describe('every screen under axe, in three themes', () => {
-  /** WCAG 2.2 AA and the axe rules of good practice. */
-  const findings = async (rules?: readonly string[]): Promise<string[]> => {
-    const builder = new AxeBuilder({ page: browser.page }).setLegacyMode();
-    const { violations } = await (rules ? builder.withRules([...rules]) : builder).analyze();
-    return violations.flatMap((violation) =>
-      violation.nodes.map((node) => `${violation.id}: ${node.target.join(' ')} ${node.failureSummary ?? ''}`),
-    );
-  };
+describe('every screen under axe', () => {
+  /** Where the other themes are looked at too; `npm run soak -- themes` does all of them, the tokens have a test of their own. */
+  const THEMED = ['start', 'reading', 'readings', 'asset', 'source', 'phone'];
 
   it('the states of taking a reading', async () => {
     const found: string[] = [];
     await browser.page.setViewportSize({ width: 360, height: 740 });
     await walkTakeStates(browser.page, app.url, async (state) => {
-      found.push(...(await findings()).map((finding) => `${state}: ${finding}`));
+      found.push(...(await axeFindings(browser.page)).map((finding) => `${state}: ${finding}`));
     });
     await browser.page.setViewportSize({ width: 1280, height: 800 });
     expect(found).toEqual([]);
@@ -137,10 +131,10 @@ describe('every screen under axe, in three themes', () => {
     await open(screenHashes[name as keyof typeof screenHashes](ids));
     await page.getByRole('heading', { level: 1 }).first().waitFor();
     await page.waitForTimeout(name === 'reading' ? 800 : 150);
-    expect(await findings()).toEqual([]);
-    for (const theme of ['dark', 'sunlight']) {
-      await page.evaluate((next) => void (document.documentElement.dataset['theme'] = next), theme);
-      expect(await findings(['color-contrast'])).toEqual([]);
+    expect(await axeFindings(page)).toEqual([]);
+    for (const theme of THEMED.includes(name) ? ['dark', 'sunlight'] : []) {
+      await showTheme(page, theme);
+      expect(await axeFindings(page, ['color-contrast'])).toEqual([]);
     }
   });
 });

@@ -3,6 +3,7 @@
  * Needs the built app (`npm run build`). Everything shown was made on the practice rig, in an invented place.
  */
 import { mkdirSync } from 'node:fs';
+import { showTheme } from '../support/axe-findings.ts';
 import { launchBrowser, serveApp } from '../support/browser.ts';
 import { furnish, screenHashes } from '../support/furnish.ts';
 import { walkTakeStates } from '../support/take-states.ts';
@@ -31,7 +32,7 @@ let count = 0;
 const inThemes = (width: number) => async (name: string) => {
   if (wanted && !name.includes(wanted)) return;
   for (const theme of THEMES) {
-    await page.evaluate((next) => void (document.documentElement.dataset['theme'] = next), theme);
+    await showTheme(page, theme);
     await shoot(name, theme, width, false);
     count += 1;
   }

@@ -39,6 +39,8 @@ export async function walkTakeStates(
   await page.getByText(/^2 taps/).waitFor();
   await onState('take-recording');
   await button('Leave').click();
+  await onState('take-leave');
+  await button('Drop it').click();
   await button('Take a reading').waitFor();
   await page.goto('about:blank');
   await page.goto(`${url}?rig=handrail&pace=4&fail=16#/take?procedure=tap`);

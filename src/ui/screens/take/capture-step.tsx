@@ -6,6 +6,7 @@ import { formatAcceleration } from '../../../text/quantity.ts';
 import { screenText } from '../../../text/screens.ts';
 import { BottomBar } from '../../components/bottom-bar.tsx';
 import { Button } from '../../components/button.tsx';
+import { Dialog } from '../../components/dialog.tsx';
 import { Page } from '../../components/page.tsx';
 import { ProgressLine } from '../../components/progress-line.tsx';
 import { Tally } from '../../components/tally.tsx';
@@ -32,12 +33,11 @@ export function CaptureStep(props: {
   const plan = useLive(app.take.plan);
   const live = useSlowLive(() => app.capture.live());
   const isTap = plan.procedure === 'tap';
+  const [isLeaving, setIsLeaving] = useState(false);
+  const leave = () => (session.phase === 'recording' ? setIsLeaving(true) : props.onLeave());
   const title = phaseTitle(session, plan.procedure);
   return (
-    <Page
-      title={<span aria-live="polite">{title}</span>}
-      back={{ label: text.leave, onClick: props.onLeave }}
-    >
+    <Page title={<span aria-live="polite">{title}</span>} back={{ label: text.leave, onClick: leave }}>
       {session.phase === 'asking' && <p class="quiet">{text.askingNote}</p>}
       {session.phase !== 'asking' && (
         <LiveTrace live={() => app.capture.live()} label={traceSentence(live)} />
@@ -66,6 +66,24 @@ export function CaptureStep(props: {
       <p role="status" aria-live="polite">
         {live?.hint ? text.hints[live.hint] : ''}
       </p>
+      {isLeaving && (
+        <Dialog
+          title={text.leaveTitle}
+          onClose={() => setIsLeaving(false)}
+          actions={
+            <>
+              <Button kind="grave" onClick={props.onLeave}>
+                {text.leaveDrop}
+              </Button>
+              <Button kind="main" onClick={() => setIsLeaving(false)}>
+                {text.leaveStay}
+              </Button>
+            </>
+          }
+        >
+          <p>{text.leaveNote}</p>
+        </Dialog>
+      )}
       <BottomBar>
         {session.phase === 'settling' && <Button onClick={() => app.take.start()}>{text.startNow}</Button>}
         {session.phase === 'recording' ? (

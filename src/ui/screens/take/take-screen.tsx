@@ -37,7 +37,11 @@ export function TakeScreen({
   }, [route.spot, route.procedure]);
   useEffect(
     () => () => {
-      if (app.take.state.get().phase === 'capture') app.take.cancel();
+      const left = app.take.state.get();
+      if (left.phase !== 'capture') return;
+      // The back button in mid-recording loses nothing: what there is becomes a reading, told by a notice.
+      if (left.session.phase === 'recording') app.take.finish();
+      else app.take.cancel();
     },
     [],
   );
