@@ -1,7 +1,4 @@
-/** `npm run bench -- accuracy|speed|recognition [options]`; without a word: speed, then accuracy. */
-const word = process.argv[2];
-if (word === 'recognition') await import('./recognition.bench.ts');
-else {
-  if (word !== 'accuracy') await import('./speed.bench.ts');
-  if (word !== 'speed') await import('./accuracy.bench.ts');
-}
+/** `npm run bench -- [NAME] [options]`: every test/bench/*.bench.ts whose name holds NAME, each in its own process. */
+import { runScripts } from '../support/run-scripts.ts';
+
+process.exitCode = runScripts(import.meta.dirname, '.bench.ts', process.argv.slice(2));
