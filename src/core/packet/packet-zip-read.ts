@@ -119,11 +119,11 @@ async function headerAt(source: ByteSource, at: number): Promise<Header | undefi
   };
 }
 
-/** The entry that a header announces, and where to go on. Its end must be where something begins. */
+/** The entry that a header announces, and where to go on. Something must begin at its end, or its checksum must hold. */
 async function entryOf(source: ByteSource, header: Header): Promise<{ found: ZipFound; next: number }> {
   const whole =
     header.flags & FLAG_SIZES_FOLLOW && header.packedBytes === 0 ? await sized(source, header) : header;
-  const end = whole === undefined ? undefined : await endOfEntry(source, whole);
+  const end = whole && ((await endOfEntry(source, whole)) ?? (await provenEnd(source, whole)));
   if (whole === undefined || end === undefined) {
     const reason = header.fromByte + header.packedBytes > source.sizeBytes ? 'cut-short' : 'size';
     const next = await searched(source, header.fromByte, LOCAL_SIGNATURE);
@@ -136,10 +136,18 @@ async function entryOf(source: ByteSource, header: Header): Promise<{ found: Zip
 async function endOfEntry(source: ByteSource, header: Header): Promise<number | undefined> {
   const end = header.fromByte + header.packedBytes;
   if (end > source.sizeBytes) return undefined;
-  if (end === source.sizeBytes) return end;
+  // Cut within the next signature: this entry is whole.
+  if (end + 4 > source.sizeBytes) return end;
   const signature = await signatureAt(source, end);
   if (signature === DESCRIPTOR_SIGNATURE) return end + DESCRIPTOR_BYTES;
   return signature === LOCAL_SIGNATURE || isClosing(signature) ? end : undefined;
+}
+
+/** The end where the next thing is damaged but this entry's own checksum holds. */
+async function provenEnd(source: ByteSource, header: Header): Promise<number | undefined> {
+  const end = header.fromByte + header.packedBytes;
+  if (end > source.sizeBytes || bounded(header) !== undefined) return undefined;
+  return unpackedBody(header, await packedBody(source, header)).ok ? end : undefined;
 }
 
 function bounded(header: Header): ZipFound | undefined {
