@@ -21,6 +21,8 @@ const text = screenText.start;
 
 /** As many as a glance takes in; the rest is one tap away. */
 const RECENT_COUNT = 6;
+/** A long round is seen whole; one that nobody ended for a year must not slow the start. */
+const ROUND_COUNT = 60;
 
 export function StartScreen({ app }: { readonly app: App }) {
   const names = usePlaceNames(app);
@@ -66,7 +68,7 @@ export function StartScreen({ app }: { readonly app: App }) {
             </Button>
           </div>
           <Rows label={text.round}>
-            {inRound.map((reading) => (
+            {inRound.slice(0, ROUND_COUNT).map((reading) => (
               <ReadingRow key={reading.id} names={names} app={app} reading={reading} />
             ))}
           </Rows>
