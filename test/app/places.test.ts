@@ -94,7 +94,10 @@ describe('readings', () => {
 
   it('belong where the last edit says, not where they were taken', async () => {
     const { store, readings } = await bench();
-    const { _id } = await store.saveReading(readingDraft({ spot: 'spot:01HV0000000000000000000000' }), sampleRecording(60));
+    const { _id } = await store.saveReading(
+      readingDraft({ spot: 'spot:01HV0000000000000000000000' }),
+      sampleRecording(60),
+    );
     await readings.edit(_id, { spot: null });
     const opened = await readings.open(_id);
     expect(opened && currentPlaceIds(opened)).toEqual({});
