@@ -1,5 +1,7 @@
 import type { Fold, FoldVerdict } from '../model/analysis.ts';
 import type { ConditionedSignal } from '../signal/condition-recording.ts';
+import { averagedDensity } from '../signal/spectrum.ts';
+import { withoutTone } from '../signal/tone-envelope.ts';
 import { likelihoodAt, slopeProfile, type SlopeProfile } from '../signal/jitter-slope.ts';
 
 /**
@@ -23,6 +25,8 @@ const CAUTION_FACTOR = 0.7;
 /** Log likelihood that the decided hypothesis may lack against the best slope of all. */
 const FIT_TOLERANCE = 8;
 const SHARE_STEPS = 140;
+/** Log likelihood by which a decided slope must stand above its neighbourhood. */
+const PEAK_LOG_LIKELIHOOD = 6;
 
 /** Samples the fold of a steady line is taken on, at most: ten minutes at 100 Hz say all there is to say. */
 const MOST_SAMPLES = 60_000;
@@ -65,14 +69,54 @@ export function foldOfMode(
   ringStartsS: readonly number[],
 ): Fold {
   const decayRatePerS = 2 * Math.PI * mode.dampingRatio * mode.frequencyHz;
+  const samples = mode.samples ?? samplesAlone(signal, mode);
   const blockS = Math.max(5 * signal.periodS, Math.min(1, 2 / Math.max(decayRatePerS, 1e-3)));
   return decide(
     signal,
-    mode,
+    { ...mode, samples },
     Math.max(blockS, 2 / mode.frequencyHz),
     ringSegments(signal, ringStartsS),
     decayRatePerS,
   );
+}
+
+/** Other lines this much weaker (density) than the mode do not disturb; at most so many are taken out, over blocks of this length. */
+const DISTURBING_SHARE = 0.02;
+const MOST_DISTURBING = 3;
+const REMOVAL_BLOCK_S = 0.5;
+/** Stands out of the median density by so much. */
+const DISTURBING_ABOVE_MEDIAN = 12;
+
+/** The record along the mode's direction with other strong lines taken out: they would pass for structured noise. */
+function samplesAlone(signal: ConditionedSignal, mode: FoldCandidate): Float64Array {
+  let along = alongDirection(signal.accelerationMps2, mode.direction);
+  for (const frequencyHz of otherLines(signal, mode)) {
+    const timed = { timeS: signal.timeS, clockS: signal.clockS, accelerationMps2: [along] };
+    [along] = withoutTone(timed, frequencyHz, frequencyHz, REMOVAL_BLOCK_S) as [Float64Array];
+  }
+  return along;
+}
+
+function otherLines(signal: ConditionedSignal, mode: FoldCandidate): number[] {
+  const { grid } = signal;
+  const along = alongDirection(grid.accelerationMps2, mode.direction);
+  const { densityPerHz, stepHz } = averagedDensity([along], grid.periodS, Math.round(8 / grid.periodS));
+  const density = densityPerHz[0]!;
+  const median = Float64Array.from(density).sort()[density.length >> 1]!;
+  const own = density[Math.min(density.length - 1, Math.round(mode.frequencyHz / stepHz))]!;
+  const least = Math.max(DISTURBING_ABOVE_MEDIAN * median, DISTURBING_SHARE * own);
+  const apartHz = 2 / REMOVAL_BLOCK_S;
+  const found: number[] = [];
+  for (let k = Math.ceil(1 / stepHz); k < density.length - 1; k++) {
+    const isPeak = density[k]! > least && density[k]! >= density[k - 1]! && density[k]! > density[k + 1]!;
+    if (isPeak && Math.abs(k * stepHz - mode.frequencyHz) > apartHz) found.push(k);
+  }
+  found.sort((a, b) => density[b]! - density[a]!);
+  const kept: number[] = [];
+  for (const k of found)
+    if (kept.length < MOST_DISTURBING && kept.every((f) => Math.abs(k * stepHz - f) > apartHz))
+      kept.push(k * stepHz);
+  return kept;
 }
 
 /** Contact left out after an onset, and before the next: s. A hand's contact lasts about 20 ms. */
@@ -158,8 +202,21 @@ export function verdictOf(profile: SlopeProfile, signedHz: readonly number[]): F
   const best = evidence.indexOf(Math.max(...evidence));
   if (!(total > Math.exp(-FIT_TOLERANCE)) || (evidence[best] as number) < DECISION_PROBABILITY * total)
     return undefined;
+  if (!isPeaked(profile, signedHz[best] as number)) return undefined;
   const ordered = [...signedHz.keys()].sort((a, b) => (evidence[b] as number) - (evidence[a] as number));
   const verdict: FoldVerdict = best === 0 ? 'direct' : 'folded';
   const candidatesHz = ordered.map((h) => Math.abs(signedHz[h] as number));
   return { verdict, candidatesHz: verdict === 'direct' ? candidatesHz.slice(0, 1) : candidatesHz };
+}
+
+/** A true line's likelihood falls off within one radian of phase to both sides; another mode's disturbance is a plateau. */
+function isPeaked(profile: SlopeProfile, signedHz: number): boolean {
+  const widthHz = 1 / (2 * Math.PI * Math.max(profile.scatterS, 1e-6));
+  let bestHz = signedHz;
+  for (let s = 0; s <= SHARE_STEPS; s++) {
+    const slopeHz = signedHz * (LEAST_TELLING_SHARE + (s / SHARE_STEPS) * (1 - LEAST_TELLING_SHARE));
+    if (likelihoodAt(profile, slopeHz) > likelihoodAt(profile, bestHz)) bestHz = slopeHz;
+  }
+  const beside = Math.max(likelihoodAt(profile, bestHz - widthHz), likelihoodAt(profile, bestHz + widthHz));
+  return likelihoodAt(profile, bestHz) - beside > PEAK_LOG_LIKELIHOOD;
 }
