@@ -22,6 +22,7 @@ import { LostScreen } from '../lost-screen.tsx';
 import { usePlaceNames } from '../readings/place-names.ts';
 import { ReadingRow } from '../readings/reading-row.tsx';
 import { EditPlaceDialog } from './edit-place-dialog.tsx';
+import { SpotPhotos } from './spot-photos.tsx';
 import { VisitChart, type Visit } from './visit-chart.tsx';
 
 const text = officeText.places;
@@ -66,6 +67,7 @@ export function SpotScreen({ app, id }: { readonly app: App; readonly id: string
         <PlacementDrawing kind={place.kind} small />
         <p class="quiet grow">{screenText.take.howToPlace[place.kind]}</p>
       </div>
+      <SpotPhotos app={app} spot={id} />
       {visits.length === 0 && <p class="quiet">{text.noVisits}</p>}
       {taps.length > 1 && (
         <section class="stack">
