@@ -17,7 +17,7 @@ export const SHORTEST_AMBIENT_S = 20;
 /** Below this many half-power bandwidths in the record the damping is said to be short of data (relative sd above about 30 %). */
 const SHORT_BANDWIDTHS = 5;
 /** Standard deviations are widened by this: what the model leaves out (low-pass, force not white, clock); generated records cover 95 to 97 %. */
-const FREQUENCY_WIDENING = 1.2;
+const FREQUENCY_WIDENING = 1.15;
 const DAMPING_WIDENING = 1.08;
 /** A peak less than this above its floor is said to be weak (density ratio). */
 const WEAK_PEAK = 6;

@@ -24,9 +24,9 @@ describe('recogniseProcedure', () => {
     ['D', 'coastdown'],
     ['ALIAS', 'running'],
     ['TWIN', 'running'],
-  ] as const)('tells kind %s as %s (3 seeded records, at least 2)', (kind, procedure) => {
-    const said = [0, 1, 2].map((index) => recognised(generateCase(kind, 19, index).recording));
-    expect(said.filter((s) => s === procedure).length).toBeGreaterThanOrEqual(2);
+  ] as const)('tells kind %s as %s (2 seeded records)', (kind, procedure) => {
+    const said = [0, 1].map((index) => recognised(generateCase(kind, 19, index).recording));
+    expect(said).toEqual([procedure, procedure]);
   });
 
   it('takes a record that begins loud and dies away for one decay', () => {
