@@ -20,19 +20,24 @@ const LARGEST_DAMPING_RATIO = 0.3;
 export function searchRingDowns(input: SearchInput): RingDownSearch | undefined {
   const { signal } = input;
   let best: RingDownSearch | undefined;
-  let restless = 0;
-  for (const start of firstRingDowns(input)) {
-    let result = searchFrom(input, start, COARSE);
-    if (isCrowded(result)) {
-      const other = searchFrom(input, start, LESS_COARSE);
-      if (recordCost(signal, other) < recordCost(signal, result)) result = other;
-    }
+  let runs = 0;
+  const attempt = (start: FirstRingDown, coarse: number): RingDownSearch => {
+    runs++;
+    const result = searchFrom(input, start, coarse);
     if (best === undefined || recordCost(signal, result) < recordCost(signal, best)) best = result;
-    if (result.tapCount >= TAP_LIMIT) restless++;
-    if (leavesOnlyNoise(best) || restless >= RESTLESS_LIMIT) break;
+    return result;
+  };
+  for (const start of firstRingDowns(input)) {
+    const result = attempt(start, COARSE);
+    if (result.tapCount >= TAP_LIMIT || runs >= RUN_LIMIT) break;
+    if (isCrowded(result) && !isHopeless(signal, result)) attempt(start, LESS_COARSE);
+    if (runs >= RUN_LIMIT || (best !== undefined && leavesOnlyNoise(best))) break;
   }
   return best;
 }
+
+/** Searches run at most: what is no tap test should not keep anyone waiting. */
+const RUN_LIMIT = 3;
 
 /** Lines nearer than this to each other may be two modes, or one whose missed tap they make up for. */
 const NEIGHBOUR_SHARE = 0.1;
@@ -60,11 +65,9 @@ function searchFrom(
   const components = [...tones, ...local.fit.components];
   const start: RingDownSearch = { ...local, fit: { ...local.fit, components } };
   const result = search(input, settle(input, start, noise, coarse), noise, coarse);
-  return result.tapCount >= TAP_LIMIT ? result : withTones(input.signal, prune(input, result, noise));
+  if (result.tapCount >= TAP_LIMIT || isHopeless(input.signal, result)) return result;
+  return withTones(input.signal, prune(input, result, noise));
 }
-
-/** Starts that end in more taps than anyone gives: after so many the record is walking or handling, not tapping. */
-const RESTLESS_LIMIT = 1;
 
 /** Residual above this many times the quiet stretches' variance: another start may do better. */
 const NOISE_EXCESS = 1.4;
@@ -73,6 +76,21 @@ const NOISE_EXCESS = 1.4;
 export function leavesOnlyNoise({ fit, quietVariance }: RingDownSearch): boolean {
   const sum = (values: readonly number[]): number => values.reduce((a, b) => a + b, 0);
   return sum(fit.variance) < NOISE_EXCESS * sum(quietVariance);
+}
+
+/** With this many lines and still less than half of the motion explained, a record is not made of ring-downs. */
+const HOPELESS_COMPONENTS = 3;
+const HOPELESS_SHARE = 0.5;
+
+function isHopeless(signal: DecaySignal, { fit, quietVariance }: RingDownSearch): boolean {
+  if (fit.components.length < HOPELESS_COMPONENTS) return false;
+  let motion = 0;
+  let unexplained = 0;
+  signal.y.forEach((y, a) => {
+    motion += y.reduce((sum, v) => sum + v * v, 0) / y.length - quietVariance[a]!;
+    unexplained += fit.variance[a]! - quietVariance[a]!;
+  });
+  return unexplained > HOPELESS_SHARE * motion;
 }
 
 /** Steps taken at most: each adds a component, or looks for weaker taps. */
@@ -92,6 +110,7 @@ function search(
   let current = start;
   let threshold = coarse;
   for (let step = 0; step < STEP_LIMIT && current.tapCount < TAP_LIMIT; step++) {
+    if (isHopeless(signal, current)) break;
     const cost = recordCost(signal, current);
     const larger = withOneMore(input, current, noise);
     const richer = larger === undefined ? undefined : settle(input, larger, noise, threshold);
