@@ -48,6 +48,10 @@ async function assemble(place: HTMLElement): Promise<void> {
       const { readRecordingFile } = await import('./app/read-recording-file.ts');
       return readRecordingFile(file);
     },
+    teamStore: async () => {
+      const { createTeamStore } = await import('./exchange/team-store/create-team-store.ts');
+      return createTeamStore(store);
+    },
     exchange: async () => {
       const [{ createExchange }, { default: tokensCss }] = await Promise.all([
         import('./exchange/create-exchange.ts'),

@@ -10,13 +10,14 @@ import type { Navigation } from './navigation.ts';
 import { createNotices, type Notices } from './notices.ts';
 import { createPhone, type Phone } from './phone.ts';
 import { createPlaces, type PlaceIds, type Places } from './places.ts';
-import type { AnalysisPort, CapturePort, ExchangePort, StorePort } from './ports.ts';
+import type { AnalysisPort, CapturePort, ExchangePort, StorePort, TeamStorePort } from './ports.ts';
 import { createReadings, type Readings } from './readings.ts';
 import { createRounds, type Rounds } from './rounds.ts';
 import { openSettings, type SettingsHolder } from './settings.ts';
 import { createSources, type Sources } from './sources.ts';
 import { createTakeFlow, type TakeFlow } from './take-flow.ts';
 import { planTake, replan } from './take-plan.ts';
+import type { TeamStore } from './team-store.ts';
 import type { UpdatePort } from './update-port.ts';
 
 export interface About {
@@ -37,6 +38,8 @@ export interface App {
   readonly phone: Phone;
   readonly take: Take;
   readonly handOver: HandOver;
+  /** Loaded when its section is first seen; asks no server by itself. */
+  readonly teamStore: () => Promise<TeamStore>;
   /** Readings picked in a list to be handed over; empty means all. */
   readonly selection: Live<readonly string[]>;
   /** Kept on this phone, shown under This phone; nothing leaves it. */
@@ -73,6 +76,7 @@ export interface AppParts {
   readonly readRecording: (file: File) => Promise<Outcome<Recording>>;
   /** Loaded when something is first handed over or taken in. */
   readonly exchange: () => Promise<ExchangePort>;
+  readonly teamStore: () => Promise<TeamStorePort>;
   readonly problemSentence: (problem: Problem) => string;
   readonly environment: {
     now(): Date;
@@ -138,6 +142,7 @@ export async function createApp(parts: AppParts): Promise<App> {
     now: environment.now,
     noteError,
   });
+  let teamStore: Promise<TeamStore> | undefined;
   let { practice } = environment;
   const take: Take = {
     ...flow,
@@ -179,6 +184,10 @@ export async function createApp(parts: AppParts): Promise<App> {
     phone: createPhone(parts.capture, store),
     take,
     handOver,
+    teamStore: () =>
+      (teamStore ??= import('./team-store.ts').then((part) =>
+        part.createTeamStoreUse(store, parts.teamStore),
+      )),
     selection: live<readonly string[]>([]),
     noteError,
     today: () => localDay(environment.now()),
