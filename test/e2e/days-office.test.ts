@@ -78,6 +78,21 @@ describe('the office: opens, compares, edits, undoes', () => {
     await heading('Upper rail, mid-span').waitFor();
   });
 
+  it('keeps a photo of the spot, and takes its removal back', async () => {
+    const { page } = browser;
+    await open(`#/spot/${ids.spot}`);
+    const choosing = page.waitForEvent('filechooser');
+    await button('Add a photo').click();
+    const picture = await page.screenshot();
+    await (await choosing).setFiles({ name: 'rail.png', mimeType: 'image/png', buffer: picture });
+    const photo = page.getByRole('img', { name: 'Photo 1 of the spot' });
+    await photo.waitFor();
+    await button('Move to trash: Photo 1 of the spot').click();
+    await photo.waitFor({ state: 'detached' });
+    await button('Undo').click();
+    await photo.waitFor();
+  });
+
   it('does all of it with the keyboard', async () => {
     const { page } = browser;
     await open('#/readings');
