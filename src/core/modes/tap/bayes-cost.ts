@@ -1,4 +1,5 @@
-import { evaluateDecays, linearColumnCount, parameterCount } from './decay-model.ts';
+import { linearColumnCount, parameterCount } from './decay-model.ts';
+import { evaluateDecays } from './evaluate-decays.ts';
 import type { DecaySignal, Segment } from './decay-model.ts';
 import { CONTACT_SAMPLE_PRICE } from './find-taps.ts';
 import type { DecayFit } from './fit-decays.ts';

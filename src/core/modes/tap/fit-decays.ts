@@ -4,8 +4,10 @@ import {
   backSubstitute,
   symmetricInverse,
 } from '../../signal/linear-algebra.ts';
-import { evaluateDecays, linearColumnCount, parameterCount } from './decay-model.ts';
-import type { Component, DecaySignal, Evaluation, Segment } from './decay-model.ts';
+import { linearColumnCount, parameterCount } from './decay-model.ts';
+import { evaluateDecays } from './evaluate-decays.ts';
+import type { Component, DecaySignal, Segment } from './decay-model.ts';
+import type { Evaluation } from './evaluate-decays.ts';
 
 /** Stop when a step promises less than this part of the cost's unit (cost is in noise variances). */
 const STOP_DECREASE = 1e-4;

@@ -1,5 +1,6 @@
 import { symmetricInverse } from '../../signal/linear-algebra.ts';
-import { evaluateDecays, linearColumnCount, parameterCount } from './decay-model.ts';
+import { linearColumnCount, parameterCount } from './decay-model.ts';
+import { evaluateDecays } from './evaluate-decays.ts';
 import type { DecaySignal, Segment } from './decay-model.ts';
 import { fitDecays } from './fit-decays.ts';
 import type { DecayFit } from './fit-decays.ts';

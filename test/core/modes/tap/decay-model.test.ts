@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { evaluateDecays } from '../../../../src/core/modes/tap/decay-model.ts';
+import { evaluateDecays } from '../../../../src/core/modes/tap/evaluate-decays.ts';
 import type { Component } from '../../../../src/core/modes/tap/decay-model.ts';
 import { fitDecays } from '../../../../src/core/modes/tap/fit-decays.ts';
 import { dampingRatioOf, naturalFrequencyHz } from '../../../../src/core/modes/tap/mode-estimate.ts';
