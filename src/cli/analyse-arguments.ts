@@ -10,6 +10,7 @@ export interface AnalyseArguments {
 
 export const ANALYSE_USAGE = `npm run -s analyse -- [options] FILE...
   FILE                 recording as CSV or TSV with a header, e.g. t_s,ax_mps2,ay_mps2,az_mps2
+                       or a packet (.zip) or report (.html): each reading again, beside what was stored with it
   --procedure tap|running|ambient|coastdown|auto   how it was taken (default auto)
   --timing auto|stamps|clock   whether the time stamps are true or late reports of a steady clock (default auto)
   --unit mps2|g|mg     unit of acceleration (default: from the header, else m/s²)

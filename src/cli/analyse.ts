@@ -2,12 +2,14 @@
 import { analyse } from '../core/analyse.ts';
 import type { Analysis } from '../core/model/analysis.ts';
 import type { Separation } from '../core/model/judgement.ts';
-import type { Outcome } from '../core/model/outcome.ts';
+import { failure, success, type Outcome } from '../core/model/outcome.ts';
 import type { Problem } from '../core/model/problem.ts';
 import { readCsv } from '../core/packet/read-csv.ts';
 import { problemSentence } from '../text/problems.ts';
 import { ANALYSE_USAGE, parseAnalyseArguments, type AnalyseArguments } from './analyse-arguments.ts';
-import { readTextFile } from './read-text-file.ts';
+import type { RedoneReading } from './analyse-packet.ts';
+import { isPacketName } from './packet-name.ts';
+import { FILE_FAILURES, readTextFile } from './read-text-file.ts';
 
 const ALL_ANALYSED = 0;
 const WRONG_USE = 2;
@@ -15,6 +17,7 @@ const SOME_NOT_ANALYSED = 3;
 
 type Judging = (analysis: Analysis) => readonly Separation[];
 type JudgedAnalysis = Analysis & { readonly separations: readonly Separation[] };
+type Printed = { readonly analysis: JudgedAnalysis } & Partial<Omit<RedoneReading, 'analysis'>>;
 
 async function main(args: readonly string[]): Promise<number> {
   if (args.includes('--help')) {
@@ -33,9 +36,10 @@ async function main(args: readonly string[]): Promise<number> {
   }
   let status = ALL_ANALYSED;
   for (const file of parsed.files) {
-    const outcome = await analyseFile(file, parsed, judging);
-    if (!outcome.ok) status = SOME_NOT_ANALYSED;
-    await printLine(file, outcome);
+    for await (const { name, outcome } of linesOf(file, parsed, judging)) {
+      if (!outcome.ok) status = SOME_NOT_ANALYSED;
+      await printLine(name, outcome);
+    }
   }
   return status;
 }
@@ -48,6 +52,36 @@ async function judgingBy(sourcesPath: string | undefined): Promise<Judging | str
   if (!sources.ok) return `${sourcesPath}: ${problemSentence(sources.problem)}`;
   const { judge } = await import('../core/survey/judge.ts');
   return (analysis) => judge(analysis, sources.value).separations;
+}
+
+type Line = { readonly name: string; readonly outcome: Outcome<Printed> };
+
+/** One line a recording; one a reading for a packet, with what was stored beside what comes out now. */
+async function* linesOf(file: string, args: AnalyseArguments, judging: Judging): AsyncGenerator<Line> {
+  if (!isPacketName(file)) {
+    const outcome = await analyseFile(file, args, judging);
+    yield { name: file, outcome: outcome.ok ? { ok: true, value: { analysis: outcome.value } } : outcome };
+    return;
+  }
+  const { analysePacket } = await import('./analyse-packet.ts');
+  let count = 0;
+  try {
+    for await (const { name, outcome } of analysePacket(file, args.settings)) {
+      count += 1;
+      yield { name: name === '' ? file : `${file}#${name}`, outcome: judged(outcome, judging) };
+    }
+  } catch (error) {
+    const reason = error instanceof Error && 'code' in error ? String(error.code) : 'unknown';
+    yield { name: file, outcome: failure('unreadable-file', { reason: FILE_FAILURES[reason] ?? reason }) };
+    return;
+  }
+  if (count === 0) yield { name: file, outcome: failure('unreadable-file', { reason: 'no-packet' }) };
+}
+
+function judged(outcome: Outcome<RedoneReading>, judging: Judging): Outcome<Printed> {
+  if (!outcome.ok) return outcome;
+  const { analysis } = outcome.value;
+  return success({ ...outcome.value, analysis: { ...analysis, separations: judging(analysis) } });
 }
 
 async function analyseFile(
@@ -65,10 +99,8 @@ async function analyseFile(
   return { ok: true, value: { ...analysis, separations: judging(analysis) } };
 }
 
-async function printLine(file: string, outcome: Outcome<JudgedAnalysis>): Promise<void> {
-  const line = outcome.ok
-    ? { file, analysis: outcome.value }
-    : { file, problem: problemRecord(outcome.problem) };
+async function printLine(file: string, outcome: Outcome<Printed>): Promise<void> {
+  const line = outcome.ok ? { file, ...outcome.value } : { file, problem: problemRecord(outcome.problem) };
   if (!process.stdout.write(`${JSON.stringify(line)}\n`)) {
     await new Promise((resolve) => process.stdout.once('drain', resolve));
   }

@@ -11,7 +11,8 @@ const decode: DecodeText = (bytes, encoding) => {
   }
 };
 
-const FAILURES: Readonly<Record<string, string>> = {
+/** Reasons of `unreadable-file` by what the system says. */
+export const FILE_FAILURES: Readonly<Record<string, string>> = {
   ENOENT: 'no-such-file',
   EISDIR: 'is-a-folder',
   EACCES: 'not-allowed',
@@ -23,6 +24,6 @@ export async function readTextFile(path: string): Promise<Outcome<string>> {
     return textOfBytes(await readFile(path), decode);
   } catch (error) {
     const code = error instanceof Error && 'code' in error ? String(error.code) : 'unknown';
-    return failure('unreadable-file', { reason: FAILURES[code] ?? code });
+    return failure('unreadable-file', { reason: FILE_FAILURES[code] ?? code });
   }
 }

@@ -62,7 +62,9 @@ export function createExchange(parts: ExchangeParts): ExchangePort {
     },
     preview: (file, watch) => previewPacket(parts, file, watch),
     canShare: canShareFile,
-    savesSafely: savesSafely(),
+    get savesSafely() {
+      return savesSafely();
+    },
     share: shareFile,
     save: saveFile,
     print: printPage,

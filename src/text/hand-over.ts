@@ -79,6 +79,7 @@ export const handOverText = {
     file: 'the file itself',
     more: (n: number) => `and ${n} more`,
     practice: 'practice',
+    noPlace: 'No spot named',
   },
   take: (n: number) => (n > 0 ? `Take in ${readings(n)}` : 'Take it in'),
   taking: 'Taking in…',

@@ -22,6 +22,7 @@ export const reportText = {
   made: (at: string) => `Report made ${at}`,
   madeWith: (version: string, commit: string, analysisVersion: number) =>
     `Thrumbook ${version} (${commit}), analysis version ${analysisVersion}`,
+  practiceShort: 'Practice.',
   practice: 'Practice: made on a simulated phone, not on a structure.',
   inShort: 'In short',
   lead: 'Each line says at what frequency a spot rings by itself or hums, what shakes it near that frequency, and how far to trust it.',
@@ -102,14 +103,12 @@ export const reportText = {
     'A phone sees a limited band, and its browser rounds. Levels are lower bounds in the band stated, and show compliance with no limit.',
   ],
   opens:
-    'This page carries its readings with all raw samples. Open it in Thrumbook (Hand over, Receive) to look into them, or run the analysis command on it: the numbers must come out equal.',
+    'This page carries its readings with all raw samples. Open it in Thrumbook (Hand over, Take in) to look into them, or run the analysis command on it: the numbers must come out equal.',
   listOnly: (n: number) =>
     `The packet around this page holds ${count(n, 'reading', 'readings')}; here is their list. Open the packet in Thrumbook to look into them and to print a report of those that matter.`,
   listHead: ['When', 'Where', 'What was found', 'Trust'],
   /** Below a chart that leaves by itself. */
   chartFoot: (isPractice: boolean) => `${isPractice ? 'Practice. ' : ''}${INDICATIVE_LINE}`,
-  remarks: (reading: string) => [
-    INDICATIVE_LINE,
-    `${reading}, acceleration as the sensor gave it, gravity included, m/s²; time in s`,
-  ],
+  /** Above the samples of a recording; no words that could be taken for a heading of columns. */
+  remarks: (reading: string) => [INDICATIVE_LINE, `${reading} as the sensor gave it with gravity included`],
 } as const;

@@ -49,7 +49,7 @@ export function listPage(rows: readonly TableReading[], frame: ReportFrame): str
     whenText(row.reading.recordedAt, row.reading.timeZone),
     [row.label, row.spot, row.asset, row.site].filter((name) => name !== undefined).join(' · ') ||
       words.noSpot,
-    `${row.reading.practice ? `${words.practice} ` : ''}${headlineSentence(row.analysis)}`,
+    `${row.reading.practice ? `${words.practiceShort} ` : ''}${headlineSentence(row.analysis)}`,
     sentenceCase(trustWord(row.analysis.trust)),
   ]);
   const body = html`<section class="front">
@@ -152,7 +152,8 @@ function shortRow(of: ReportReading, units: ReportUnits): Html {
     </div>
     <div>
       ${pair ? html`<span class="${pair.verdict}">${verdictMark(pair.verdict)}</span>` : undefined}
-      ${said.replace(/ Trust: \w+\.$/, '')} ${reading.practice ? html`<b>${words.practice}</b>` : undefined}
+      ${said.replace(/ Trust: \w+\.$/, '')}
+      ${reading.practice ? html`<b>${words.practiceShort}</b>` : undefined}
     </div>
     <div class="trust">${words.trust[judgement.trust]}</div>
   </li>`;

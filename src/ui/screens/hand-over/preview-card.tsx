@@ -53,7 +53,7 @@ function NewReadings({ app, readings }: { readonly app: App; readonly readings: 
     <ul class={styles.named}>
       {readings.slice(0, MOST_NAMED).map((reading) => (
         <li key={reading.id}>
-          <b>{reading.where[0] ?? dayAndTime(reading.recordedAt)}</b>
+          <b>{reading.where[0] ?? text.seen.noPlace}</b>
           <span class="note">
             {[dayAndTime(reading.recordedAt), ...(reading.practice ? [text.seen.practice] : [])].join(' · ')}
           </span>

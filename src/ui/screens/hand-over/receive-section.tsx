@@ -1,3 +1,4 @@
+import { useEffect, useRef } from 'preact/hooks';
 import type { App } from '../../../app/app.ts';
 import type { Incoming } from '../../../app/hand-over.ts';
 import { handOverText as text, refusalReason } from '../../../text/hand-over.ts';
@@ -16,8 +17,14 @@ const ACCEPT =
 /** Files in: look first, then take. */
 export function ReceiveSection({ app }: { readonly app: App }) {
   const incoming = useLive(app.handOver.incoming);
+  const section = useRef<HTMLElement>(null);
+  const isBusy = incoming.phase !== 'idle';
+  // A file dropped anywhere, or opened by the system: what becomes of it must be in sight.
+  useEffect(() => {
+    if (isBusy) section.current?.scrollIntoView({ block: 'nearest' });
+  }, [isBusy]);
   return (
-    <section class="stack">
+    <section class="stack" ref={section}>
       <h2>{text.receive}</h2>
       {incoming.phase === 'idle' ? (
         <>
