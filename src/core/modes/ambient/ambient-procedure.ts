@@ -140,7 +140,12 @@ function toneOf(conditioned: ConditionedSignal, spectra: RecordSpectra, line: Ra
   const widthHz = line.dampingRatio * frequencyHz;
   return {
     frequencyHz,
-    frequencySdHz: Math.max(boundHz, line.bandwidthTimesDuration > 1 ? widthHz : 0, line.frequencySdHz),
+    frequencySdHz: Math.max(
+      boundHz,
+      line.bandwidthTimesDuration > 1 ? widthHz : 0,
+      // A line narrower than the record resolves has no width to be fitted: then half a bin is all that is known.
+      Number.isFinite(line.frequencySdHz) ? line.frequencySdHz : spectra.stepHz / 2,
+    ),
     amplitudeMps2,
     amplitudeSdMps2: Math.sqrt((2 * noiseVariance) / sampleCount),
     direction,

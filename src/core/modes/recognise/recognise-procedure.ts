@@ -21,6 +21,8 @@ const CLEAR_POINT = 1.6;
 const CLEAR_SHARE = 0.25;
 /** Scatter of the tracked line about a bent curve, share of its fall: a path through noise jumps. */
 const TRACK_SCATTER_SHARE = 0.08;
+/** Less than this share of the energy beside steady lines is no blow. */
+const LEAST_LEFT_SHARE = 1e-3;
 /** Longest stretch looked at, s: recognition must not cost more than the analysis. */
 const LOOKED_AT_S = 300;
 /** Peaks narrower than this many half-power bandwidths are lines as far as the record can tell. */
@@ -46,13 +48,19 @@ function lookedAt(conditioned: ConditionedSignal): Float64Array[] {
 function isStruck(conditioned: ConditionedSignal): boolean {
   const { periodS } = conditioned.grid;
   const axes = lookedAt(conditioned);
-  const shape = energyShape(withoutSteadyLines(axes, periodS), periodS);
+  const left = withoutSteadyLines(axes, periodS);
+  // Next to nothing but lines: what is left is the error of taking them off.
+  if (energyOf(left) < LEAST_LEFT_SHARE * energyOf(axes)) return false;
+  const shape = energyShape(left, periodS);
   // Too short for anything but one decay.
   if (!shape) return true;
   if (shape.loudestAt < DECAY_LOUDEST_AT && shape.declineLog > DECAY_DECLINE) return true;
   if (shape.rise > BLOW_RISE) return true;
   return shape.rise - shape.fall + RISE_WEIGHT * (shape.rise - RANDOM_RISE) > STRUCK_SCORE;
 }
+
+const energyOf = (axes: readonly Float64Array[]): number =>
+  axes.reduce((sum, axis) => sum + axis.reduce((s, v) => s + v * v, 0), 0);
 
 function isRunningDown(conditioned: ConditionedSignal): boolean {
   const { grid, facts } = conditioned;
