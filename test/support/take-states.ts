@@ -47,6 +47,8 @@ export async function walkTakeStates(
   await button('Switch the practice rig on').click();
   await heading('The recording was cut').waitFor();
   await onState('take-cut');
+  await button(/take it again/i).click();
+  await button('Switch the practice rig on').waitFor();
   await page.goto('about:blank');
   await page.goto(`${url}#/take?procedure=tap`);
   await button('Switch the sensor on').click();

@@ -15,6 +15,7 @@ import { useLive } from '../../use-live.ts';
 import { useLoaded } from '../../use-loaded.ts';
 import { usePlaceNames } from '../readings/place-names.ts';
 import { ReadingRow } from '../readings/reading-row.tsx';
+import styles from './start-screen.module.css';
 import { UpdateNote } from './update-note.tsx';
 
 const text = screenText.start;
@@ -150,9 +151,9 @@ function CutRecording(props: {
     void app.take.recover(journal);
   };
   return (
-    <section class="stack" role="status">
+    <section class={`stack stack-tight ${styles.cut}`} role="status">
       <h2>{text.recoverTitle}</h2>
-      <p>{text.recoverNote(Math.round(journal.durationS), dayAndTime(journal.startedAt))}</p>
+      <p class="quiet">{text.recoverNote(Math.round(journal.durationS), dayAndTime(journal.startedAt))}</p>
       <div class="row">
         <Button onClick={recover}>{text.recover}</Button>
         <Button kind="quiet" onClick={drop}>
