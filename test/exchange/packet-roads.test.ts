@@ -138,7 +138,7 @@ describe('packet', () => {
     }
     const laptop = await phone();
     const order = [...packets, ...packets].map((file, i) => (i % 3 === 0 ? cutAt(file, 0.7) : file));
-    for (const file of [...order, ...packets.toReversed()])
+    for (const file of [...order, ...[...packets].reverse()])
       await takeIn(laptop.exchange, file).catch(() => undefined);
     expect(await laptop.store.listReadings()).toHaveLength(30);
   });

@@ -3,10 +3,12 @@
  * taken out of it and given to the frame as a sheet object.
  */
 export async function printPage(file: File): Promise<void> {
-  const page = new DOMParser().parseFromString(await file.text(), 'text/html');
-  const css = [...page.querySelectorAll('style')].map((style) => style.textContent).join('\n');
+  const text = await file.text();
+  const [styled, css = ''] = /<style>([^<]*)<\/style>/.exec(text) ?? [];
   // The packet inside is not printed, and the policy of the page that shows it stands already.
-  page.querySelectorAll('style, template, meta[http-equiv]').forEach((element) => element.remove());
+  const plain = text.replace(styled ?? '', '').replace(/<template[\s\S]*/, '');
+  const page = new DOMParser().parseFromString(plain, 'text/html');
+  page.querySelectorAll('meta[http-equiv]').forEach((element) => element.remove());
   document.querySelector('iframe[data-print]')?.remove();
   const frame = document.createElement('iframe');
   frame.dataset['print'] = '';
