@@ -2,9 +2,11 @@ import { createServer } from 'node:http';
 import { fileURLToPath } from 'node:url';
 import { build } from 'vite';
 
-/** Serves the page of `field-page.ts` on a free port of this machine (a secure page), until `stop()`. */
-export async function serveFieldPage(): Promise<{ readonly url: string; stop(): Promise<void> }> {
-  const scripts = await bundled();
+/** Serves a page of this folder's on a free port of this machine (a secure page), until `stop()`. */
+export async function serveFieldPage(
+  script: 'field-page.ts' | 'team-page.ts' | 'exchange-page.ts' = 'field-page.ts',
+): Promise<{ readonly url: string; stop(): Promise<void> }> {
+  const scripts = await bundled(script);
   const server = createServer((request, response) => {
     const name = new URL(request.url ?? '/', 'http://localhost').pathname.slice(1);
     const script = scripts.get(name);
@@ -26,8 +28,8 @@ export async function serveFieldPage(): Promise<{ readonly url: string; stop(): 
   };
 }
 
-async function bundled(): Promise<ReadonlyMap<string, string>> {
-  const entry = fileURLToPath(new URL('./field-page.ts', import.meta.url));
+async function bundled(script: string): Promise<ReadonlyMap<string, string>> {
+  const entry = fileURLToPath(new URL(`./${script}`, import.meta.url));
   const result = await build({
     configFile: false,
     logLevel: 'error',
