@@ -37,11 +37,12 @@ async function assemble(place: HTMLElement): Promise<void> {
     onError: (error) => store.noteError(errorText(error)),
   });
   const about = { version: __APP_VERSION__, commit: __APP_COMMIT__, analysisVersion: ANALYSIS_VERSION };
+  const analysis = createAnalysisClient();
   const app = await createApp({
     about,
     navigation,
-    capture: createCapture({ journal: store }),
-    analysis: createAnalysisClient(),
+    capture: createCapture({ journal: store, checkPhone: analysis.checkPhone }),
+    analysis,
     store,
     update,
     readRecording: async (file) => {

@@ -37,6 +37,8 @@ export interface AnalysisPort {
     settings: AnalysisSettings,
     signal?: AbortSignal,
   ): Promise<Outcome<AnalysisResult>>;
+  /** What the phone can see, from some seconds at rest. */
+  checkPhone(recording: Recording, checkedAt: string): Promise<Outcome<PhoneCheck>>;
 }
 
 // ---------------------------------------------------------------- capture

@@ -1,4 +1,5 @@
 import type {
+  AnalysisPort,
   CapturePort,
   CaptureProblem,
   JournalPort,
@@ -25,14 +26,16 @@ import { judgeStart } from './start-judge.ts';
 
 export interface CaptureOptions {
   readonly journal: JournalPort;
+  readonly checkPhone: AnalysisPort['checkPhone'];
   readonly environment?: CaptureEnvironment;
 }
 
 export function createCapture({
   journal,
+  checkPhone,
   environment = browserCaptureEnvironment(),
 }: CaptureOptions): CapturePort {
-  return new CaptureSession(journal, environment);
+  return new CaptureSession(journal, checkPhone, environment);
 }
 
 const TICK_MS = 100;
@@ -45,6 +48,7 @@ const ACT_AGAIN_S = 30;
 
 class CaptureSession implements CapturePort {
   readonly #journal: JournalPort;
+  readonly #checkPhone: AnalysisPort['checkPhone'];
   readonly #environment: CaptureEnvironment;
   readonly #listeners = new Set<(state: SessionState) => void>();
   #session: Session = { phase: 'idle' };
@@ -53,14 +57,15 @@ class CaptureSession implements CapturePort {
   #releaseRecorder: (() => void) | undefined;
   /** Raised with every opening and cancelling, so that what was awaited for an older one is dropped. */
   #openingIndex = 0;
-  #answerCheck: ((outcome: Outcome<PhoneCheck>) => void) | undefined;
+  #answerCheck: ((outcome: Outcome<PhoneCheck> | Promise<Outcome<PhoneCheck>>) => void) | undefined;
   #lastTickMs = 0;
   #lastWriteMs = 0;
   /** Sensor time from which the simulated person may act: tap, or switch off. */
   #actAgainS = 0;
 
-  constructor(journal: JournalPort, environment: CaptureEnvironment) {
+  constructor(journal: JournalPort, checkPhone: AnalysisPort['checkPhone'], environment: CaptureEnvironment) {
     this.#journal = journal;
+    this.#checkPhone = checkPhone;
     this.#environment = environment;
   }
 
@@ -306,17 +311,19 @@ class CaptureSession implements CapturePort {
 
   async #handOutCheck(run: SensorRun, reason: InterruptionCode | undefined): Promise<void> {
     const recording = run.recording(Infinity, reason);
-    const { phoneCheck } = await import('./phone-check.ts');
     const checkedAt = new Date(this.#environment.wallMs()).toISOString();
-    this.#answer(
+    const outcome: Promise<Outcome<PhoneCheck>> =
       reason === undefined && recording !== undefined
-        ? phoneCheck(recording, checkedAt)
-        : failure('cancelled', { reason: reason ?? 'no-samples' }),
-    );
+        ? this.#checkPhone(recording, checkedAt)
+        : Promise.resolve(failure('cancelled', { reason: reason ?? 'no-samples' }));
+    this.#answer(outcome);
+    await outcome.catch(() => {
+      // Whoever asked for the check hears of it.
+    });
     if (this.#run === run) this.#dispatch({ type: 'cancelled' });
   }
 
-  #answer(outcome: Outcome<PhoneCheck>): void {
+  #answer(outcome: Outcome<PhoneCheck> | Promise<Outcome<PhoneCheck>>): void {
     this.#answerCheck?.(outcome);
     this.#answerCheck = undefined;
   }

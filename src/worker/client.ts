@@ -1,8 +1,7 @@
 import type { AnalysisPort } from '../app/ports.ts';
 import { failure } from '../core/model/outcome.ts';
 import type { Outcome } from '../core/model/outcome.ts';
-import type { AnalysisResult } from '../core/model/pictures.ts';
-import type { AnalyseReply, AnalyseRequest, MessageEnd } from './protocol.ts';
+import type { MessageEnd, Work, WorkReply, WorkRequest } from './protocol.ts';
 
 /** A worker as the client needs it. */
 export interface WorkerEnd extends MessageEnd {
@@ -30,7 +29,7 @@ const startWorker = (): WorkerEnd =>
   new Worker(new URL('./entry.ts', import.meta.url), { type: 'module' }) as unknown as WorkerEnd;
 
 interface Waiting {
-  readonly settle: (outcome: Outcome<AnalysisResult>) => void;
+  readonly settle: (outcome: Outcome<unknown>) => void;
   readonly reject: (error: AnalysisError) => void;
 }
 
@@ -60,13 +59,13 @@ export function createAnalysisClient(start: () => WorkerEnd = startWorker): Anal
   const opened = (): WorkerEnd => {
     if (worker !== undefined) return worker;
     const fresh = start();
-    fresh.onmessage = ({ data }) => receive(data as AnalyseReply);
+    fresh.onmessage = ({ data }) => receive(data as WorkReply);
     fresh.onerror = ({ message }) => fail('worker-failed', 'the analysis worker stopped', message ?? '');
     worker = fresh;
     return fresh;
   };
 
-  const receive = (reply: AnalyseReply): void => {
+  const receive = (reply: WorkReply): void => {
     if (waiting === undefined || reply.requestIndex !== requestCount) return;
     if (reply.kind === 'thrown') {
       fail('analysis-failed', `${reply.name}: ${reply.message}`, reply.stack);
@@ -77,10 +76,7 @@ export function createAnalysisClient(start: () => WorkerEnd = startWorker): Anal
     settle(reply.outcome);
   };
 
-  const run = (
-    request: Omit<AnalyseRequest, 'requestIndex' | 'kind'>,
-    signal: AbortSignal | undefined,
-  ): Promise<Outcome<AnalysisResult>> =>
+  const run = (work: Work, signal: AbortSignal | undefined): Promise<Outcome<unknown>> =>
     new Promise((resolve, reject) => {
       if (signal?.aborted === true) {
         resolve(failure('cancelled'));
@@ -103,20 +99,20 @@ export function createAnalysisClient(start: () => WorkerEnd = startWorker): Anal
         },
       };
       requestCount++;
-      opened().postMessage({
-        kind: 'analyse',
-        requestIndex: requestCount,
-        ...request,
-      } satisfies AnalyseRequest);
+      opened().postMessage({ ...work, requestIndex: requestCount } satisfies WorkRequest);
     });
 
+  /** `T` is what the worker's core answers to this kind of work. */
+  const request = <T>(work: Work, signal?: AbortSignal): Promise<Outcome<T>> => {
+    const turn = queue.then(() => run(work, signal)) as Promise<Outcome<T>>;
+    queue = turn.catch(() => undefined);
+    // A queued request is given up at once, without waiting for its turn.
+    return signal === undefined ? turn : Promise.race([turn, cancelled(signal)]);
+  };
+
   return {
-    analyse(recording, settings, signal) {
-      const turn = queue.then(() => run({ recording, settings }, signal));
-      queue = turn.catch(() => undefined);
-      // A queued request is given up at once, without waiting for its turn.
-      return signal === undefined ? turn : Promise.race([turn, cancelled(signal)]);
-    },
+    analyse: (recording, settings, signal) => request({ kind: 'analyse', recording, settings }, signal),
+    checkPhone: (recording, checkedAt) => request({ kind: 'check-phone', recording, checkedAt }),
   };
 }
 

@@ -1,20 +1,19 @@
 /** What the page and the analysis worker say to each other: the only file both sides share. */
 import type { AnalysisSettings } from '../core/model/analysis.ts';
+import type { PhoneCheck } from '../core/model/fact.ts';
 import type { Outcome } from '../core/model/outcome.ts';
 import type { AnalysisResult } from '../core/model/pictures.ts';
 import type { Recording } from '../core/model/recording.ts';
 
 /** Page to worker. One request at a time; the recording is copied, since chart and store still need it. */
-export interface AnalyseRequest {
-  readonly kind: 'analyse';
-  readonly requestIndex: number;
-  readonly recording: Recording;
-  readonly settings: AnalysisSettings;
-}
+export type WorkRequest = Work & { readonly requestIndex: number };
+export type Work =
+  | { readonly kind: 'analyse'; readonly recording: Recording; readonly settings: AnalysisSettings }
+  | { readonly kind: 'check-phone'; readonly recording: Recording; readonly checkedAt: string };
 
 /** Worker to page: the outcome (a problem is an outcome too), or what was thrown, which is our own bug. */
-export type AnalyseReply =
-  | { readonly kind: 'outcome'; readonly requestIndex: number; readonly outcome: Outcome<AnalysisResult> }
+export type WorkReply =
+  | { readonly kind: 'outcome'; readonly requestIndex: number; readonly outcome: Outcome<unknown> }
   | {
       readonly kind: 'thrown';
       readonly requestIndex: number;
@@ -29,17 +28,27 @@ export interface MessageEnd {
   onmessage: ((event: { readonly data: unknown }) => void) | null;
 }
 
-type Analyse = (recording: Recording, settings: AnalysisSettings) => Outcome<AnalysisResult>;
+/** What the worker can do: pure functions of core. */
+export interface WorkerCore {
+  analyse(recording: Recording, settings: AnalysisSettings): Outcome<AnalysisResult>;
+  checkPhone(recording: Recording, checkedAt: string): Outcome<PhoneCheck>;
+}
 
 /** Answers requests on one end; used by the worker's entry and by tests over a message channel. */
-export function serveAnalysis(end: MessageEnd, analyse: Analyse): void {
+export function serveAnalysis(end: MessageEnd, core: WorkerCore): void {
   end.onmessage = ({ data }) => {
-    const { requestIndex, recording, settings } = data as AnalyseRequest;
-    end.postMessage(replyTo(requestIndex, () => analyse(recording, settings)));
+    const request = data as WorkRequest;
+    end.postMessage(replyTo(request.requestIndex, () => carryOut(core, request)));
   };
 }
 
-function replyTo(requestIndex: number, run: () => Outcome<AnalysisResult>): AnalyseReply {
+function carryOut(core: WorkerCore, work: Work): Outcome<unknown> {
+  return work.kind === 'analyse'
+    ? core.analyse(work.recording, work.settings)
+    : core.checkPhone(work.recording, work.checkedAt);
+}
+
+function replyTo(requestIndex: number, run: () => Outcome<unknown>): WorkReply {
   try {
     return { kind: 'outcome', requestIndex, outcome: run() };
   } catch (error) {

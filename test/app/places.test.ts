@@ -23,7 +23,8 @@ async function bench() {
   const store = await openStore({ name: `places-${(serial += 1)}` });
   const places = createPlaces(store);
   const notices = createNotices();
-  const analysis = { analyse: () => Promise.resolve(failure('no-taps')) };
+  const refused = () => Promise.resolve(failure('no-taps'));
+  const analysis = { analyse: refused, checkPhone: refused };
   const readings = createReadings(store, analysis, places, notices, words);
   const parse = (given: unknown) => {
     const parsed = parseSource(given);

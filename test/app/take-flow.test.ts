@@ -21,7 +21,7 @@ async function bench(answer: () => Promise<Outcome<AnalysisResult>> = () => Prom
   const kept: string[] = [];
   const flow = createTakeFlow({
     capture,
-    analysis: { analyse: answer },
+    analysis: { analyse: answer, checkPhone: async () => failure('no-samples') },
     store,
     rounds: createRounds(store, settings),
     plan: planTake('tap', { names: {} }, 'laid'),

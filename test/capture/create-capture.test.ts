@@ -1,5 +1,6 @@
 import { describe, it, expect } from 'vitest';
 import type { SessionOptions } from '../../src/app/ports.ts';
+import { phoneCheck } from '../../src/core/phone-check.ts';
 import { createCapture } from '../../src/capture/create-capture.ts';
 import { fakeCaptureEnvironment, type Signal } from '../support/fake-capture-environment.ts';
 import { memoryJournal } from '../support/memory-journal.ts';
@@ -16,7 +17,11 @@ const still: Signal = (t) => [
 function setUp(signal: Signal = still) {
   const { environment, phone } = fakeCaptureEnvironment(signal);
   const journal = memoryJournal();
-  const capture = createCapture({ journal: journal.journal, environment });
+  const capture = createCapture({
+    journal: journal.journal,
+    checkPhone: async (recording, checkedAt) => phoneCheck(recording, checkedAt),
+    environment,
+  });
   const phases: string[] = [];
   capture.subscribe(({ phase }) => {
     if (phases.at(-1) !== phase) phases.push(phase);

@@ -6,6 +6,7 @@ import { openStore, type Store } from '../../src/store/open-store.ts';
 import { migrate, MIGRATIONS } from '../../src/store/schema.ts';
 import { deleteDB, openDB } from 'idb';
 import { rowOf } from '../../src/store/fact-row.ts';
+import { phoneCheck } from '../../src/core/phone-check.ts';
 import type { ReadingFact } from '../../src/core/model/fact.ts';
 import { encodeRaw } from '../../src/core/packet/raw-recording.ts';
 import { gzip, ownBuffer, sha256Of } from '../../src/store/raw-bytes.ts';
@@ -39,7 +40,10 @@ const field = {
   },
   store: () => store!,
   capture: () => {
-    capture ??= createCapture({ journal: store! });
+    capture ??= createCapture({
+      journal: store!,
+      checkPhone: async (recording, checkedAt) => phoneCheck(recording, checkedAt),
+    });
     return capture;
   },
   /** Opens a session and resolves with the first state in `phases` (JSON: typed arrays as lengths). */

@@ -5,6 +5,7 @@ import type { Outcome } from '../../src/core/model/outcome.ts';
 import type { AnalysisResult } from '../../src/core/model/pictures.ts';
 import type { Recording } from '../../src/core/model/recording.ts';
 import { analyse } from '../../src/core/analyse.ts';
+import { phoneCheck } from '../../src/core/phone-check.ts';
 import { AnalysisError, createAnalysisClient } from '../../src/worker/client.ts';
 import type { WorkerEnd } from '../../src/worker/client.ts';
 import { serveAnalysis } from '../../src/worker/protocol.ts';
@@ -22,7 +23,7 @@ const recording = ringingRecording({
 /** A worker over a real message channel: structured cloning as in a browser, its own side served in this thread. */
 function channelWorker(run: (recording: Recording) => Outcome<AnalysisResult>) {
   const channel = new MessageChannel();
-  serveAnalysis(channel.port2 as unknown as MessageEnd, run);
+  serveAnalysis(channel.port2 as unknown as MessageEnd, { analyse: run, checkPhone: phoneCheck });
   const end = channel.port1 as unknown as WorkerEnd & { endedCount: number };
   end.endedCount = 0;
   end.terminate = () => {
@@ -50,6 +51,14 @@ describe('createAnalysisClient', () => {
   it('gives the same analysis through the protocol as without it', async () => {
     const { client } = clientOf((r) => analyse(r, SETTINGS));
     expect(await client.analyse(recording, SETTINGS)).toEqual(analyse(recording, SETTINGS));
+  });
+
+  it('checks the phone through the same worker', async () => {
+    const { client } = clientOf(() => failure('no-taps'));
+    const checkedAt = '2031-05-06T07:08:09.000Z';
+    const outcome = await client.checkPhone(recording, checkedAt);
+    expect(outcome).toEqual(phoneCheck(recording, checkedAt));
+    expect(outcome.ok).toBe(true);
   });
 
   it('copies the recording: its arrays stay usable here', async () => {

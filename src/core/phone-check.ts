@@ -1,8 +1,8 @@
-import type { PhoneCheck } from '../core/model/fact.ts';
-import type { Outcome } from '../core/model/outcome.ts';
-import { success } from '../core/model/outcome.ts';
-import type { Recording } from '../core/model/recording.ts';
-import { conditionRecording } from '../core/signal/condition-recording.ts';
+import type { PhoneCheck } from './model/fact.ts';
+import type { Outcome } from './model/outcome.ts';
+import { success } from './model/outcome.ts';
+import type { Recording } from './model/recording.ts';
+import { conditionRecording } from './signal/condition-recording.ts';
 
 /** Lower end of the band of such a reading, Hz (as in condition-recording.ts: drift and tilt below). */
 const LOWEST_PROMISED_HZ = 0.3;
@@ -14,7 +14,10 @@ const PROMISED_S = 60;
  */
 const DETECTION_RATIO = Math.log(PROMISED_S * 30 * 1000);
 
-/** What this phone can see, from some seconds at rest. Problems as conditionRecording. */
+/**
+ * What this phone can see, from some seconds at rest. Problems as conditionRecording.
+ * @param checkedAt UTC stamp, kept as it is
+ */
 export function phoneCheck(recording: Recording, checkedAt: string): Outcome<PhoneCheck> {
   const conditioned = conditionRecording(recording, 'auto');
   if (!conditioned.ok) return conditioned;
