@@ -26,7 +26,7 @@ const heading = (name: string | RegExp) => browser.page.getByRole('heading', { l
 const button = (name: string | RegExp) => browser.page.getByRole('button', { name });
 
 describe('the inspector: five spots, one of them twice, no signal', () => {
-  beforeAll(() => goOffline('?rig=handrail&pace=10'));
+  beforeAll(() => goOffline('?rig=handrail&pace=20'));
   afterAll(() => browser.close());
 
   it('goes from spot to spot with one tap, names them on the way, and visits one again', async () => {
@@ -88,7 +88,7 @@ describe('the inspector: five spots, one of them twice, no signal', () => {
 });
 
 describe('the technician: a pump base running, then stopped and tapped', () => {
-  beforeAll(() => goOffline('?rig=pump&pace=10'));
+  beforeAll(() => goOffline('?rig=pump&pace=20'));
   afterAll(() => browser.close());
 
   it('records the running machine first', async () => {
@@ -110,7 +110,7 @@ describe('the technician: a pump base running, then stopped and tapped', () => {
 
   it('stops it, taps it, and enters the drive', async () => {
     const { page } = browser;
-    await page.goto(`${app.url}?rig=handrail&f=18.6&damping=2.5&strength=2&pace=10#/take?procedure=tap`);
+    await page.goto(`${app.url}?rig=handrail&f=18.6&damping=2.5&strength=2&pace=20#/take?procedure=tap`);
     await recordHere(page);
     await heading(/Rings at 18\.[56]/).waitFor();
     await page

@@ -87,7 +87,7 @@ describe('when the sensor does not answer', () => {
     await page.getByRole('button', { name: 'Use the practice rig' }).click();
     await heading(/Wait|At rest/).waitFor();
     await page.getByRole('button', { name: 'Cancel' }).click();
-    await page.goto(`${app.url}?rig=handrail&pace=10#/take`);
+    await page.goto(`${app.url}?rig=handrail&pace=20#/take`);
     await recordHere(page);
     await heading(/Rings at 7\.[34]/).waitFor();
     await page.goto(`${app.url}#/`);
@@ -111,7 +111,8 @@ describe('when the sensor does not answer', () => {
 
   it('offers a recording that a dead battery cut off', async () => {
     browser = await launchBrowser();
-    await openStart('?rig=handrail&pace=10');
+    // Slow enough that thirty simulated seconds outlast the taps and the wait.
+    await openStart('?rig=handrail&pace=5');
     await switchOn();
     await browser.page.getByRole('button', { name: 'Enough, work it out' }).waitFor();
     await browser.page.waitForTimeout(1500);

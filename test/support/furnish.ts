@@ -46,7 +46,7 @@ export const screenHashes = {
 const idInAddress = (page: Page): string => new URL(page.url()).hash.split('/').at(-1) ?? '';
 
 /** Simulated time runs this many times faster than the clock. */
-const PACE = 10;
+const PACE = 20;
 
 /** @param onState called with a name whenever a state is on screen that no address leads to. */
 export async function furnish(
