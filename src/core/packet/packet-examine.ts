@@ -45,7 +45,8 @@ export interface Examination {
  */
 export async function examinePacket(source: ByteSource, how: Examination = {}): Promise<ExaminedPacket> {
   const refused: Refused[] = [];
-  const byName = new Map<string, ZipEntry>();
+  const taken = new Set<string>();
+  const raws = new Map<string, ZipEntry[]>();
   let manifest: PacketManifest | undefined;
   const facts: { fact: Fact; isKnown: boolean }[] = [];
   for await (const found of zipEntries(source)) {
@@ -56,22 +57,29 @@ export async function examinePacket(source: ByteSource, how: Examination = {}): 
     const { entry } = found;
     await how.onByte?.(entry.fromByte);
     const { part, name } = packetPart(entry.name);
-    const problem = isPathTrick(entry.name) ? 'path' : byName.has(name) ? 'twice' : undefined;
-    if (problem !== undefined) refused.push({ name: entry.name, problem: damaged(problem) });
-    else if (part !== 'other') byName.set(name, entry);
-    if (problem !== undefined || part === 'other' || part === 'raw') continue;
+    if (isPathTrick(entry.name)) refused.push({ name: entry.name, problem: damaged('path') });
+    else if (part === 'raw') raws.set(name, [...(raws.get(name) ?? []), entry]);
+    if (isPathTrick(entry.name) || part === 'other' || part === 'raw') continue;
+    if (taken.has(name)) {
+      refused.push({ name, problem: damaged('twice') });
+      continue;
+    }
     const value = await jsonOf(source, entry);
     if (part === 'manifest') {
+      taken.add(name);
       manifest = value.ok ? parseManifest(value.value) : undefined;
       const flaw = manifestProblem(value, manifest);
       if (flaw) refused.push({ name: MANIFEST_NAME, problem: flaw });
       continue;
     }
     const parsed = value.ok ? namedFact(value.value, name) : value;
-    if (parsed.ok) facts.push(parsed.value);
-    else refused.push({ name, problem: parsed.problem });
+    // Only what is whole takes its name: a damaged namesake must not keep the true one out.
+    if (parsed.ok) {
+      facts.push(parsed.value);
+      taken.add(name);
+    } else refused.push({ name, problem: parsed.problem });
   }
-  const whole = await withAttachments(source, facts, byName, refused, how);
+  const whole = await withAttachments(source, facts, raws, refused, how);
   return { ...(manifest === undefined ? {} : { manifest }), facts: whole, refused };
 }
 
@@ -105,31 +113,48 @@ function namedFact(value: unknown, name: string): Outcome<{ fact: Fact; isKnown:
 async function withAttachments(
   source: ByteSource,
   facts: readonly { fact: Fact; isKnown: boolean }[],
-  byName: ReadonlyMap<string, ZipEntry>,
+  raws: ReadonlyMap<string, readonly ZipEntry[]>,
   refused: Refused[],
   how: Examination,
 ): Promise<PacketFact[]> {
   const whole: PacketFact[] = [];
   for (const { fact, isKnown } of facts) {
     const name = rawName(fact);
-    const raw = name === undefined ? undefined : byName.get(name);
-    if (raw) await how.onByte?.(raw.fromByte);
+    const candidates = (name === undefined ? undefined : raws.get(name)) ?? [];
+    if (candidates[0]) await how.onByte?.(candidates[0].fromByte);
     const needsRaw = name !== undefined && isKnown;
-    const flaw = needsRaw ? await attachmentProblem(source, fact, raw, how) : undefined;
+    const { raw, flaw } = needsRaw
+      ? await attachmentOf(source, fact, candidates, how)
+      : { raw: candidates[0], flaw: undefined };
     if (flaw === undefined) whole.push({ fact, isKnown, ...(raw === undefined ? {} : { raw }) });
     else refused.push({ name: name ?? '', problem: flaw });
   }
   return whole;
 }
 
-/** What is wrong with the samples of a reading or the picture of a photo: absent, cut, or not what the fact says. */
+/** The attachment that fits, of those under its name; else what is wrong with the first. */
+async function attachmentOf(
+  source: ByteSource,
+  fact: Fact,
+  candidates: readonly ZipEntry[],
+  how: Examination,
+): Promise<{ readonly raw?: ZipEntry | undefined; readonly flaw?: Problem | undefined }> {
+  let flaw: Problem | undefined;
+  for (const raw of candidates) {
+    const problem = await attachmentProblem(source, fact, raw, how);
+    if (problem === undefined) return { raw };
+    flaw ??= problem;
+  }
+  return { flaw: flaw ?? damaged('samples-missing') };
+}
+
+/** What is wrong with the samples of a reading or the picture of a photo: cut, or not what the fact says. */
 async function attachmentProblem(
   source: ByteSource,
   fact: Fact,
-  raw: ZipEntry | undefined,
+  raw: ZipEntry,
   how: Examination,
 ): Promise<Problem | undefined> {
-  if (raw === undefined) return damaged('samples-missing');
   if (await how.isKept?.(fact)) return undefined;
   const { rawSha256, rawBytes } = fact as { rawSha256?: unknown; rawBytes?: unknown };
   if (raw.sizeBytes !== rawBytes) return damaged('samples-size');

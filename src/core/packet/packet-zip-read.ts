@@ -53,6 +53,7 @@ const FLAG_SIZES_FOLLOW = 0x0008;
 const STEP_BYTES = 65_536;
 
 interface Header extends ZipEntry {
+  readonly atByte: number;
   readonly flags: number;
   readonly method: number;
 }
@@ -109,6 +110,7 @@ async function headerAt(source: ByteSource, at: number): Promise<Header | undefi
   const method = view.getUint16(8, true);
   return {
     name,
+    atByte: at,
     flags: view.getUint16(6, true),
     method,
     isPacked: method === DEFLATED,
@@ -123,11 +125,15 @@ async function headerAt(source: ByteSource, at: number): Promise<Header | undefi
 async function entryOf(source: ByteSource, header: Header): Promise<{ found: ZipFound; next: number }> {
   const whole =
     header.flags & FLAG_SIZES_FOLLOW && header.packedBytes === 0 ? await sized(source, header) : header;
-  const end = whole && ((await endOfEntry(source, whole)) ?? (await provenEnd(source, whole)));
+  const end = whole && (await endOfEntry(source, whole));
   if (whole === undefined || end === undefined) {
+    // Any length in the header may be the one that is wrong: nothing of it is skipped.
+    const next = await searched(source, header.atByte + 1, LOCAL_SIGNATURE);
     const reason = header.fromByte + header.packedBytes > source.sizeBytes ? 'cut-short' : 'size';
-    const next = await searched(source, header.fromByte, LOCAL_SIGNATURE);
-    return { found: flaw(header.name, 'damaged', { reason }), next };
+    // A header inside what it claims tells that the claim is wrong; it also keeps the work in proportion to the file.
+    const isApart = whole !== undefined && next >= whole.fromByte + whole.packedBytes;
+    const isProven = isApart && (await isSound(source, whole));
+    return { found: isProven ? { entry: whole } : flaw(header.name, 'damaged', { reason }), next };
   }
   return { found: bounded(whole) ?? { entry: whole }, next: end };
 }
@@ -143,11 +149,11 @@ async function endOfEntry(source: ByteSource, header: Header): Promise<number | 
   return signature === LOCAL_SIGNATURE || isClosing(signature) ? end : undefined;
 }
 
-/** The end where the next thing is damaged but this entry's own checksum holds. */
-async function provenEnd(source: ByteSource, header: Header): Promise<number | undefined> {
-  const end = header.fromByte + header.packedBytes;
-  if (end > source.sizeBytes || bounded(header) !== undefined) return undefined;
-  return unpackedBody(header, await packedBody(source, header)).ok ? end : undefined;
+/** Whether the checksum holds: then only what comes after it is damaged. */
+async function isSound(source: ByteSource, header: Header): Promise<boolean> {
+  const isInside = header.fromByte + header.packedBytes <= source.sizeBytes;
+  if (!isInside || bounded(header) !== undefined) return false;
+  return unpackedBody(header, await packedBody(source, header)).ok;
 }
 
 function bounded(header: Header): ZipFound | undefined {
@@ -161,9 +167,10 @@ function bounded(header: Header): ZipFound | undefined {
   return undefined;
 }
 
-/** Sizes that stand behind the body: the first trailing record that fits the distance it is at. */
+/** Sizes that stand behind the body: the first trailing record, before the next header, that fits the distance it is at. */
 async function sized(source: ByteSource, header: Header): Promise<Header | undefined> {
-  const last = Math.min(source.sizeBytes, header.fromByte + PACKET_RAW_LIMIT_BYTES);
+  const next = await searched(source, header.fromByte, LOCAL_SIGNATURE);
+  const last = Math.min(next, header.fromByte + PACKET_RAW_LIMIT_BYTES);
   for (let at = header.fromByte; at < last; at += 1) {
     at = await searched(source, at, DESCRIPTOR_SIGNATURE);
     if (at + DESCRIPTOR_BYTES > last) return undefined;

@@ -118,6 +118,27 @@ describe('examinePacket against hostile packets', () => {
     expect(examined.refused.map(({ problem }) => problem.code)).toEqual(['too-large']);
   });
 
+  it.each([
+    ['sizes that overlap', 0],
+    ['sizes said to follow', 0x0008],
+  ])('is done in good time with 20,000 headers of %s', async (_, flags) => {
+    const head = new Uint8Array(40);
+    const view = new DataView(head.buffer);
+    view.setUint32(0, 0x04034b50, true);
+    view.setUint16(6, flags, true);
+    view.setUint16(8, 8, true);
+    view.setUint32(18, flags === 0 ? 700_000 : 0, true);
+    view.setUint32(22, 100_000_000, true);
+    view.setUint16(26, 10, true);
+    head.set(new TextEncoder().encode('raw/0a.thr'), 30);
+    const bytes = joined(Array.from({ length: 20_000 }, () => head));
+    const startMs = performance.now();
+    const examined = await examine(bytes);
+    expect(examined.facts).toEqual([]);
+    // Work in proportion to the square of the headers would take minutes.
+    expect(performance.now() - startMs).toBeLessThan(15_000);
+  });
+
   it('refuses what unpacks to another length or checksum than it says', async () => {
     const honest = zipOf([[editName, text(edit)]]);
     const view = new DataView(honest.buffer);
