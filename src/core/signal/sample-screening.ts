@@ -12,6 +12,8 @@ const CHANCE_LIMIT_SHARE = 0.05;
  */
 const POLLED_SHARE = 0.05;
 const POLLED_EXCESS = 12;
+/** Of the equal neighbours of a polled sensor, at least this share lies on a passing slope: a true maximum or minimum is no hold. */
+const PASSING_SHARE = 0.1;
 /** Equal neighbours must be this much commoner after a short interval than after an ordinary one to be repeats, not chance. */
 const SHORT_EXCESS = 6;
 /** ... and beyond this share of the short intervals. */
@@ -41,7 +43,9 @@ export function screenSamples(recording: Pick<Recording, 'timeS' | 'acceleration
   const equal = (a: number, b: number): boolean => accelerationMps2.every((axis) => axis[a] === axis[b]);
   const chance = equalShare(rows, 2, equal);
   const isPolled =
-    chance < CHANCE_LIMIT_SHARE && equalShare(rows, 1, equal) > POLLED_SHARE + POLLED_EXCESS * chance;
+    chance < CHANCE_LIMIT_SHARE &&
+    equalShare(rows, 1, equal) > POLLED_SHARE + POLLED_EXCESS * chance &&
+    passingShare(rows, accelerationMps2, equal) > PASSING_SHARE;
   const limitS = SHORT_INTERVAL_SHARE * medianInterval(rows, timeS);
   const isShort = (r: number): boolean =>
     (timeS[rows[r] as number] as number) - (timeS[rows[r - 1] as number] as number) < limitS;
@@ -79,6 +83,27 @@ function equalShare(
     if (equal(rows[r] as number, rows[r - lag] as number)) same++;
   }
   return seen ? same / seen : 0;
+}
+
+/**
+ * Share of the equal neighbours that lie on a slope of some axis (lower before, higher after, or the reverse). A smooth motion
+ * has equal neighbours only about its turning points: a 10 Hz sine at 60 Hz makes a third of them. A hold falls anywhere.
+ */
+function passingShare(
+  rows: readonly number[],
+  axes: readonly Float32Array[],
+  equal: (a: number, b: number) => boolean,
+): number {
+  let same = 0;
+  let passing = 0;
+  for (let r = 2; r < rows.length - 1; r++) {
+    if (!equal(rows[r]!, rows[r - 1]!)) continue;
+    same++;
+    const passes = (axis: Float32Array): boolean =>
+      (axis[rows[r]!]! - axis[rows[r - 2]!]!) * (axis[rows[r + 1]!]! - axis[rows[r]!]!) > 0;
+    if (axes.some(passes)) passing++;
+  }
+  return same ? passing / same : 0;
 }
 
 function medianInterval(rows: readonly number[], timeS: Float64Array): number {

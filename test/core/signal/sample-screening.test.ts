@@ -64,4 +64,28 @@ describe('screenSamples', () => {
     });
     expect(screenSamples(moving).repeatCount).toBe(0);
   });
+
+  it.each([
+    [10, 60, 3],
+    [20, 60, 3],
+    [12.5, 50, 3],
+    [25, 100, 3],
+    [10, 60, 1],
+    [15, 60, 1],
+  ])(
+    'keeps all of a noise-free %d Hz sine at %d Hz (%d axes): equal neighbours at a turning point are no repeats',
+    (frequencyHz, rateHz, axisCount) => {
+      const timeS = Float64Array.from({ length: 20 * rateHz }, (_, k) => k / rateHz);
+      for (const phase of [0, Math.PI / 4, Math.PI / 2]) {
+        const sine = Float32Array.from(timeS, (t) => Math.sin(2 * Math.PI * frequencyHz * t + phase));
+        for (const step of [0, 0.01, 0.1]) {
+          const rounded = step ? sine.map((v) => step * Math.round(v / step)) : sine;
+          const accelerationMps2 = Array.from({ length: axisCount }, (_, a) =>
+            a ? new Float32Array(timeS.length).fill(9.8) : rounded,
+          );
+          expect(screenSamples({ timeS, accelerationMps2 }).repeatCount).toBe(0);
+        }
+      }
+    },
+  );
 });
