@@ -28,12 +28,14 @@ export interface PacketLine {
 
 /**
  * Every reading of a packet (or of a report with one inside), its samples checked against their hash and analysed again by
- * the settings it was made with, or by `settings` where they say more than "auto". Rejects when the file cannot be read.
+ * the settings it was made with, or by `settings` where they say more than "auto". Nothing for a file that is no packet; rejects when it cannot be read.
  */
 export async function* analysePacket(path: string, settings: AnalysisSettings): AsyncGenerator<PacketLine> {
   const { source, close } = await openPacket(path);
   try {
     const packet = await examinePacket(source);
+    // A page or archive of somebody else's: nothing to name in it.
+    if (packet.facts.length === 0 && packet.manifest === undefined && packet.refused.length <= 1) return;
     const readings = packet.facts.filter(({ fact, isKnown }) => fact.kind === 'reading' && isKnown);
     for (const reading of readings)
       yield { name: reading.fact._id, outcome: await redone(source, reading, settings) };

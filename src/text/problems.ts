@@ -18,6 +18,10 @@ const UNREADABLE: Readonly<Record<string, string>> = {
   'not-found': 'There is no file of this name.',
   'no-permission': 'This file may not be read: check its permissions.',
   directory: 'This is a folder, not a file.',
+  'no-such-file': 'There is no file of this name.',
+  'is-a-folder': 'This is a folder, not a file.',
+  'not-allowed': 'This file may not be read: check its permissions.',
+  'no-packet': 'This is no packet and carries none.',
 };
 
 function badHeader(facts: Facts): string {

@@ -3,7 +3,7 @@ export type CsvCell =
   { readonly text: string } | { readonly number: number | undefined } | { readonly word: string };
 
 /** What a spreadsheet may take for a formula at the head of a cell, full-width forms included (OWASP, CSV injection). */
-const FORMULA_HEAD = /^[\s\u0000-\u001f]*[=+\-@\uff1d\uff0b\uff0d\uff20\u2212]|^[\t\r\n]/;
+const FORMULA_HEAD = /^[\s\p{Cc}]*[=+\-@\uff1d\uff0b\uff0d\uff20\u2212]|^[\t\r\n]/u;
 
 /** Text a person typed, as a cell: an apostrophe in front of what could become a formula, always in quotes. */
 export function csvText(text: string): string {
