@@ -8,7 +8,7 @@ import { reportText as words } from '../../text/report.ts';
 import { headlinePair, headlineSentence, trustWord, verdictSentence } from '../../text/sentence.ts';
 import { SPECIALIST_HEADING } from '../../text/specialist.ts';
 import { html, type Html } from './html.ts';
-import { sentenceCase, table, verdictMark } from './report-parts.ts';
+import { sentenceCase, table, together, verdictMark } from './report-parts.ts';
 import { placeTitle, readingSheet } from './report-reading.ts';
 import { REPORT_CSS } from './report-style.ts';
 import { whenText } from './report-when.ts';
@@ -152,7 +152,7 @@ function shortRow(of: ReportReading, units: ReportUnits): Html {
     </div>
     <div>
       ${pair ? html`<span class="${pair.verdict}">${verdictMark(pair.verdict)}</span>` : undefined}
-      ${said.replace(/ Trust: \w+\.$/, '')}
+      ${together(said.replace(/ Trust: \w+\.$/, ''))}
       ${reading.practice ? html`<b>${words.practiceShort}</b>` : undefined}
     </div>
     <div class="trust">${words.trust[judgement.trust]}</div>

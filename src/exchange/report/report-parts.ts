@@ -76,3 +76,7 @@ export const titled = (title: string, body: Html | readonly Html[] | undefined):
 const LARGEST_SAID = 999;
 export const times = ([low, high]: readonly [number, number]): string =>
   readingText.pair.times(formatInterval([low, Math.min(high, LARGEST_SAID)]));
+
+/** A value, its unit and its ± stay on one line. */
+export const together = (said: string): string =>
+  said.replaceAll(/ (?=±|Hz|%|m\/s²|r\/min)|(?<=±) /g, '\u00a0');

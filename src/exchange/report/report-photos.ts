@@ -9,12 +9,16 @@ const MOST_PHOTOS = 4;
 const source = (jpeg: Uint8Array): string =>
   `data:image/jpeg;base64,${new TextDecoder().decode(base64Lines(jpeg)).replaceAll('\n', '')}`;
 
-export function photoFigures({ photos, names, label }: ReportReading): Html | undefined {
-  if (photos.length === 0) return undefined;
+/** Photos from `from` on, side by side; the first of a reading stands beside its ladder. */
+export function photoFigures(
+  { photos, names, label }: ReportReading,
+  from: number,
+  to: number,
+): Html | undefined {
   const where = names.spot ?? label ?? words.noSpot;
+  const shown = photos.slice(from, Math.min(to, MOST_PHOTOS));
+  if (shown.length === 0) return undefined;
   return html`<div class="photos">
-    ${photos
-      .slice(0, MOST_PHOTOS)
-      .map((jpeg, i) => html`<img src="${source(jpeg)}" alt="${words.photo(i + 1, where)}" />`)}
+    ${shown.map((jpeg, i) => html`<img src="${source(jpeg)}" alt="${words.photo(from + i + 1, where)}" />`)}
   </div>`;
 }

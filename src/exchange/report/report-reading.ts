@@ -17,7 +17,16 @@ import { wayOutName, wayOutSentence } from '../../text/ways-out.ts';
 import { html, type Html } from './html.ts';
 import { chartSvg } from './report-charts.ts';
 import { engineeringDetail } from './report-detail.ts';
-import { chartFigure, factRows, figure, sentenceCase, times, titled, verdictMark } from './report-parts.ts';
+import {
+  chartFigure,
+  factRows,
+  figure,
+  sentenceCase,
+  times,
+  titled,
+  together,
+  verdictMark,
+} from './report-parts.ts';
 import { photoFigures } from './report-photos.ts';
 import { whenText } from './report-when.ts';
 
@@ -29,8 +38,8 @@ export const readingSheet = (of: ReportReading, units: ReportUnits): Html => htm
       <div class="beside">${titled(words.found, found(of, units))} ${titled(words.doubts, doubts(of))}</div>
     </div>
     ${waysOut(of, units)} ${levels(of, units)}
-    ${of.notes ? titled(words.notes, html`<p class="typed">${of.notes}</p>`) : undefined} ${photoFigures(of)}
-    ${engineeringDetail(of, units)}
+    ${of.notes ? titled(words.notes, html`<p class="typed">${of.notes}</p>`) : undefined}
+    ${photoFigures(of, 1, Infinity)} ${engineeringDetail(of, units)}
   </article>
 `;
 
@@ -55,7 +64,9 @@ export function sentences(of: ReportReading, units: ReportUnits): Html {
   const pair = headlinePair(judgement.separations);
   // The mark says the verdict's word already.
   const driven = sourcesSentence(analysis, judgement)?.replace(/: \w+\.$/, '.');
-  return html`<p class="sentence">${headlineSentence(analysis, { frequencyUnit: units.frequency })}</p>
+  return html`<p class="sentence">
+      ${together(headlineSentence(analysis, { frequencyUnit: units.frequency }))}
+    </p>
     <p class="driven">
       ${
         pair

@@ -7,7 +7,7 @@ export const REPORT_CSS = `
 html{font:10.5pt/1.42 var(--font);color:var(--text);background:var(--paper);font-variant-numeric:tabular-nums;
   -webkit-print-color-adjust:exact;print-color-adjust:exact}
 body{max-inline-size:190mm;margin:0 auto;padding:10mm 6mm}
-.sheet{inline-size:100%;border-collapse:collapse}
+.sheet{inline-size:100%;border-collapse:collapse;table-layout:fixed}
 .sheet>tbody>tr>td,.sheet>tfoot>tr>td{padding:0;vertical-align:top}
 h1{font-size:25pt;line-height:1.1;letter-spacing:-.02em;font-weight:650;margin-block:1mm 2mm}
 h2{font-size:17pt;line-height:1.15;letter-spacing:-.012em;font-weight:650}
@@ -33,6 +33,7 @@ b.coincident,b.close,b.apart,b.undecided,b.blind,span.coincident,span.close,span
 .short li>div:first-child small{display:block;font-weight:400;color:var(--text-quiet);font-size:8.6pt}
 .short .trust{text-align:end;color:var(--text-quiet);font-size:9pt}
 .front h3{margin-block:5mm 1.5mm}
+.front .specialist h3{margin-block:0 1mm}
 .howto{font-size:9pt;break-inside:avoid;margin-block-start:5mm}
 .howto h3{margin-block-end:1.5mm}
 .howto>div{columns:2;column-gap:8mm}
@@ -61,7 +62,9 @@ figcaption{font-size:8.2pt;line-height:1.3;color:var(--text-quiet);margin-block-
 .levels li{padding-block:.8mm;border-block-end:.5pt solid var(--edge);break-inside:avoid}
 .typed{white-space:pre-wrap;overflow-wrap:anywhere}
 .photos{display:flex;flex-wrap:wrap;gap:3mm;margin-block-start:4mm}
-.photos img{max-inline-size:86mm;max-block-size:62mm;break-inside:avoid;border:.5pt solid var(--edge)}
+.photos img{max-inline-size:min(86mm,100%);max-block-size:58mm;break-inside:avoid;border:.5pt solid var(--edge)}
+.beside .photos{margin-block-start:0}
+.photos+.part,.two .photos+.part:first-child{margin-block-start:3mm}
 .detail{margin-block-start:6mm;border-block-start:.6pt solid var(--text);padding-block-start:2mm}
 .detail>h3{break-after:avoid}
 h4,h5{break-after:avoid}
