@@ -15,6 +15,9 @@ import { browserEnvironment, type StoreEnvironment } from './store-environment.t
 
 export type Store = StorePort & JournalPort & { close(): void };
 
+/** The first screen is drawn meanwhile: working out the facts' schemas takes a slow phone 0.1 s, ms. */
+const FACTS_WAIT_MS = 400;
+
 export interface StoreOptions {
   readonly name?: string;
   readonly environment?: StoreEnvironment;
@@ -46,8 +49,8 @@ export async function openStore(options: StoreOptions = {}): Promise<Store> {
     tell('facts');
   });
 
-  // Now, not at the first save: an update of the app may take the old files away in between.
-  void part().catch(() => {});
+  // Soon, not at the first save: an update of the app may take the old files away in between.
+  setTimeout(() => void part().catch(() => {}), FACTS_WAIT_MS);
 
   /** What follows every change of facts, here and in the other tabs. */
   const changed = async <T>(work: (facts: FactPart) => Promise<T>): Promise<T> => {
