@@ -152,7 +152,8 @@ describe('capture in Chromium', () => {
     const done = await until(['done', 'cut']);
     expect(done.phase).toBe('done');
     expect(done.sensor).toMatchObject({ source: 'accelerometer', gravityReads: 'up', requestedRateHz: 60 });
-    expect(done.sampleCount).toBeGreaterThan(85);
+    // About 60 a second on an idle machine; a busy one delivers fewer, which is not this test's matter.
+    expect(done.sampleCount).toBeGreaterThan(50);
     expect(done.durationS).toBeGreaterThan(1.7);
     expect(done.steps.length).toBeLessThan(6);
   });
@@ -165,7 +166,8 @@ describe('capture in Chromium', () => {
     await start();
     const done = await until(['done', 'cut']);
     expect(done.sensor).toMatchObject({ source: 'devicemotion', claimedIntervalMs: 16 });
-    expect(done.sampleCount).toBeGreaterThan(85);
+    // About 60 a second on an idle machine; a busy one delivers fewer, which is not this test's matter.
+    expect(done.sampleCount).toBeGreaterThan(50);
   });
 
   it('says "no sensor" by each path: an error of the Generic Sensor, one event of nulls', async () => {
