@@ -4,25 +4,32 @@ import { readFileSync } from 'node:fs';
 const page = readFileSync(new URL('dist/index.html', import.meta.url), 'utf8');
 const named = [...page.matchAll(/(?:src|href)="\.\/(assets\/[^"]+)"/g)].map((match) => `dist/${match[1]}`);
 
-// Limits and what became of the first ones: DEVELOPERS.md, "Budgets".
+// What is reached, plus 2 % or so; the first limits and what became of them: DEVELOPERS.md, "Budgets".
 export default [
   {
     name: 'JavaScript before first use',
     path: named.filter((path) => path.endsWith('.js')),
-    limit: '60 kB',
+    limit: '50 kB',
     gzip: true,
   },
   {
     name: 'Everything before first use',
     path: ['dist/index.html', ...named, 'dist/manifest.webmanifest', 'dist/icon.svg'],
-    limit: '70 kB',
+    limit: '57 kB',
     gzip: true,
   },
-  { name: 'All JavaScript', path: ['dist/assets/*.js', 'dist/sw.js'], limit: '240 kB', gzip: true },
+  { name: 'All JavaScript', path: ['dist/assets/*.js', 'dist/sw.js'], limit: '265 kB', gzip: true },
   {
     name: 'Everything kept for offline',
-    path: ['dist/index.html', 'dist/assets/*', 'dist/sw.js', 'dist/*.{svg,txt,webmanifest}'],
-    limit: '270 kB',
+    path: [
+      'dist/index.html',
+      'dist/assets/*',
+      'dist/sw.js',
+      'dist/*.{svg,txt,webmanifest}',
+      'dist/rescue.*',
+      'dist/help/*',
+    ],
+    limit: '284 kB',
     gzip: true,
   },
 ];
