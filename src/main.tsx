@@ -12,6 +12,7 @@ import { ANALYSIS_VERSION } from './core/model/analysis.ts';
 import { openStore } from './store/open-store.ts';
 import { problemSentence } from './text/problems.ts';
 import { screenText } from './text/screens.ts';
+import { paperTokens } from './ui/paper-tokens.ts';
 import { Root } from './ui/root.tsx';
 import { StartFailed } from './ui/start-failed.tsx';
 import { applyRememberedTheme } from './ui/theme.ts';
@@ -54,11 +55,8 @@ async function assemble(place: HTMLElement): Promise<void> {
       return createTeamStore(store);
     },
     exchange: async () => {
-      const [{ createExchange }, { default: tokensCss }] = await Promise.all([
-        import('./exchange/create-exchange.ts'),
-        import('./ui/styles/tokens.css?raw'),
-      ]);
-      return createExchange({ store, about, tokensCss, now: () => new Date() });
+      const { createExchange } = await import('./exchange/create-exchange.ts');
+      return createExchange({ store, about, now: () => new Date(), tokensCss: paperTokens });
     },
     problemSentence,
     environment: {

@@ -14,6 +14,7 @@ import { canShareFile, shareFile } from './hand/share-file.ts';
 import { readingsTableParts, writePacket } from './packet/write-packet.ts';
 import { previewPacket } from './receive/preview-packet.ts';
 import { chartSvg } from './report/report-charts.ts';
+import { REPORT_TOKENS } from './report/report-style.ts';
 import { listPage, PAGE_END, reportPage, type ReportFrame } from './report/report-page.ts';
 
 const HTML_TYPE = 'text/html';
@@ -21,7 +22,7 @@ const CSV_TYPE = 'text/csv';
 
 export function createExchange(parts: ExchangeParts): ExchangePort {
   const frame = (isPacket: boolean): ReportFrame => ({
-    tokensCss: parts.tokensCss,
+    tokensCss: parts.tokensCss(REPORT_TOKENS),
     madeAt: parts.now().toISOString(),
     timeZone: Intl.DateTimeFormat().resolvedOptions().timeZone,
     about: parts.about,

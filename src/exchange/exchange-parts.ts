@@ -5,6 +5,6 @@ export interface ExchangeParts {
   readonly store: Pick<StorePort, 'facts' | 'fact' | 'putFacts' | 'rawOf' | 'storedRawOf'>;
   readonly about: { readonly version: string; readonly commit: string; readonly analysisVersion: number };
   readonly now: () => Date;
-  /** Style sheet with the tokens of the screens: a report has the same paper and ink. */
-  readonly tokensCss: string;
+  /** The named tokens of the screens as a style sheet: a report has the same paper and ink. */
+  readonly tokensCss: (names: readonly string[]) => string;
 }

@@ -14,7 +14,7 @@ export const exchangeOf = (store: Store): ExchangePort =>
   createExchange({
     store,
     about: { version: '0.1.0', commit: 'abc', analysisVersion: 1 },
-    tokensCss: ':root{--paper:Canvas}',
+    tokensCss: (names) => `:root{${names.map((name) => `${name}:Canvas`).join(';')}}`,
     now: () => new Date('2026-03-02T08:00:00.000Z'),
   });
 

@@ -61,7 +61,7 @@ export function listPage(rows: readonly TableReading[], frame: ReportFrame): str
 }
 
 function page(title: string, body: Html, cautions: readonly string[], frame: ReportFrame): string {
-  const style = `${frame.tokensCss.replaceAll(/\/\*[\s\S]*?\*\//g, '')}${REPORT_CSS}`.replaceAll('<', '');
+  const style = `${frame.tokensCss}${REPORT_CSS}`.replaceAll('<', '');
   return html`<!doctype html>
     <html lang="en" data-theme="light">
       <head>

@@ -94,3 +94,8 @@ h4,h5{break-after:avoid}
   .numbers th,.numbers td{overflow-wrap:normal}
 }
 `;
+
+/** Tokens that the style sheet uses. */
+export const REPORT_TOKENS: readonly string[] = [
+  ...new Set([...REPORT_CSS.matchAll(/var\((--[a-z-]+)\)/g)].map(([, name]) => name!)),
+];
