@@ -15,7 +15,7 @@ const opened = async (): Promise<Store> => (store ??= await openStore());
 
 /** About 100 kB packed: samples with 18 random bits, as a fine sensor gives them. */
 function largeRecording(seed: number) {
-  const recording = sampleRecording(10_800);
+  const recording = sampleRecording(7_900);
   const state = new Uint32Array(1);
   crypto.getRandomValues(state);
   for (const axis of recording.accelerationMps2) {

@@ -25,7 +25,11 @@ const database = () => new Memory(`team${generation}`);
 await database().info();
 
 const counts = { calls: 0, uploads: 0, bytesIn: 0 };
-let cutAfterBytes = Infinity;
+/** Bytes until something happens, and what: everything dies, or new calls are held until `listen`. */
+let bytesLeft = Infinity;
+let then = 'cut';
+let gate = Promise.resolve();
+let release = () => {};
 
 const server = createServer((request, response) => {
   response.setHeader('Access-Control-Allow-Origin', request.headers.origin ?? '*');
@@ -45,7 +49,9 @@ const server = createServer((request, response) => {
   }
   countBytes(request);
   request.url = request.url?.replace(/^\/team/, `/team${generation}`);
-  app(request, response);
+  void gate.then(() => {
+    if (!request.destroyed) app(request, response);
+  });
 });
 
 /** Looks on as the app reads: a listener of our own would start the stream too early. */
@@ -54,8 +60,8 @@ function countBytes(request) {
   request.emit = (name, ...values) => {
     if (name === 'data') {
       counts.bytesIn += values[0].length;
-      cutAfterBytes -= values[0].length;
-      if (cutAfterBytes <= 0) cut();
+      bytesLeft -= values[0].length;
+      if (bytesLeft <= 0) reached();
     }
     return emit(name, ...values);
   };
@@ -64,24 +70,31 @@ function countBytes(request) {
 let port = 0;
 const listen = () =>
   new Promise((resolve) => {
+    release();
     if (server.listening) return resolve(undefined);
     server.listen(port, '127.0.0.1', () => {
       port = server.address().port;
       resolve(undefined);
     });
   });
+function reached() {
+  bytesLeft = Infinity;
+  if (then === 'cut') cut();
+  else gate = new Promise((resolve) => (release = () => resolve(undefined)));
+  process.send?.({ event: 'reached' });
+}
 function cut() {
-  cutAfterBytes = Infinity;
   server.close();
   server.closeAllConnections();
-  process.send?.({ event: 'cut' });
 }
 
 process.on('message', async ({ id, ask, value }) => {
   const answers = {
     listen: async () => (await listen(), { port }),
     cut: async () => cut(),
-    cutAfter: async () => void (cutAfterBytes = value),
+    watch: async () => {
+      ({ then, bytes: bytesLeft } = value);
+    },
     counts: async () => ({ ...counts }),
     documents: async () => {
       const { rows } = await database().allDocs({ include_docs: true, conflicts: true });

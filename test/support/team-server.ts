@@ -17,7 +17,9 @@ export interface TeamServer {
   cut(): Promise<void>;
   /** The same in the middle of an upload, once so many more bytes have come. Resolves when it has happened. */
   cutAfter(bytes: number): Promise<void>;
-  /** Listens again, on the same port. */
+  /** Once so many more bytes have come, new calls wait until `listen`: what was going on cannot end meanwhile. */
+  holdAfter(bytes: number): Promise<void>;
+  /** Listens again, on the same port; lets go what was held. */
   listen(): Promise<void>;
   counts(): Promise<{ readonly calls: number; readonly uploads: number; readonly bytesIn: number }>;
   documents(): Promise<readonly ServedDocument[]>;
@@ -58,16 +60,18 @@ export async function startTeamServer(): Promise<TeamServer> {
     child.send({ id, ask: name, value });
     return (await answered).answer as T;
   };
+  const reached = async (bytes: number, then: 'cut' | 'hold'): Promise<void> => {
+    const happened = next(({ event }) => event === 'reached');
+    await ask('watch', { bytes, then });
+    await happened;
+  };
   await next(({ event }) => event === 'ready');
   const { port } = await ask<{ port: number }>('listen');
   return {
     account: { url: `http://127.0.0.1:${port}/team`, user: 'works', password: 'päss:word' },
     cut: () => ask('cut'),
-    async cutAfter(bytes) {
-      const happened = next(({ event }) => event === 'cut');
-      await ask('cutAfter', bytes);
-      await happened;
-    },
+    cutAfter: (bytes) => reached(bytes, 'cut'),
+    holdAfter: (bytes) => reached(bytes, 'hold'),
     listen: async () => void (await ask('listen')),
     counts: () => ask('counts'),
     documents: () => ask('documents'),
