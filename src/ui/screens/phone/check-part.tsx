@@ -20,7 +20,10 @@ export function CheckPart({ app }: { readonly app: App }) {
   const [runs, setRuns] = useState(0);
   const [isRunning, setIsRunning] = useState(false);
   const [problem, setProblem] = useState<Problem>();
+  const [thrown, setThrown] = useState<{ readonly error: unknown }>();
   const check = useLoaded(app.store, () => app.phone.lastCheck(), [runs]);
+  // The boundary tells it and keeps it in the error log.
+  if (thrown) throw thrown.error;
   const run = async () => {
     setIsRunning(true);
     setProblem(undefined);
@@ -44,7 +47,11 @@ export function CheckPart({ app }: { readonly app: App }) {
         {!check && !isRunning && !problem && <p class="quiet">{text.never}</p>}
       </div>
       <BottomBar>
-        <Button kind="main" disabled={isRunning} onClick={() => void run()}>
+        <Button
+          kind="main"
+          disabled={isRunning}
+          onClick={() => run().catch((error: unknown) => setThrown({ error }))}
+        >
           {check ? text.again : text.start}
         </Button>
       </BottomBar>
