@@ -242,11 +242,6 @@ const english = {
       },
     },
   },
-  handOver: {
-    receive: 'Receive',
-    receiveNote:
-      'A recording (CSV or TSV) becomes a reading of its own. You can also drop the file anywhere on the page.',
-  },
   phone: {
     theme: 'Theme',
     themes: { auto: 'As the phone', light: 'Light', dark: 'Dark', sunlight: 'Sunlight' },

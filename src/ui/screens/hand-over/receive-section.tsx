@@ -18,11 +18,11 @@ const ACCEPT =
 export function ReceiveSection({ app }: { readonly app: App }) {
   const incoming = useLive(app.handOver.incoming);
   const section = useRef<HTMLElement>(null);
-  const isBusy = incoming.phase !== 'idle';
+  const { phase } = incoming;
   // A file dropped anywhere, or opened by the system: what becomes of it must be in sight.
   useEffect(() => {
-    if (isBusy) section.current?.scrollIntoView({ block: 'nearest' });
-  }, [isBusy]);
+    if (phase !== 'idle') section.current?.scrollIntoView({ block: 'start' });
+  }, [phase]);
   return (
     <section class="stack" ref={section}>
       <h2>{text.receive}</h2>
