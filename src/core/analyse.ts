@@ -1,7 +1,7 @@
 import { ANALYSIS_VERSION } from './model/analysis.ts';
 import type { Analysis, AnalysisSettings, Procedure } from './model/analysis.ts';
 import type { Doubt } from './model/doubt.ts';
-import { success } from './model/outcome.ts';
+import { failure, success } from './model/outcome.ts';
 import type { Outcome } from './model/outcome.ts';
 import type { AnalysisResult } from './model/pictures.ts';
 import type { Recording } from './model/recording.ts';
@@ -12,7 +12,7 @@ import type { ProcedureAnswer } from './modes/procedure-answer.ts';
 import { recordingDoubts } from './modes/recording-doubts.ts';
 import { runningProcedure } from './modes/running-procedure.ts';
 import { tapProcedure } from './modes/tap/tap-procedure.ts';
-import { recogniseProcedure } from './modes/recognise-procedure.ts';
+import { isAtRest, otherProcedure, recogniseProcedure } from './modes/recognise-procedure.ts';
 import { roundedForKeeping } from './modes/rounded-for-keeping.ts';
 import { conditionRecording } from './signal/condition-recording.ts';
 import type { ConditionedSignal } from './signal/condition-recording.ts';
@@ -34,7 +34,11 @@ export function analyse(recording: Recording, settings: AnalysisSettings): Outco
   const procedure: Procedure =
     settings.procedure === 'auto' ? recogniseProcedure(signal) : settings.procedure;
   const answer = PROCEDURES[procedure](signal, settings);
-  if (!answer.ok) return answer;
+  // Which of the four would have found nothing says little when nobody asked for it and nothing moved.
+  if (!answer.ok)
+    return settings.procedure === 'auto' && isAtRest(signal)
+      ? failure('no-motion', { durationS: signal.facts.durationS })
+      : answer;
   return success(resultOf(signal, settings, procedure, answer.value));
 }
 
@@ -56,6 +60,7 @@ function resultOf(
   const doubts = eachOnce([
     ...answer.doubts,
     ...recordingDoubts(signal, modes, procedure === 'tap' ? [] : tones),
+    ...procedureDoubts(signal, settings),
   ]);
   const analysis: Analysis = {
     version: ANALYSIS_VERSION,
@@ -81,6 +86,12 @@ function resultOf(
       ...(pass === undefined ? {} : { pass }),
     },
   };
+}
+
+/** Only what a person chose can be the wrong choice. */
+function procedureDoubts(signal: ConditionedSignal, { procedure }: AnalysisSettings): Doubt[] {
+  const other = procedure === 'auto' ? undefined : otherProcedure(signal, procedure);
+  return other === undefined ? [] : [{ code: 'other-procedure', facts: { procedure: other } }];
 }
 
 /** A code stands once, with the figures of whoever said it first (the procedure before the recording). */

@@ -168,6 +168,12 @@ const DOUBTS: Readonly<Record<DoubtCode, DoubtText>> = {
       'This mode was read from random motion of a running machine; a broad hump of the machine can look the same.',
     remedy: 'Stop the machine if that is safe and allowed, and tap, or take an ambient reading.',
   },
+  'other-procedure': {
+    name: 'Fits another procedure',
+    meaning:
+      'The record looks like one taken with another of the four procedures; the numbers may rest on the wrong model.',
+    remedy: 'Analyse it again with the procedure named here, or with the choice left to the program.',
+  },
   practice: {
     name: 'Practice',
     meaning: 'Made with the practice rig, not measured on a structure.',
@@ -186,10 +192,19 @@ const FIGURES: Readonly<Partial<Record<string, (value: number) => string>>> = {
   stepMps2: (value) => `step ${formatNumber(value, 2)} m/s²`,
 };
 
+/** Which procedure the record looks like. */
+const LOOKS_LIKE: Readonly<Record<string, string>> = {
+  tap: 'looks like taps',
+  running: 'looks like a running machine',
+  ambient: 'looks like ambient shaking',
+  coastdown: 'looks like a run-down',
+};
+
 /** Name, meaning and remedy of a doubt, with its figures where it has them. */
 export function doubtText(doubt: Doubt | DoubtCode): DoubtText {
   const { code, facts = {} } = typeof doubt === 'string' ? { code: doubt } : doubt;
   const figures = Object.entries(facts).flatMap(([key, value]) => {
+    if (key === 'procedure') return LOOKS_LIKE[value] ?? [];
     const say = FIGURES[key];
     return say && typeof value === 'number' ? [say(value)] : [];
   });

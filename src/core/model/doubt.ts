@@ -31,6 +31,7 @@ export const DOUBT_CODES = [
   'half-power-refused',
   'one-decay-close-modes',
   'running-resonance',
+  'other-procedure',
   'practice',
 ] as const;
 export type DoubtCode = (typeof DOUBT_CODES)[number];

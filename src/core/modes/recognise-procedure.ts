@@ -1,2 +1,2 @@
-/** Procedure `auto`: which of the four a record is. */
-export { recogniseProcedure } from './recognise/recognise-procedure.ts';
+/** Procedure `auto`: which of the four a record is, and whether the one asked for fits. */
+export { isAtRest, otherProcedure, recogniseProcedure } from './recognise/recognise-procedure.ts';

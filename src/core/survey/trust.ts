@@ -36,6 +36,7 @@ export const DOUBT_WEIGHTS: Readonly<Record<DoubtCode, DoubtWeight>> = {
   interrupted: 'slight',
   stalled: 'slight',
   'running-resonance': 'moderate',
+  'other-procedure': 'moderate',
   'mounting-unknown': 'slight',
   'half-power-refused': 'none',
   practice: 'none',

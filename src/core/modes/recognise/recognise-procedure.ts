@@ -39,6 +39,32 @@ export function recogniseProcedure(conditioned: ConditionedSignal): Procedure {
   return strongestIsLine(conditioned) ? 'running' : 'ambient';
 }
 
+/**
+ * Which procedure a record was plainly taken with, where it is another than the one asked for: struck records taken as
+ * running or ambient, records without a blow taken as taps, run-downs taken as steady. Undefined where nothing speaks against it.
+ */
+export function otherProcedure(conditioned: ConditionedSignal, asked: Procedure): Procedure | undefined {
+  // A coast-down asks for a falling line itself and refuses records without.
+  if (asked === 'coastdown') return undefined;
+  if (asked !== 'tap' && isStruck(conditioned)) return 'tap';
+  if (asked === 'tap' && isStruck(conditioned)) return undefined;
+  if (isRunningDown(conditioned)) return 'coastdown';
+  if (asked !== 'tap') return undefined;
+  return strongestIsLine(conditioned) ? 'running' : 'ambient';
+}
+
+/** Variance over that of the sensor's own noise, as it stands between a tenth and 0.42 of the rate, up to which nothing moved. */
+const REST_VARIANCE_RATIO = 1.5;
+
+/** Nothing but the sensor's own noise on any axis. Misleads where broad-band shaking fills the whole band evenly. */
+export function isAtRest(conditioned: ConditionedSignal): boolean {
+  const { facts, accelerationMps2 } = conditioned;
+  return accelerationMps2.every((axis, a) => {
+    const variance = axis.reduce((sum, v) => sum + v * v, 0) / axis.length;
+    return variance <= (REST_VARIANCE_RATIO * facts.noiseMps2PerRootHz[a]! ** 2 * facts.rateHz) / 2;
+  });
+}
+
 function lookedAt(conditioned: ConditionedSignal): Float64Array[] {
   const { grid } = conditioned;
   const most = Math.round(LOOKED_AT_S / grid.periodS);

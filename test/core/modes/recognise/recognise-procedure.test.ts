@@ -1,11 +1,14 @@
 import { describe, expect, it } from 'vitest';
 import { analyse } from '../../../../src/core/analyse.ts';
+import { PROCEDURES } from '../../../../src/core/model/analysis.ts';
+import type { Procedure } from '../../../../src/core/model/analysis.ts';
 import type { Recording } from '../../../../src/core/model/recording.ts';
 import { recogniseProcedure } from '../../../../src/core/modes/recognise-procedure.ts';
 import { withoutSteadyLines } from '../../../../src/core/modes/recognise/without-steady-lines.ts';
 import { conditionRecording } from '../../../../src/core/signal/condition-recording.ts';
 import { generateCase } from '../../../support/cases/generate-case.ts';
 import { seededRandom } from '../../../support/cases/random.ts';
+import { steadyRecording, still } from '../../../support/steady-recording.ts';
 import { simpleRecording } from '../../../support/simple-recording.ts';
 
 function recognised(recording: Recording): string {
@@ -50,6 +53,54 @@ describe('recogniseProcedure', () => {
       'person',
     ]);
     expect(auto.value.analysis.modes).toEqual(named.value.analysis.modes);
+  });
+});
+
+const doubtOf = (recording: Recording, procedure: Procedure): unknown => {
+  const outcome = analyse(recording, { procedure, timing: 'auto' });
+  return outcome.ok
+    ? outcome.value.analysis.doubts.find((doubt) => doubt.code === 'other-procedure')?.facts
+    : outcome.problem.code;
+};
+
+describe('a procedure that does not fit', () => {
+  it.each([
+    ['A2', 'running', 'tap'],
+    ['A2', 'ambient', 'tap'],
+    ['D', 'running', 'coastdown'],
+    ['D', 'ambient', 'coastdown'],
+  ] as const)('is said with the one that does: %s taken as %s', (kind, chosen, fitting) => {
+    const said = doubtOf(generateCase(kind, 23, 0).recording, chosen);
+    expect(said).toEqual({ procedure: fitting });
+  });
+
+  it('is refused where it finds nothing of its own: run-down in a steady record', () => {
+    expect(doubtOf(generateCase('TWIN', 23, 0).recording, 'coastdown')).toBe('no-pass');
+  });
+
+  it.each([
+    ['A2', 'tap'],
+    ['C', 'running'],
+    ['B', 'ambient'],
+    ['D', 'coastdown'],
+  ] as const)('is not said of %s taken as %s', (kind, chosen) => {
+    expect(doubtOf(generateCase(kind, 23, 1).recording, chosen)).toBeUndefined();
+  });
+});
+
+describe('a phone at rest', () => {
+  it.each([
+    [0.01, 0],
+    [0.02, 0.1],
+    [0.004, 0.1],
+    [0.03, 0.01],
+  ])('is answered by one refusal and no mode (noise %d, step %d)', (noiseMps2, stepMps2) => {
+    const recording = steadyRecording(still, { noiseMps2, stepMps2, jitterS: 0.001 });
+    expect(analyse(recording, { procedure: 'auto', timing: 'auto' })).toMatchObject({
+      problem: { code: 'no-motion' },
+    });
+    const codes = PROCEDURES.map((procedure) => doubtOf(recording, procedure));
+    expect(codes).toEqual(['no-taps', 'no-tone', 'no-mode', 'no-pass']);
   });
 });
 
