@@ -70,6 +70,14 @@ describe('reportPage', () => {
     expect(text).toContain('analysis version 1');
   });
 
+  it('prints the first photos, the first beside the ladder', () => {
+    const jpeg = (last: number) => new Uint8Array([0xff, 0xd8, 0xff, last]);
+    const text = page(reportReading(stair!, { photos: [1, 2, 3, 4, 5].map(jpeg) }));
+    const shown = [...text.matchAll(/<img\s+src="data:image\/jpeg;base64,([^"]*)"/g)].map(([, data]) => data);
+    expect(shown).toEqual([1, 2, 3, 4].map((last) => Buffer.from(jpeg(last)).toString('base64')));
+    expect(text.indexOf(shown[0]!)).toBeLessThan(text.indexOf('What was found'));
+  });
+
   it('loads and runs nothing', () => {
     const text = page(...allReadings);
     expect(text).not.toMatch(

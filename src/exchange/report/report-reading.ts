@@ -35,7 +35,9 @@ export const readingSheet = (of: ReportReading, units: ReportUnits): Html => htm
     ${sheetHead(of)} ${sentences(of, units)} ${specialist(of)}
     <div class="two">
       ${chartFigure(chartSvg(of, units, 'ladder'), words.ladder, words.ladderNote, 'ladder')}
-      <div class="beside">${titled(words.found, found(of, units))} ${titled(words.doubts, doubts(of))}</div>
+      <div class="beside">
+        ${photoFigures(of, 0, 1)} ${titled(words.found, found(of, units))} ${titled(words.doubts, doubts(of))}
+      </div>
     </div>
     ${waysOut(of, units)} ${levels(of, units)}
     ${of.notes ? titled(words.notes, html`<p class="typed">${of.notes}</p>`) : undefined}

@@ -60,6 +60,7 @@ figcaption{font-size:8.2pt;line-height:1.3;color:var(--text-quiet);margin-block-
 .hard{color:var(--text-quiet)}
 .levels{font-size:9.4pt;margin-block-start:1.5mm}
 .levels li{padding-block:.8mm;border-block-end:.5pt solid var(--edge);break-inside:avoid}
+.part>.quiet{font-size:9pt}
 .typed{white-space:pre-wrap;overflow-wrap:anywhere}
 .photos{display:flex;flex-wrap:wrap;gap:3mm;margin-block-start:4mm}
 .photos img{max-inline-size:min(86mm,100%);max-block-size:58mm;break-inside:avoid;border:.5pt solid var(--edge)}
