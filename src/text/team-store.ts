@@ -6,9 +6,10 @@ import type {
   TeamStoreProgress,
   TeamStoreReport,
 } from '../core/model/team-store.ts';
-import { formatNumber } from './number.ts';
 
-const things = (count: number) => (count === 1 ? '1 entry' : `${formatNumber(count, 6)} entries`);
+/** A count with its thousands apart. */
+const counted = (count: number) => String(count).replace(/\B(?=(?:\d{3})+$)/g, ',');
+const things = (count: number) => (count === 1 ? '1 entry' : `${counted(count)} entries`);
 
 /** What happened, and what to do about it. */
 export const teamStoreProblems: Readonly<Record<TeamStoreProblem, string>> = {
@@ -77,14 +78,10 @@ const english = {
   waitingCount: things,
   asUser: (user: string) => `as ${user}`,
   progress: ({ step, doneCount, totalCount }: TeamStoreProgress) =>
-    totalCount === 0
-      ? 'Comparing…'
-      : `${steps[step]}: ${formatNumber(doneCount, 6)} of ${formatNumber(totalCount, 6)}`,
+    totalCount === 0 ? 'Comparing…' : `${steps[step]}: ${counted(doneCount)} of ${counted(totalCount)}`,
   report: ({ sentCount, fetchedCount, end }: TeamStoreReport) => {
     const moved =
-      sentCount + fetchedCount === 0
-        ? ''
-        : `${formatNumber(sentCount, 6)} sent, ${formatNumber(fetchedCount, 6)} fetched.`;
+      sentCount + fetchedCount === 0 ? '' : `${counted(sentCount)} sent, ${counted(fetchedCount)} fetched.`;
     if (end === 'done') return moved === '' ? 'Both sides have the same.' : `Complete: ${moved}`;
     if (end === 'cancelled') return `Stopped. ${moved} What is left goes next time.`.replace('  ', ' ');
     return `${teamStoreProblems[end]} ${moved}`.trim();

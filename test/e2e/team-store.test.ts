@@ -1,7 +1,12 @@
+import { AxeBuilder } from '@axe-core/playwright';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { seededChance } from '../../src/capture/seeded-chance.ts';
+import { createTeamStore } from '../../src/exchange/team-store/create-team-store.ts';
+import type { Store } from '../../src/store/open-store.ts';
 import { takePracticeReading } from '../support/app-steps.ts';
 import { launchBrowser, serveApp, type ServedApp, type TestBrowser } from '../support/browser.ts';
+import { nodeEnvironment } from '../support/team-environment.ts';
+import { newPhone } from '../support/team-phone.ts';
 import { startTeamServer, type TeamServer } from '../support/team-server.ts';
 import { pushUnderCuts } from '../support/team-trial.ts';
 
@@ -76,6 +81,39 @@ describe('team store in the whole built app', () => {
     expect(other.faults).toEqual([]);
   });
 
+  it('shows what two people wrote at once side by side; the choice of one settles it for all', async () => {
+    const environment = nodeEnvironment({ stallMs: 10_000 });
+    const replicate = (store: Store) =>
+      createTeamStore(store, environment).replicate(server.account, {
+        signal: new AbortController().signal,
+        onProgress: () => {},
+      });
+    const phones = [await newPhone({ clockMs: -3_600_000 }), await newPhone()];
+    for (const phone of phones) await replicate(phone);
+    const reading = (await phones[0]!.listReadings())[0]!.id;
+    await phones[0]!.edit(reading, { notes: 'Loose at the foot.' });
+    await phones[1]!.edit(reading, { notes: 'Tightened. Take again.' });
+    for (const phone of phones) await replicate(phone);
+
+    const { page } = other;
+    await page.goto(`${app.url}#/hand-over`);
+    await page.getByRole('button', { name: 'Send and fetch' }).click();
+    await page.getByRole('heading', { name: 'One entry was written twice' }).waitFor();
+    await page.getByText('Loose at the foot.').waitFor();
+    const { violations } = await new AxeBuilder({ page }).setLegacyMode().analyze();
+    expect(violations.map(({ id, nodes }) => `${id}: ${nodes[0]?.html}`)).toEqual([]);
+    await page.getByRole('button', { name: 'Keep Tightened. Take again.' }).click();
+    await page.getByRole('heading', { name: 'One entry was written twice' }).waitFor({ state: 'detached' });
+    await page.getByRole('button', { name: 'Send and fetch' }).click();
+    await page.getByText('Complete: 1 sent, 0 fetched.').waitFor();
+    for (const phone of phones) {
+      await replicate(phone);
+      const entity = await phone.entity(reading);
+      expect(entity?.conflicts).toEqual({});
+      expect(entity?.fields['notes']).toBe('Tightened. Take again.');
+    }
+  });
+
   it('asks again for a password that was not to be kept, and forgets the account on request', async () => {
     const { page } = one;
     await page.goto(`${app.url}#/hand-over`);
@@ -96,7 +134,7 @@ describe('team store in the whole built app', () => {
     await page.getByLabel('Password', { exact: true }).fill(server.account.password);
     await page.getByRole('button', { name: 'Sign in' }).click();
     await page.getByRole('button', { name: 'Send and fetch' }).click();
-    await page.getByText('Both sides have the same.').waitFor();
+    await page.getByText('Complete: 0 sent, 3 fetched.').waitFor();
     await page.getByText('Account and checks').click();
     await page.getByRole('button', { name: 'Forget this team store' }).click();
     await page.getByRole('button', { name: 'Set up a team store' }).waitFor();

@@ -7,6 +7,7 @@ import { useLive } from '../../use-live.ts';
 import { ConflictSection } from './conflict-section.tsx';
 import { TeamAccountForm } from './team-account-form.tsx';
 import { TeamStandingCard } from './team-standing-card.tsx';
+import styles from './team-store.module.css';
 
 /** The team's own database server, for teams that outgrow one laptop; and what two people wrote at once. */
 export function TeamStoreSection({ app }: { readonly app: App }) {
@@ -59,7 +60,7 @@ function Team({ app, team }: { readonly app: App; readonly team: TeamStore }) {
         <TeamStandingCard app={app} team={team} onChangeAccount={() => setEditing(true)} />
       )}
       <p>
-        <a href="./help/team-store.html" target="_blank" rel="noopener">
+        <a class={styles.link} href="./help/team-store.html" target="_blank" rel="noopener">
           {text.administrator}
         </a>
       </p>
