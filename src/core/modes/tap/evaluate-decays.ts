@@ -4,11 +4,18 @@ import type { Component, DecaySignal, Segment } from './decay-model.ts';
 import { segmentMoments } from './segment-moments.ts';
 import type { Moments } from './segment-moments.ts';
 
-export interface SegmentFit {
+/** One segment's part of the fit, samples of unit variance. */
+interface SegmentProducts {
   /** Amplitudes, linear column after linear column, per axis. */
   readonly coefficients: readonly Float64Array[];
   /** Residual sum of squares per axis, (m/s²)². */
   readonly rss: Float64Array;
+  /** Curvature and gradient per axis. */
+  readonly curvatures: readonly Float64Array[];
+  readonly gradients: readonly Float64Array[];
+}
+
+export interface SegmentFit extends SegmentProducts {
   /** Curvature and gradient of this segment alone, weighted by axis. */
   readonly curvature: Float64Array;
   readonly gradient: Float64Array;
@@ -41,34 +48,59 @@ export function evaluateDecays(
   components: readonly Component[],
   axisWeights: readonly number[],
 ): Evaluation {
-  const axisCount = signal.y.length;
   const np = parameterCount(components);
-  const total = {
-    rss: new Float64Array(axisCount),
-    gradient: new Float64Array(np),
-    curvature: new Float64Array(np * np),
-  };
   const groups = axisGroups(signal);
-  const fits: SegmentFit[] = [];
-  for (const segment of segments) {
-    const fit: SegmentFit = {
+  const products = segments.map((segment) => {
+    const fit: SegmentProducts = {
       coefficients: signal.y.map(() => new Float64Array(linearColumnCount(components.length))),
-      rss: new Float64Array(axisCount),
-      curvature: new Float64Array(np * np),
-      gradient: new Float64Array(np),
+      rss: new Float64Array(signal.y.length),
+      curvatures: signal.y.map(() => new Float64Array(np * np)),
+      gradients: signal.y.map(() => new Float64Array(np)),
     };
-    for (const { axes, weight } of groups) {
-      const moments = segmentMoments(signal, segment, components, axes, weight);
-      addProjected(moments, components, axes, axisWeights, fit);
-    }
-    for (let a = 0; a < axisCount; a++) total.rss[a]! += fit.rss[a]!;
-    for (let i = 0; i < np; i++) total.gradient[i]! += fit.gradient[i]!;
-    for (let i = 0; i < np * np; i++) total.curvature[i]! += fit.curvature[i]!;
-    fits.push(fit);
-  }
-  let cost = 0;
-  for (let a = 0; a < axisCount; a++) cost += axisWeights[a]! * total.rss[a]!;
-  return { cost, ...total, segments: fits };
+    for (const { axes, weight } of groups)
+      addProjected(segmentMoments(signal, segment, components, axes, weight), components, axes, fit);
+    return fit;
+  });
+  return weighed(products, axisWeights);
+}
+
+/** The same fit with other variances of the axes: nothing but sums. */
+export const reweighed = (evaluation: Evaluation, axisWeights: readonly number[]): Evaluation =>
+  weighed(evaluation.segments, axisWeights);
+
+function weighed(products: readonly SegmentProducts[], axisWeights: readonly number[]): Evaluation {
+  const segments = products.map((fit) => ({
+    ...fit,
+    curvature: weightedSum(fit.curvatures, axisWeights),
+    gradient: weightedSum(fit.gradients, axisWeights),
+  }));
+  const ones = segments.map(() => 1);
+  const rss = weightedSum(
+    segments.map((s) => s.rss),
+    ones,
+  );
+  return {
+    cost: axisWeights.reduce((sum, w, a) => sum + w * rss[a]!, 0),
+    rss,
+    gradient: weightedSum(
+      segments.map((s) => s.gradient),
+      ones,
+    ),
+    curvature: weightedSum(
+      segments.map((s) => s.curvature),
+      ones,
+    ),
+    segments,
+  };
+}
+
+function weightedSum(arrays: readonly Float64Array[], weights: readonly number[]): Float64Array {
+  const sum = new Float64Array(arrays[0]?.length ?? 0);
+  arrays.forEach((array, k) => {
+    const weight = weights[k]!;
+    for (let i = 0; i < sum.length; i++) sum[i]! += weight * array[i]!;
+  });
+  return sum;
 }
 
 /**
@@ -79,15 +111,14 @@ function addProjected(
   moments: Moments,
   components: readonly Component[],
   axes: readonly number[],
-  axisWeights: readonly number[],
-  fit: SegmentFit,
+  fit: SegmentProducts,
 ): void {
   const m = components.length;
   const p = linearColumnCount(m);
   const q = p + 2 * m + 2 * softenedCount(components);
   const lower = moments.gram;
   choleskyInPlace(lower, q);
-  const np = fit.gradient.length;
+  const np = fit.gradients[0]!.length;
   const v = new Float64Array(q);
   for (let a = 0; a < axes.length; a++) {
     const axis = axes[a]!;
@@ -99,18 +130,19 @@ function addProjected(
     const amplitudes = solveLeading(lower, q, p, v);
     fit.coefficients[axis]!.set(amplitudes);
     const jacobian = derivativeFactors(components, amplitudes, lower, q, p);
-    const w = axisWeights[axis]!;
+    const gradient = fit.gradients[axis]!;
+    const curvature = fit.curvatures[axis]!;
     for (let i = 0; i < np; i++) {
       const ji = jacobian[i]!;
       let g = 0;
       for (let r = 0; r < q - p; r++) g += ji[r]! * v[p + r]!;
-      fit.gradient[i]! += w * g;
+      gradient[i] = g;
       for (let j = 0; j <= i; j++) {
         const jj = jacobian[j]!;
         let h = 0;
         for (let r = 0; r < q - p; r++) h += ji[r]! * jj[r]!;
-        fit.curvature[i * np + j]! += w * h;
-        if (i !== j) fit.curvature[j * np + i]! += w * h;
+        curvature[i * np + j] = h;
+        curvature[j * np + i] = h;
       }
     }
   }

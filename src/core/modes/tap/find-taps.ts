@@ -1,6 +1,7 @@
 import { linearColumnCount } from './decay-model.ts';
 import type { Component, DecaySignal, Segment } from './decay-model.ts';
-import { scanSplits } from './split-scan.ts';
+import { createSplitScans } from './split-scan.ts';
+import type { SplitScans } from './split-scan.ts';
 
 /** One free decay: fitted from `start` to `end`; its tap began at sample `onset` (absent: it runs from before). */
 export interface FreeDecay extends Segment {
@@ -50,12 +51,10 @@ export function findTaps(
   axisWeights: readonly number[],
   search: TapSearch,
 ): FreeDecay[] {
-  const whole: FreeDecay = { start: 0, end: signal.timeS.length, onset: undefined };
-  const splits: { decay: FreeDecay; split: Split | undefined }[] = [
-    { decay: whole, split: bestSplit(signal, whole, components, axisWeights, search) },
-  ];
+  const splitter = createSplitter(signal, components, axisWeights, search);
+  const splits = chunksOf(signal).map((decay) => ({ decay, split: splitter(decay) }));
   let strongest = 0;
-  const limit = search.relativeThreshold > FINE ? COARSE_TAP_LIMIT : TAP_LIMIT;
+  const limit = splits.length * (search.relativeThreshold > FINE ? COARSE_TAP_LIMIT : TAP_LIMIT);
   for (let count = 0; count < limit; count++) {
     const at = indexOfLargest(splits.map((s) => s.split?.gain ?? 0));
     const { decay, split } = splits[at]!;
@@ -66,45 +65,48 @@ export function findTaps(
       { ...decay, end: split.onset },
       { start: split.start, end: decay.end, onset: split.onset },
     ];
-    splits.splice(
-      at,
-      1,
-      ...parts.map((part) => ({
-        decay: part,
-        split: bestSplit(signal, part, components, axisWeights, search),
-      })),
-    );
+    splits.splice(at, 1, ...parts.map((part) => ({ decay: part, split: splitter(part) })));
   }
-  return refineBorders(
-    signal,
-    splits.map((s) => s.decay),
-    components,
-    axisWeights,
-    search,
-  );
+  const decays = splits.map((s) => s.decay);
+  return refineBorders(decays, splitter, search.threshold);
 }
 
-/** More than this many taps is not a tap test. */
-export const TAP_LIMIT = 40;
+/** More than this many taps in a minute or in a shorter record is not a tap test. */
+const TAP_LIMIT = 40;
 /** Nor more than this while modes are still missing: they make up for each other. */
 const COARSE_TAP_LIMIT = 14;
+/** Records of two of these and more are looked through piece by piece: the work then grows with their length alone. */
+const CHUNK_S = 60;
+
+const chunkCount = ({ timeS }: DecaySignal): number =>
+  Math.max(1, Math.floor((timeS[timeS.length - 1]! - timeS[0]!) / CHUNK_S));
+
+/** Whether a record holds more taps than anyone makes. */
+export const isTapped = (signal: DecaySignal, tapCount: number): boolean =>
+  tapCount < TAP_LIMIT * chunkCount(signal);
+
+function chunksOf(signal: DecaySignal): FreeDecay[] {
+  const count = chunkCount(signal);
+  const n = signal.timeS.length;
+  return Array.from({ length: count }, (_, c) => ({
+    start: Math.floor((c * n) / count),
+    end: Math.floor(((c + 1) * n) / count),
+    onset: undefined,
+  }));
+}
 
 /** Each border searched again between its neighbours; borders that no longer pay are taken away. */
-export function refineBorders(
-  signal: DecaySignal,
-  decays: readonly FreeDecay[],
-  components: readonly Component[],
-  axisWeights: readonly number[],
-  search: TapSearch,
-): FreeDecay[] {
+function refineBorders(decays: readonly FreeDecay[], splitter: Splitter, threshold: number): FreeDecay[] {
   const refined = [...decays];
   for (let round = 0; round < 2; round++) {
     for (let k = 1; k < refined.length; k++) {
       const left = refined[k - 1]!;
       const right = refined[k]!;
+      // Where a piece of a long record begins there is nothing to refine.
+      if (right.onset === undefined) continue;
       const union: FreeDecay = { start: left.start, end: right.end, onset: left.onset };
-      const split = bestSplit(signal, union, components, axisWeights, search);
-      if (split === undefined || split.gain < search.threshold) {
+      const split = splitter(union);
+      if (split === undefined || split.gain < threshold) {
         refined.splice(k - 1, 2, union);
         k--;
         continue;
@@ -116,56 +118,83 @@ export function refineBorders(
   return refined;
 }
 
-function bestSplit(
+type Splitter = (decay: Segment) => Split | undefined;
+
+/** Best split of any stretch; what was once asked is kept. */
+function createSplitter(
   signal: DecaySignal,
-  decay: FreeDecay,
   components: readonly Component[],
   axisWeights: readonly number[],
   search: TapSearch,
+): Splitter {
+  const scans = createSplitScans(signal, components, axisWeights);
+  const known = new Map<string, Split | undefined>();
+  return (decay) => {
+    const key = `${decay.start} ${decay.end}`;
+    if (!known.has(key)) known.set(key, bestSplit(signal, decay, components, scans, search));
+    return known.get(key);
+  };
+}
+
+function bestSplit(
+  signal: DecaySignal,
+  { start, end }: Segment,
+  components: readonly Component[],
+  scans: SplitScans,
+  search: TapSearch,
 ): Split | undefined {
-  const n = decay.end - decay.start;
   const least = linearColumnCount(components.length) + 2;
-  if (n < 2 * least) return undefined;
-  const { leading, trailing, leadingMotion, trailingMotion } = scanSplits(
-    signal,
-    decay,
-    components,
-    axisWeights,
-  );
+  if (end - start < 2 * least) return undefined;
+  const leading = scans.leading(start, end);
+  const trailing = scans.trailing(start, end);
+  const before = leading.residual.subarray(start - leading.origin);
+  const after = trailing.residual.subarray(start - trailing.origin);
   const price = signal.y.length + CONTACT_SAMPLE_PRICE;
-  const total = leading[n]!;
-  const gains = new Float64Array(n - least + 1);
-  const starts = new Int32Array(n - least + 1);
+  const total = before[end - start]!;
+  const last = end - start - least;
+  const gains = new Float64Array(last + 1);
+  const starts = new Int32Array(last + 1);
   let k = 0;
   // A record may begin within a contact: then the left part is empty (split at 0) and costs nothing.
-  for (let onset = 0; onset <= n - least; onset++) {
-    const onsetTime = signal.timeS[decay.start + onset]!;
-    gains[onset] = -Infinity;
-    for (let j = onset; j <= n - least; j++) {
-      if (signal.timeS[decay.start + j]! - onsetTime > search.contactS) break;
-      const gain = total - leading[onset]! - trailing[j]! - price * (j - onset);
-      if (gain > gains[onset]!) {
-        gains[onset] = gain;
+  for (let onset = 0; onset <= last; onset++) {
+    const latestS = signal.timeS[start + onset]! + search.contactS;
+    let best = -Infinity;
+    for (let j = onset; j <= last && signal.timeS[start + j]! <= latestS; j++) {
+      const gain = total - before[onset]! - after[j]! - price * (j - onset);
+      if (gain > best) {
+        best = gain;
         starts[onset] = j;
       }
     }
-    if (gains[onset]! > gains[k]!) k = onset;
+    gains[onset] = best;
+    if (best > gains[k]!) k = onset;
   }
   if (k === 0) return undefined;
   const gain = gains[k]!;
   const j = starts[k]!;
-  const motion = Math.min(leadingMotion[k]! - leading[k]!, trailingMotion[j]! - trailing[j]!);
+  const motion = Math.min(
+    leading.motion[start + k - leading.origin]! - before[k]!,
+    trailing.motion[start + j - trailing.origin]! - after[j]!,
+  );
   if (gain < LEAST_JUMP_SHARE * motion) return undefined;
-  if (gain < SURE_JUMP_SHARE * motion && !isSudden(gains, k, halfCycleSamples(signal, decay, components)))
+  if (
+    gain < SURE_JUMP_SHARE * motion &&
+    !isSudden(gains, k, halfCycleSamples(signal, start, end, components))
+  )
     return undefined;
-  return { gain, onset: decay.start + k, start: decay.start + j };
+  return { gain, onset: start + k, start: start + j };
 }
 
 /** Half a cycle of the slowest component, in samples. */
-function halfCycleSamples(signal: DecaySignal, decay: FreeDecay, components: readonly Component[]): number {
+function halfCycleSamples(
+  signal: DecaySignal,
+  start: number,
+  end: number,
+  components: readonly Component[],
+): number {
   const slowest = Math.min(...components.map((c) => c.angularRadPerS));
-  const durationS = signal.timeS[decay.end - 1]! - signal.timeS[decay.start]!;
-  return Math.max(2, Math.round((Math.PI / slowest / durationS) * (decay.end - decay.start)));
+  const durationS = signal.timeS[end - 1]! - signal.timeS[start]!;
+  return Math.max(2, Math.round((Math.PI / slowest / durationS) * (end - start)));
 }
 
 /**

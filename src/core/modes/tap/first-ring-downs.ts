@@ -2,7 +2,7 @@ import type { Component, DecaySignal } from './decay-model.ts';
 import type { FreeDecay } from './find-taps.ts';
 import { strongestOnsets } from './first-decay.ts';
 import type { FirstDecay } from './first-decay.ts';
-import { fitDecays } from './fit-decays.ts';
+import { ROUGH_ITERATIONS, fitDecays } from './fit-decays.ts';
 import { residuals } from './modelled-signal.ts';
 import { quietNoiseVariance } from './quiet-noise.ts';
 import { refit } from './ring-down-state.ts';
@@ -29,6 +29,9 @@ export function firstRingDowns(input: SearchInput): FirstRingDown[] {
   return tones.length === 0 ? beside : [...beside, ...startsBeside(input, [], input.signal.y, noise)];
 }
 
+/** Window of a whole record: none. */
+const UNDAMPED = [0] as const;
+
 /** Lines that keep amplitude and phase over the whole record, and what is left without them. */
 function steadyTones(input: SearchInput): { tones: Component[]; left: readonly Float64Array[] } {
   const { signal, rateHz, stepMps2 } = input;
@@ -43,10 +46,11 @@ function steadyTones(input: SearchInput): { tones: Component[]; left: readonly F
       whole,
       rateHz,
       noise.map((v) => 1 / v),
+      UNDAMPED,
     );
     if (rough === undefined) break;
     const slow = { ...rough.component, decayPerS: STEADY_START_PER_S };
-    const line = fitDecays(signal, whole, [...tones, slow], noise, 1);
+    const line = fitDecays(signal, whole, [...tones, slow], noise, 1, ROUGH_ITERATIONS);
     if (!isSteady(signal, left, line.components.at(-1)!)) break;
     tones = [...line.components];
     left = residuals(signal, whole, line);
@@ -64,7 +68,8 @@ function startsBeside(
   const { signal, rateHz } = input;
   const weights = noise.map((v) => 1 / v);
   const toneless = { ...signal, y: left };
-  const rough = strongestDecay(signal, left, [{ start: 0, end: signal.timeS.length }], rateHz, weights);
+  const whole = [{ start: 0, end: signal.timeS.length }];
+  const rough = strongestDecay(signal, left, whole, rateHz, weights, UNDAMPED);
   if (rough === undefined) return [];
   const singles = strongestOnsets(toneless, rough.component.angularRadPerS, weights)
     .map((onset) => localSearch({ ...input, signal: toneless }, onset, noise))

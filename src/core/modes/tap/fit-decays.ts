@@ -4,14 +4,16 @@ import {
   backSubstitute,
   symmetricInverse,
 } from '../../signal/linear-algebra.ts';
-import { linearColumnCount, parameterCount } from './decay-model.ts';
-import { evaluateDecays } from './evaluate-decays.ts';
+import { linearColumnCount, parameterCount, parameterIndex } from './decay-model.ts';
+import { evaluateDecays, reweighed } from './evaluate-decays.ts';
 import type { Component, DecaySignal, Segment } from './decay-model.ts';
 import type { Evaluation } from './evaluate-decays.ts';
 
 /** Stop when a step promises less than this part of the cost's unit (cost is in noise variances). */
 const STOP_DECREASE = 1e-4;
-const ITERATION_LIMIT = 40;
+const ITERATION_LIMIT = 20;
+/** Enough where only the order of an answer counts: whether a line falls, whether a component is missed. */
+export const ROUGH_ITERATIONS = 10;
 /** Rounds of shapes and noise in turn. */
 const ROUND_LIMIT = 5;
 /** A noise variance that falls by more than this in a round was a poor guess. */
@@ -41,6 +43,7 @@ export function fitDecays(
   start: readonly Component[],
   variance: readonly number[],
   rounds = 2,
+  iterations = ITERATION_LIMIT,
 ): DecayFit {
   let components = start;
   let noise = variance;
@@ -51,13 +54,11 @@ export function fitDecays(
     noise.map((v) => 1 / v),
   );
   for (let round = 0; round < ROUND_LIMIT; round++) {
-    ({ components, evaluation } = descend(signal, segments, components, noise, evaluation));
+    ({ components, evaluation } = descend(signal, segments, components, noise, evaluation, iterations));
     const before = noise;
     noise = residualVariance(signal, segments, components.length, evaluation, variance);
-    evaluation = evaluateDecays(
-      signal,
-      segments,
-      components,
+    evaluation = reweighed(
+      evaluation,
       noise.map((v) => 1 / v),
     );
     // Against a noise guessed too large the descent rests too early: it goes on until the guess has come down.
@@ -98,17 +99,20 @@ function descend(
   start: readonly Component[],
   variance: readonly number[],
   first: Evaluation,
+  iterations: number,
 ): Descent {
   const weights = variance.map((v) => 1 / v);
   let current: Descent = { components: start, evaluation: first };
   let lambda = 1e-3;
-  for (let i = 0; i < ITERATION_LIMIT; i++) {
-    const step = marquardtStep(current.evaluation, lambda);
+  for (let i = 0; i < iterations; i++) {
+    const step = marquardtStep(current, lambda);
     if (step === undefined || (step.promised < STOP_DECREASE && lambda < 1)) break;
     const components = moved(current.components, step.change);
     const evaluation = evaluateDecays(signal, segments, components, weights);
-    if (evaluation.cost <= current.evaluation.cost) {
+    const decrease = current.evaluation.cost - evaluation.cost;
+    if (decrease >= 0) {
       current = { components, evaluation };
+      if (decrease < STOP_DECREASE && lambda < 1) break;
       lambda = Math.max(lambda / 8, 1e-9);
     } else {
       lambda *= 8;
@@ -119,20 +123,30 @@ function descend(
 }
 
 function marquardtStep(
-  evaluation: Evaluation,
+  { components, evaluation }: Descent,
   lambda: number,
 ): { change: Float64Array; promised: number } | undefined {
   const size = evaluation.gradient.length;
   const matrix = evaluation.curvature.slice();
   for (let i = 0; i < size; i++) matrix[i * size + i]! *= 1 + lambda;
-  if (choleskyInPlace(matrix, size) === 0) return undefined;
   const change = evaluation.gradient.slice();
+  // A decay that rests on its bound and would go below stays there: the others must not wait for it.
+  components.forEach((component, k) => {
+    const at = parameterIndex(components, k) + 1;
+    if (component.kind === 'tone' || change[at]! > 0 || !isAtBound(component)) return;
+    change[at] = 0;
+    for (let i = 0; i < size; i++) matrix[at * size + i] = matrix[i * size + at] = 0;
+  });
+  if (choleskyInPlace(matrix, size) === 0) return undefined;
   forwardSubstitute(matrix, size, change);
   let promised = 0;
   for (let i = 0; i < size; i++) promised += change[i]! * change[i]!;
   backSubstitute(matrix, size, change);
   return { change, promised };
 }
+
+const isAtBound = ({ decayPerS, angularRadPerS }: Component): boolean =>
+  decayPerS <= 1.001 * SMALLEST_DECAY_RATIO * angularRadPerS;
 
 /** Applies a parameter change, kept within a factor of four in decay and a few bandwidths in frequency. */
 function moved(components: readonly Component[], change: Float64Array): Component[] {

@@ -23,11 +23,20 @@ export function withOneMore(
   const residual = residuals(signal, segments, current.fit);
   const weights = current.fit.variance.map((v) => 1 / v);
   const peak = strongestDecay(signal, residual, segments, rateHz, weights);
-  if (peak === undefined) return undefined;
+  if (peak === undefined || peak.gain < HOPELESS_GAIN_SHARE * leastGain(signal, segments)) return undefined;
   const trial = fitDecays(signal, segments, [...current.fit.components, peak.component], noise);
   if (areTooClose(signal, segments, trial.components) || isWeakNeighbour(segments, trial)) return undefined;
   if (bayesCost(signal, segments, trial) >= bayesCost(signal, segments, current.fit)) return undefined;
   return found(current.decays, segments, trial, noise);
+}
+
+/** A line that by itself brings less than this share of its price will not pay when fitted along. */
+const HOPELESS_GAIN_SHARE = 0.3;
+
+/** What one more component must bring by the Bayesian criterion, in noise variances. */
+function leastGain({ y }: DecaySignal, segments: readonly Segment[]): number {
+  const samples = segments.reduce((n, s) => n + s.end - s.start, 0);
+  return (2 + 2 * segments.length * y.length) * Math.log(samples * y.length);
 }
 
 /** Two lines nearer than these shares of one over the longest decay are one line to a single decay, to several. */

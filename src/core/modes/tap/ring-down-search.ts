@@ -1,10 +1,10 @@
 import { linearColumnCount, parameterCount, parameterIndex } from './decay-model.ts';
 import type { Component, DecaySignal } from './decay-model.ts';
 import { bayesCost, recordCost } from './bayes-cost.ts';
-import { COARSE, FINE, LESS_COARSE, TAP_LIMIT, findTaps } from './find-taps.ts';
+import { COARSE, FINE, LESS_COARSE, findTaps, isTapped } from './find-taps.ts';
 import { firstRingDowns } from './first-ring-downs.ts';
 import type { FirstRingDown } from './first-ring-downs.ts';
-import { fitDecays } from './fit-decays.ts';
+import { ROUGH_ITERATIONS, fitDecays } from './fit-decays.ts';
 import { withOneMore } from './one-more-component.ts';
 import { found, refit } from './ring-down-state.ts';
 import type { RingDownSearch, SearchInput } from './ring-down-state.ts';
@@ -29,7 +29,7 @@ export function searchRingDowns(input: SearchInput): RingDownSearch | undefined 
   };
   for (const start of firstRingDowns(input)) {
     const result = attempt(start, COARSE);
-    if (result.tapCount >= TAP_LIMIT || runs >= RUN_LIMIT) break;
+    if (!isTapped(signal, result.tapCount) || runs >= RUN_LIMIT) break;
     if (isCrowded(result) && !isHopeless(signal, result)) attempt(start, LESS_COARSE);
     if (runs >= RUN_LIMIT || (best !== undefined && leavesOnlyNoise(best))) break;
   }
@@ -43,8 +43,7 @@ const RUN_LIMIT = 3;
 const NEIGHBOUR_SHARE = 0.1;
 
 /** Close lines, many lines or no mode: reasons to look for weaker taps from the beginning. */
-function isCrowded({ fit: { components }, tapCount }: RingDownSearch): boolean {
-  if (tapCount >= TAP_LIMIT) return false;
+function isCrowded({ fit: { components } }: RingDownSearch): boolean {
   return (
     components.length > 2 ||
     components.every((c) => c.kind === 'tone') ||
@@ -65,7 +64,7 @@ function searchFrom(
   const components = [...tones, ...local.fit.components];
   const start: RingDownSearch = { ...local, fit: { ...local.fit, components } };
   const result = search(input, settle(input, start, noise, coarse), noise, coarse);
-  if (result.tapCount >= TAP_LIMIT || isHopeless(input.signal, result)) return result;
+  if (!isTapped(input.signal, result.tapCount) || isHopeless(input.signal, result)) return result;
   return withTones(input.signal, prune(input, result, noise));
 }
 
@@ -109,14 +108,15 @@ function search(
   const { signal } = input;
   let current = start;
   let threshold = coarse;
-  for (let step = 0; step < STEP_LIMIT && current.tapCount < TAP_LIMIT; step++) {
+  let larger = withOneMore(input, current, noise);
+  for (let step = 0; step < STEP_LIMIT && isTapped(signal, current.tapCount); step++) {
     if (isHopeless(signal, current)) break;
     const cost = recordCost(signal, current);
-    const larger = withOneMore(input, current, noise);
     const richer = larger === undefined ? undefined : settle(input, larger, noise, threshold);
     const finer = threshold === FINE ? undefined : settle(input, current, noise, FINE);
     const richerCost = richer === undefined ? Infinity : recordCost(signal, richer);
     const finerCost = finer === undefined ? Infinity : recordCost(signal, finer);
+    const before = current;
     if (finer !== undefined && finerCost <= Math.min(cost, richerCost)) {
       current = finer;
       threshold = FINE;
@@ -125,6 +125,7 @@ function search(
     } else {
       break;
     }
+    if (current !== before) larger = withOneMore(input, current, noise);
   }
   return current;
 }
@@ -164,7 +165,7 @@ function prune(input: SearchInput, start: RingDownSearch, noise: readonly number
     const fewer = current.fit.components.map((_, k) => {
       const rest = current.fit.components.filter((__, j) => j !== k);
       return {
-        fit: fitDecays(signal, segments, rest, current.fit.variance, 1),
+        fit: fitDecays(signal, segments, rest, current.fit.variance, 1, ROUGH_ITERATIONS),
         removed: current.fit.components[k]!,
       };
     });

@@ -17,6 +17,7 @@ export interface BankPeak {
  * Strongest damped sinusoid of a signal cut in free decays: a bank of exponential windows, each transformed segment by
  * segment, powers added over segments and axes.
  * @param y uniform to within stamp scatter, m/s²; rateHz its mean rate
+ * @param decaysPerS windows tried; over a whole record only the one that does not fall makes sense
  */
 export function strongestDecay(
   signal: DecaySignal,
@@ -24,6 +25,7 @@ export function strongestDecay(
   segments: readonly Segment[],
   rateHz: number,
   axisWeights: readonly number[],
+  decaysPerS: readonly number[] = BANK_DECAYS_PER_S,
 ): BankPeak | undefined {
   const longest = segments.reduce(
     (m, s) => Math.max(m, signal.timeS[s.end - 1]! - signal.timeS[s.start]!),
@@ -34,7 +36,7 @@ export function strongestDecay(
   const first = Math.ceil(Math.max(LOWEST_HZ, LEAST_CYCLES / longest) / stepHz);
   const last = Math.floor(0.49 * size);
   let best: BankPeak | undefined;
-  for (const decayPerS of BANK_DECAYS_PER_S) {
+  for (const decayPerS of decaysPerS) {
     const power = new Float64Array(size / 2 + 1);
     let windowEnergy = 0;
     for (const segment of segments) {

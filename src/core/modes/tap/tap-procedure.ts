@@ -7,7 +7,7 @@ import { median } from '../../signal/sample-counter.ts';
 import type { ProcedureAnswer } from '../procedure-answer.ts';
 import type { DecaySignal } from './decay-model.ts';
 import { recordCost } from './bayes-cost.ts';
-import { TAP_LIMIT } from './find-taps.ts';
+import { isTapped } from './find-taps.ts';
 import type { FreeDecay } from './find-taps.ts';
 import type { DecayFit } from './fit-decays.ts';
 import { modeEstimate } from './mode-estimate.ts';
@@ -58,7 +58,7 @@ function unfoldedFor(
   search: RingDownSearch,
 ): DecaySignal | undefined {
   const decided = unfoldedSignal(conditioned, signal, search);
-  if (decided !== undefined || leavesOnlyNoise(search) || search.tapCount >= TAP_LIMIT) return decided;
+  if (decided !== undefined || leavesOnlyNoise(search) || !isTapped(signal, search.tapCount)) return decided;
   return supposedUnfolded(conditioned, signal, search);
 }
 
@@ -77,7 +77,7 @@ function answerOf(
   signal: DecaySignal,
   search: RingDownSearch,
 ): Outcome<ProcedureAnswer> {
-  if (search.tapCount >= TAP_LIMIT) return failure('no-decay', { tapCount: search.tapCount });
+  if (!isTapped(signal, search.tapCount)) return failure('no-decay', { tapCount: search.tapCount });
   const { decays, fit, isRounded } = finalFit(signal, search, conditioned.facts.stepMps2);
   const left = residuals(signal, decays, fit);
   const largest = Math.max(...signal.y.map((y) => y.reduce((m, v) => Math.max(m, Math.abs(v)), 0)));

@@ -4,7 +4,7 @@ import type { Component } from '../../../../src/core/modes/tap/decay-model.ts';
 import { fitDecays } from '../../../../src/core/modes/tap/fit-decays.ts';
 import { dampingRatioOf, naturalFrequencyHz } from '../../../../src/core/modes/tap/mode-estimate.ts';
 import { residuals } from '../../../../src/core/modes/tap/modelled-signal.ts';
-import { scanSplits } from '../../../../src/core/modes/tap/split-scan.ts';
+import { createSplitScans } from '../../../../src/core/modes/tap/split-scan.ts';
 import { seededRandom } from '../../../support/cases/random.ts';
 
 const random = seededRandom(17);
@@ -148,16 +148,39 @@ describe('residuals', () => {
   });
 });
 
-describe('scanSplits', () => {
+describe('createSplitScans', () => {
+  const noisy = { timeS, y: exact.y.map((y) => y.map((v) => v + 0.02 * random.normal())) };
+  const scans = createSplitScans(noisy, truth, [2500, 2500]);
+  const cost = (start: number, end: number): number =>
+    evaluateDecays(noisy, [{ start, end }], truth, [2500, 2500]).cost;
+
   it('agrees with fitting every leading and trailing part by itself', () => {
-    const noisy = { timeS, y: exact.y.map((y) => y.map((v) => v + 0.02 * random.normal())) };
-    const whole = { start: 20, end: 300 };
-    const { leading, trailing } = scanSplits(noisy, whole, truth, [2500, 2500]);
-    for (const k of [40, 100, 200]) {
-      const front = evaluateDecays(noisy, [{ start: 20, end: 20 + k }], truth, [2500, 2500]).cost;
-      const back = evaluateDecays(noisy, [{ start: 20 + k, end: 300 }], truth, [2500, 2500]).cost;
-      expect(leading[k]! / front).toBeCloseTo(1, 5);
-      expect(trailing[k]! / back).toBeCloseTo(1, 5);
+    const leading = scans.leading(20, 300);
+    const trailing = scans.trailing(20, 300);
+    for (const i of [60, 120, 220]) {
+      expect(leading.residual[i - leading.origin]! / cost(20, i)).toBeCloseTo(1, 6);
+      expect(trailing.residual[i - trailing.origin]! / cost(i, 300)).toBeCloseTo(1, 6);
     }
+  });
+
+  it('goes on from where it was', () => {
+    const shorter = scans.trailing(150, 250).residual[150];
+    const longer = scans.trailing(30, 250);
+    expect(longer.residual[150]).toBe(shorter);
+    expect(longer.residual[30]! / cost(30, 250)).toBeCloseTo(1, 6);
+  });
+
+  it('stays exact where a decay falls by hundreds of orders of magnitude', () => {
+    const long = {
+      timeS: Float64Array.from({ length: 3000 }, (_, i) => i / 25),
+      y: [new Float64Array(3000)],
+    };
+    const w = 2 * Math.PI * 5.3;
+    long.timeS.forEach((t, i) => (long.y[0]![i] = Math.exp(-8 * t) * Math.cos(w * t)));
+    const mode = [{ kind: 'mode', angularRadPerS: w, decayPerS: 8 }] as const;
+    const { trailing, leading } = createSplitScans(long, mode, [1]);
+    expect(trailing(0, 3000).residual[0]).toBeLessThan(1e-20);
+    expect(leading(0, 3000).residual[3000]).toBeLessThan(1e-20);
+    expect(leading(0, 3000).motion[3000]! / long.y[0]!.reduce((s, v) => s + v * v, 0)).toBeCloseTo(1, 1);
   });
 });
