@@ -77,8 +77,11 @@ const english = {
   nothingWaiting: 'nothing',
   waitingCount: things,
   asUser: (user: string) => `as ${user}`,
-  progress: ({ step, doneCount, totalCount }: TeamStoreProgress) =>
-    totalCount === 0 ? 'Comparing…' : `${steps[step]}: ${counted(doneCount)} of ${counted(totalCount)}`,
+  progress({ step, doneCount, totalCount }: TeamStoreProgress): string {
+    if (step === 'pausing') return `${steps.pausing}…`;
+    if (totalCount === 0) return 'Comparing…';
+    return `${steps[step]}: ${counted(doneCount)} of ${counted(totalCount)}`;
+  },
   report: ({ sentCount, fetchedCount, end }: TeamStoreReport) => {
     const moved =
       sentCount + fetchedCount === 0 ? '' : `${counted(sentCount)} sent, ${counted(fetchedCount)} fetched.`;
@@ -107,6 +110,10 @@ const english = {
     `${fieldWords[field] ?? field} of ${name === undefined ? kindWords[kind].none : `${kindWords[kind].the} “${name}”`}`,
   writtenHere: 'on this device',
   writtenBy: (device: string) => `on another device (${device.slice(-4)})`,
+  valueWithUnit: (field: string, value: string) => {
+    const unit = fieldUnits[field];
+    return unit === undefined ? value : `${value} ${unit}`;
+  },
   keepThis: 'Keep this',
   keepLabel: (value: string) => `Keep ${value}`,
   empty: 'empty',
@@ -140,6 +147,11 @@ const fieldWords: Readonly<Record<string, string>> = {
   toleranceRatio: 'Tolerance of the speed',
   frequencyHz: 'Frequency',
   bladeCount: 'Number of blades',
+};
+
+const fieldUnits: Readonly<Record<string, string>> = {
+  speedRpm: 'r/min',
+  frequencyHz: 'Hz',
 };
 
 export type TeamStoreText = typeof english;

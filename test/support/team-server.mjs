@@ -27,7 +27,7 @@ await database().info();
 const counts = { calls: 0, uploads: 0, bytesIn: 0 };
 /** Bytes until something happens, and what: everything dies, or new calls are held until `listen`. */
 let bytesLeft = Infinity;
-let then = 'cut';
+let what = 'cut';
 let gate = Promise.resolve();
 let release = () => {};
 
@@ -79,7 +79,7 @@ const listen = () =>
   });
 function reached() {
   bytesLeft = Infinity;
-  if (then === 'cut') cut();
+  if (what === 'cut') cut();
   else gate = new Promise((resolve) => (release = () => resolve(undefined)));
   process.send?.({ event: 'reached' });
 }
@@ -93,7 +93,7 @@ process.on('message', async ({ id, ask, value }) => {
     listen: async () => (await listen(), { port }),
     cut: async () => cut(),
     watch: async () => {
-      ({ then, bytes: bytesLeft } = value);
+      ({ what, bytes: bytesLeft } = value);
     },
     counts: async () => ({ ...counts }),
     documents: async () => {

@@ -60,9 +60,9 @@ export async function startTeamServer(): Promise<TeamServer> {
     child.send({ id, ask: name, value });
     return (await answered).answer as T;
   };
-  const reached = async (bytes: number, then: 'cut' | 'hold'): Promise<void> => {
+  const reached = async (bytes: number, what: 'cut' | 'hold'): Promise<void> => {
     const happened = next(({ event }) => event === 'reached');
-    await ask('watch', { bytes, then });
+    await ask('watch', { bytes, what });
     await happened;
   };
   await next(({ event }) => event === 'ready');

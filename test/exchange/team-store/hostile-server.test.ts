@@ -77,7 +77,7 @@ describe('a hostile or broken server is refused with a reason, and nothing is lo
     ['another place', 'redirected', answering(302, '', { Location: 'http://127.0.0.1:9/elsewhere' })],
     ['another place for good', 'redirected', answering(308, '', { Location: '/team/' })],
     ['silence', 'stalled', () => {}],
-    ['silence after the head', 'stalled', (_, response) => void response.writeHead(200).flushHeaders()],
+    ['silence after the head', 'stalled', (_, response) => response.writeHead(200).flushHeaders()],
     ['a byte now and then', 'stalled', dripping],
     ['a broken connection', 'unreachable', (request) => request.socket.destroy()],
     ['a body that breaks off', 'unreachable', breakingOff],

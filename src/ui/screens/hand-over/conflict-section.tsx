@@ -25,6 +25,7 @@ export function ConflictSection({ app }: { readonly app: App }) {
                 <VersionCard
                   key={version.edit}
                   version={version}
+                  said={text.valueWithUnit(conflict.field, saidValue(version))}
                   onKeep={() =>
                     void settle(app.store, conflict, version.value).catch((error: unknown) =>
                       app.noteError(error),
@@ -40,8 +41,15 @@ export function ConflictSection({ app }: { readonly app: App }) {
   );
 }
 
-function VersionCard({ version, onKeep }: { readonly version: Version; readonly onKeep: () => void }) {
-  const said = saidValue(version);
+function VersionCard({
+  version,
+  said,
+  onKeep,
+}: {
+  readonly version: Version;
+  readonly said: string;
+  readonly onKeep: () => void;
+}) {
   return (
     <li class={styles.version}>
       <p class={styles.value}>{said}</p>
@@ -59,5 +67,6 @@ function saidValue({ value, named }: Version): string {
   if (named !== undefined) return named;
   if (value === null || value === '') return text.empty;
   if (typeof value === 'boolean') return value ? text.yes : text.no;
+  if (Array.isArray(value)) return value.map(String).join(' – ');
   return typeof value === 'object' ? JSON.stringify(value) : String(value);
 }
