@@ -42,6 +42,8 @@ export interface App {
   readonly teamStore: () => Promise<TeamStore>;
   /** Readings picked in a list to be handed over; empty means all. */
   readonly selection: Live<readonly string[]>;
+  /** Where the last spot was named: what the next one most likely lies on. */
+  readonly lastPlace: Live<PlaceIds>;
   /** Kept on this phone, shown under This phone; nothing leaves it. */
   noteError(error: unknown): void;
   today(): string;
@@ -189,6 +191,7 @@ export async function createApp(parts: AppParts): Promise<App> {
         part.createTeamStoreUse(store, parts.teamStore),
       )),
     selection: live<readonly string[]>([]),
+    lastPlace: live<PlaceIds>({}),
     noteError,
     today: () => localDay(environment.now()),
     update: parts.update,

@@ -10,6 +10,12 @@ export const PLUS_MINUS_NOTE = 'The value after ± is the half-width of a 95 % i
 /** A digit may be dropped from ± when that makes it at most this much too small. Our own rule. */
 const LARGEST_UNDERSTATEMENT = 0.05;
 
+/**
+ * Figures of a value that are shown at most; ± is then rounded up to the last of them. Our own rule: a frequency drifts by more
+ * than the fifth figure with an hour's sun, so digits beyond would promise what the next reading does not keep.
+ */
+const MOST_FIGURES = 4;
+
 /** Decimal places at which ± has one digit (two when it begins with 1), rounded so that it hardly understates. */
 function roundedHalfWidth(halfWidth: number): { readonly value: number; readonly places: number } {
   // By the figure that two digits would show: 0.196 is 0.20 and begins with 2.
@@ -45,11 +51,18 @@ export interface NumberText {
   readonly plusMinus?: string;
 }
 
-/** Value and ± cut to the same decimals by the uncertainty; without one, three significant digits. */
+/** Value and ± cut to the same decimals by the uncertainty, four figures at most; without one, three significant digits. */
 export function numberText(value: number, standardDeviation?: number): NumberText {
   if (standardDeviation === undefined || !(standardDeviation > 0)) return { value: formatNumber(value) };
-  const { value: rounded, places } = roundedHalfWidth(STANDARD_DEVIATIONS_95 * standardDeviation);
-  return { value: fixed(value, places), plusMinus: fixed(rounded, places) };
+  const halfWidth = STANDARD_DEVIATIONS_95 * standardDeviation;
+  const { value: rounded, places } = roundedHalfWidth(halfWidth);
+  const mostPlaces = MOST_FIGURES - 1 - Math.floor(Math.log10(Math.abs(value)) + 1e-12);
+  if (!(places > mostPlaces)) return { value: fixed(value, places), plusMinus: fixed(rounded, places) };
+  const step = 10 ** -mostPlaces;
+  return {
+    value: fixed(value, mostPlaces),
+    plusMinus: fixed(Math.ceil((halfWidth * (1 - LARGEST_UNDERSTATEMENT)) / step) * step, mostPlaces),
+  };
 }
 
 /** "7.42 Hz ± 0.03"; the unit follows the value, as it is said aloud. */

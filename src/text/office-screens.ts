@@ -155,7 +155,7 @@ const english = {
     everywhere: 'Everywhere',
     kindNotes: {
       machine: 'Pump, fan, engine: speed, blades, teeth',
-      belt: 'Belt drive: pulley and belt length',
+      belt: 'Pulley speed, diameter and belt length',
       mains: 'Motor on 50 or 60 Hz supply',
       footfall: 'Walking, running, stairs, jumping',
       wind: 'Vortices behind a bar, pipe or mast',

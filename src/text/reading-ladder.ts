@@ -5,12 +5,14 @@ import type { LadderContent, LadderForcing, LadderMode, LadderTone } from '../co
 import { formatDamping } from './quantity.ts';
 import { readingText } from './reading-screen.ts';
 import { forcingId, forcingVerdict, modeId, toneId, worstOfForcing } from './pairs.ts';
-import { saidHz, saidMps2, type ReadingUnits } from './reading-units.ts';
+import { saidHz, type ReadingUnits } from './reading-units.ts';
 import { likelyDampingRatio, likelyHz, otherCandidatesHz } from './true-frequency.ts';
 
-/** Short name for a mark: what tells it from the others first, since a long one is cut at its end. */
-export const shortForcing = (forcing: Forcing): string =>
-  forcing.sourceKind === 'footfall' || forcing.sourceKind === 'traffic'
+/** Short name for a mark: what tells it from the others first, since a long one is cut at its end; the source only where there are several. */
+const shortForcing = (forcing: Forcing, isOnlySource: boolean): string =>
+  forcing.sourceKind === 'footfall' ||
+  forcing.sourceKind === 'traffic' ||
+  (isOnlySource && forcing.sourceKind !== 'band')
     ? forcing.label
     : `${forcing.label} ${forcing.source}`.replace(/^band /, '');
 
@@ -49,7 +51,10 @@ const ladderForcing = (
     Math.abs(before.frequencyHz[0] / forcing.frequencyHz[0] - 1) > 1e-3;
   return {
     id: forcingId(index),
-    label: shortForcing(forcing),
+    label: shortForcing(
+      forcing,
+      judgement.forcings.every(({ source }) => source === forcing.source),
+    ),
     frequencyHz: forcing.frequencyHz,
     ...(verdict ? { verdict } : {}),
     ...(worst ? { modeId: modeId(worst.modeIndex) } : {}),
@@ -61,7 +66,7 @@ const ladderTones = (analysis: Analysis, units: ReadingUnits): LadderTone[] =>
   analysis.tones.map((tone, index) => ({
     id: toneId(index),
     frequencyHz: likelyHz(tone),
-    label: `${saidHz(units, likelyHz(tone))}, ${saidMps2(units, tone.amplitudeMps2)}`,
+    label: readingText.ladder.tone(saidHz(units, likelyHz(tone))),
   }));
 
 /** What the ladder of a reading shows; `before` is the reading as measured while a change is tried. */

@@ -61,7 +61,7 @@ export const readingText = {
     'Where people could be hurt, a licensed engineer comes first. Local rules and licensed practice come before this reading.',
 
   practice: 'Practice',
-  practiceNote: 'Made with the practice rig. It says nothing about a real structure.',
+  practiceNote: 'Simulated: it says nothing about a real structure.',
   trashed: 'This reading is in the trash.',
   restore: 'Put it back',
   trash: 'Move to trash',
@@ -161,6 +161,7 @@ export const readingText = {
   candidates: (list: string) => `could be ${list}`,
 
   ladder: {
+    tone: (frequency: string) => `tone ${frequency}`,
     name: 'Ladder',
     title: 'Ladder',
     keys: 'Arrow keys go from mark to mark, plus and minus zoom, 0 shows the whole.',
@@ -193,7 +194,11 @@ export const readingText = {
     noneNote: 'Enter what shakes it, and the verdict follows: people, a machine, wind, traffic.',
     against: (forcing: string, mode: string) => `${forcing} against the mode at ${mode}`,
     ratio: 'ratio',
-    rowDetail: (ratio: string, mode: string, times: string) => `${ratio} of the mode at ${mode}, ${times}`,
+    rowDetail: (ratio: string, mode: string, times: string) =>
+      `ratio ${ratio} to the mode at ${mode}, amplified ${times}`,
+    toneFits: (tone: string, isFolded: boolean) =>
+      isFolded ? `its folded image fits the tone seen at ${tone}` : `the tone at ${tone} fits`,
+    amplifies: (kind: AmplificationKind, times: string) => `The mode amplifies ${AMPLIFIED[kind]} ${times}`,
     amplified: (kind: AmplificationKind) => `${AMPLIFIED[kind]} amplified`,
     times: (interval: string) => `${interval} times`,
     limited: 'with the cycles it has to build up',
@@ -250,7 +255,7 @@ export const readingText = {
     x: (unit: string) => `frequency, ${unit}`,
     y: (unit: string) => `amplitude, ${unit}`,
     note: (window: string, resolution: string, averages: string) =>
-      `Window ${window}, resolution ${resolution}, ${averages}. Hatched: this recording could not see it.`,
+      `${window.charAt(0).toUpperCase()}${window.slice(1)} window, resolution ${resolution}, ${averages}. Hatched: this recording could not see it.`,
     averages: (said: string) => (said === '1' ? '1 average' : `${said} averages`),
     head: ['Frequency', 'Amplitude', 'What it is'],
     mode: 'mode',

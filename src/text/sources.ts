@@ -28,6 +28,20 @@ const KINDS: Readonly<Record<SourceKind, string>> = {
 };
 export const sourceKindName = (kind: SourceKind): string => KINDS[kind];
 
+const UNNAMED: Readonly<Record<SourceKind, string>> = {
+  machine: 'Machine',
+  belt: 'Belt drive',
+  mains: 'Motor',
+  footfall: 'People',
+  wind: 'Wind',
+  traffic: 'Traffic',
+  band: 'Known frequency',
+};
+/** What a source is called that nobody named: short, since it stands in sentences and beside the ladder. */
+export const unnamedSource = (kind: SourceKind): string => UNNAMED[kind];
+
+export const isUnnamed = ({ source, sourceKind }: Forcing): boolean => source === UNNAMED[sourceKind];
+
 const KNOWN: Readonly<Record<KnownBy, string>> = {
   nameplate: 'read from the nameplate',
   'drive-display': 'read from the drive display',
@@ -58,7 +72,7 @@ function footfallName(forcing: Forcing): string {
 
 /** The forcing in words, to stand inside a sentence: "the third harmonic of walking", "the running speed of Pump A". */
 export function forcingName(forcing: Forcing): string {
-  const of = forcing.source;
+  const of = isUnnamed(forcing) ? `the ${forcing.source.toLowerCase()}` : forcing.source;
   switch (forcing.role) {
     case 'shaft':
       return `the running speed of ${of}`;
@@ -92,11 +106,11 @@ export function forcingName(forcing: Forcing): string {
     case 'sway':
       return footfallName(forcing);
     case 'vortex':
-      return `vortex shedding in the wind (${of})`;
+      return isUnnamed(forcing) ? 'vortex shedding in the wind' : `vortex shedding in the wind (${of})`;
     case 'road-traffic':
-      return `road traffic (${of})`;
+      return isUnnamed(forcing) ? 'road traffic' : `road traffic (${of})`;
     case 'rail-traffic':
-      return `rail traffic (${of})`;
+      return isUnnamed(forcing) ? 'rail traffic' : `rail traffic (${of})`;
     case 'band':
       return forcing.order === 1 ? of : `the ${ordinalWord(forcing.order)} harmonic of ${of}`;
   }

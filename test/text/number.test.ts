@@ -44,9 +44,17 @@ describe('numbers', () => {
       fc.property(fc.double({ min: 1e-6, max: 1e4, noNaN: true }), (sd) => {
         const shown = Number(numberText(100, sd).plusMinus);
         expect(shown).toBeGreaterThanOrEqual(1.96 * sd * 0.9499);
-        expect(shown).toBeLessThanOrEqual(1.96 * sd * 1.5);
+        // of 100 four figures reach to the first decimal
+        expect(shown).toBeLessThanOrEqual(1.96 * sd + Math.max(0.1, 0.5 * 1.96 * sd) + 1e-9);
       }),
     );
+  });
+  it('show four figures at most, with ± rounded up to the last of them', () => {
+    expect(withUncertainty(16.16663, 0.000025, 'Hz')).toBe('16.17 Hz ± 0.01');
+    expect(withUncertainty(7.3999, 0.00026, 'Hz')).toBe('7.400 Hz ± 0.001');
+    expect(withUncertainty(7.3999, 0.0026, 'Hz')).toBe('7.400 Hz ± 0.005');
+    expect(withUncertainty(1483.2, 0.001)).toBe('1483 ± 1');
+    expect(withUncertainty(0.4, 0.3)).toBe('0.4 ± 0.6');
   });
   it('show value and ± with like decimals', () => {
     fc.assert(
@@ -66,7 +74,7 @@ describe('numbers', () => {
 describe('quantities', () => {
   it('come in the units people choose', () => {
     expect(formatFrequency(24.667, 0.01)).toBe('24.67 Hz ± 0.02');
-    expect(formatFrequency(24.667, 0.01, 'r/min')).toBe('1480.0 r/min ± 1.2');
+    expect(formatFrequency(24.667, 0.01, 'r/min')).toBe('1480 r/min ± 2');
     expect(formatAcceleration(0.9)).toBe('0.900 m/s²');
     expect(formatAcceleration(9.80665, undefined, 'g')).toBe('1.00 g');
     expect(formatVelocity(0.0045)).toBe('4.50 mm/s');

@@ -246,7 +246,7 @@ describe('the verdict sentence', () => {
       judge(running, [{ name: 'Pump A', kind: 'machine', speedRpm: 1480 }]),
     );
     expect(sentence).toBe(
-      'Strongest tone at 24.670 Hz ± 0.002, amplitude 0.420 m/s² ± 0.008. It fits the running speed of Pump A. Trust: good.',
+      'Strongest tone at 24.67 Hz ± 0.01, amplitude 0.420 m/s² ± 0.008. It fits the running speed of Pump A. Trust: good.',
     );
     expect(
       verdictSentence(running, judge(running, [{ name: 'Fan', kind: 'machine', speedRpm: 900 }])),

@@ -74,3 +74,8 @@ export const IconCaution = () => (
     <path d="M12 4l9 16H3zM12 10v5M12 17.6v.1" />
   </Drawing>
 );
+export const IconClose = () => (
+  <Drawing>
+    <path d="M6 6l12 12M18 6L6 18" />
+  </Drawing>
+);

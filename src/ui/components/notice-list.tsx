@@ -1,4 +1,5 @@
 import { useEffect } from 'preact/hooks';
+import { IconClose } from './icons.tsx';
 import styles from './notice-list.module.css';
 
 export interface ShownNotice {
@@ -59,8 +60,8 @@ function Item(props: {
           {notice.action.label}
         </button>
       )}
-      <button type="button" onClick={() => props.onDismiss(notice.id)}>
-        {props.closeLabel}
+      <button type="button" aria-label={props.closeLabel} onClick={() => props.onDismiss(notice.id)}>
+        <IconClose />
       </button>
     </div>
   );

@@ -21,18 +21,23 @@ export function PickSpotDialog(props: {
   const { app } = props;
   const tree = useLoaded(app.store, () => app.places.tree(), []);
   const [known, setKnown] = useState('');
-  const [site, setSite] = useState('');
-  const [asset, setAsset] = useState('');
-  const [spot, setSpot] = useState('');
-  const [kind, setKind] = useState<SpotKind>(props.kind ?? 'other');
+  const near = tree && nearLast(tree, app.lastPlace.get());
+  const [typedSite, setSite] = useState<string>();
+  const [typedAsset, setAsset] = useState<string>();
+  const [typedSpot, setSpot] = useState<string>();
+  const site = typedSite ?? near?.site ?? '';
+  const asset = typedAsset ?? near?.asset ?? '';
+  const spot = typedSpot ?? near?.nextSpot ?? '';
+  const [kind, setKind] = useState<SpotKind>(props.kind ?? app.settings.get().lastSpotKind ?? 'other');
   const [problem, setProblem] = useState<string>();
   const spots = tree ? allSpots(tree) : [];
   const pick = async () => {
     if (!tree) return;
     const found = spots.find((entry) => entry.spot.id === known);
-    if (found) return props.onPick(idsOf(found));
-    if (!spot.trim()) return setProblem(text.nameMissing);
-    props.onPick(await addTyped(app, tree, { site, asset, spot, kind }));
+    if (!found && !spot.trim()) return setProblem(text.nameMissing);
+    const where = found ? idsOf(found) : await addTyped(app, tree, { site, asset, spot, kind });
+    app.lastPlace.set(where);
+    props.onPick(where);
   };
   return (
     <Dialog
@@ -112,6 +117,20 @@ function allSpots(tree: PlaceTree): readonly FullSpot[] {
 
 const fullName = (entry: FullSpot) =>
   [entry.siteName, entry.asset?.name, entry.spot.name].filter(Boolean).join(' · ');
+
+/** What the last named spot suggests for the next: the same asset and site, and the number after its own. */
+function nearLast(tree: PlaceTree, last: PlaceIds) {
+  const spots = allSpots(tree);
+  const lastSpot = spots.find((entry) => entry.spot.id === last.spot);
+  const name = lastSpot?.spot.name.replace(/\d+$/, (digits) => String(Number(digits) + 1));
+  const isFree = !spots.some((entry) => entry.asset?.id === lastSpot?.asset?.id && entry.spot.name === name);
+  const asset = allAssets(tree).find((entry) => entry.id === last.asset);
+  return {
+    asset: asset?.name,
+    site: tree.sites.find((entry) => entry.id === (last.site ?? asset?.site))?.name,
+    nextSpot: isFree ? name : undefined,
+  };
+}
 
 const idsOf = ({ spot, asset }: FullSpot): PlaceIds => ({
   spot: spot.id,

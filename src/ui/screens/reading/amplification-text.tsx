@@ -8,13 +8,12 @@ const LARGEST_SAID = 999;
 export const timesText = ([low, high]: readonly [number, number]): string =>
   readingText.pair.times(formatInterval([low, Math.min(high, LARGEST_SAID)]));
 
-/** "A steady force amplified 3.1 to 16 times." */
+/** "The mode amplifies a steady force 3.1 to 16 times." */
 export function AmplificationText({ separation }: { readonly separation: Separation }) {
   const { kind, interval } = separation.amplification;
-  const what = readingText.pair.amplified(kind);
   return (
     <>
-      {what.charAt(0).toUpperCase() + what.slice(1)} {timesText(interval)}
+      {readingText.pair.amplifies(kind, timesText(interval))}
       {separation.buildUpLimited ? `, ${readingText.pair.limited}` : ''}.
     </>
   );

@@ -50,7 +50,7 @@ export function LevelsSection(props: {
       {analysis.procedure === 'tap' && <p>{words.tapNote}</p>}
       <FactRows rows={rows} />
       <p class="note">
-        {words.band(formatFrequencyRange(levels.bandHz, units.frequency))}{' '}
+        {words.band(formatFrequencyRange(levels.bandHz, units.frequency, 2))}{' '}
         {levels.leftOutTones ? words.leftOut : ''}
       </p>
       <Findings findings={judgement.levels} />

@@ -1,6 +1,6 @@
 import { useState } from 'preact/hooks';
 import type { Analysis } from '../../../core/model/analysis.ts';
-import type { Judgement } from '../../../core/model/judgement.ts';
+import type { Judgement, Verdict } from '../../../core/model/judgement.ts';
 import { formatInterval } from '../../../text/number.ts';
 import { formatFrequencyRange } from '../../../text/quantity.ts';
 import { readingText } from '../../../text/reading-screen.ts';
@@ -59,7 +59,22 @@ export function PairList(props: PairListProps) {
   );
 }
 
-function PairRowButton({ row, judgement, picked, units, onPick }: PairListProps & { readonly row: PairRow }) {
+type RowProps = PairListProps & { readonly row: PairRow };
+
+/** What the row says after the forcing's frequency: the pair, or why there is none. */
+function rowDetail({ row, analysis, judgement, units }: RowProps, verdict: Verdict | undefined): string {
+  const { separation, unpaired } = row;
+  if (verdict === 'blind') return `. ${unpairedText('blind').meaning}`;
+  if (separation)
+    return `, ${readingText.pair.rowDetail(formatInterval(separation.ratio), saidHz(units, separation.modeHz), timesText(separation.amplification.interval))}`;
+  const match = judgement.toneMatches.find(({ forcingIndex }) => forcingIndex === row.forcingIndex);
+  const tone = match && analysis.tones[match.toneIndex];
+  if (tone) return `, ${readingText.pair.toneFits(saidHz(units, tone.frequencyHz), match.folded)}`;
+  return unpaired ? `, ${unpairedText(unpaired).word}` : '';
+}
+
+function PairRowButton(props: RowProps) {
+  const { row, judgement, picked, onPick, units } = props;
   const forcing = judgement.forcings[row.forcingIndex];
   if (!forcing) return null;
   const { separation } = row;
@@ -84,9 +99,7 @@ function PairRowButton({ row, judgement, picked, units, onPick }: PairListProps 
         {sentenceCase(forcingName(forcing))}
         <span class="note">
           {formatFrequencyRange(forcing.frequencyHz, units.frequency)}
-          {separation &&
-            `, ${readingText.pair.rowDetail(formatInterval(separation.ratio), saidHz(units, separation.modeHz), timesText(separation.amplification.interval))}`}
-          {!separation && row.unpaired ? `, ${unpairedText(row.unpaired).word}` : ''}
+          {rowDetail(props, verdict)}
         </span>
       </span>
       {verdict && <VerdictMark verdict={verdict} word={verdictWord(verdict)} />}

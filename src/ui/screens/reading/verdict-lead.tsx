@@ -1,5 +1,6 @@
 import type { Analysis } from '../../../core/model/analysis.ts';
 import type { Judgement } from '../../../core/model/judgement.ts';
+import { INDICATIVE_LINE } from '../../../text/indicative.ts';
 import { readingText } from '../../../text/reading-screen.ts';
 import { headlinePair, sourcesSentence } from '../../../text/sentence.ts';
 import { verdictWord } from '../../../text/verdicts.ts';
@@ -33,7 +34,7 @@ export function VerdictLead(props: {
       </p>
       <p class={styles.trust}>
         {readingText.trust[trust]} {readingText.trustName},{' '}
-        {readingText.doubtCount(allDoubts(analysis, judgement).length)}.
+        {readingText.doubtCount(allDoubts(analysis, judgement).length)}. {INDICATIVE_LINE}
       </p>
     </div>
   );

@@ -9,7 +9,7 @@ import { forcingsOf, parseSource } from '../../../app/survey-desk.ts';
 import { problemSentence } from '../../../text/problems.ts';
 import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
-import { knownByName, sourceKindName } from '../../../text/sources.ts';
+import { knownByName, sourceKindName, unnamedSource } from '../../../text/sources.ts';
 import { BottomBar } from '../../components/bottom-bar.tsx';
 import { Button } from '../../components/button.tsx';
 import { SelectField, TextField } from '../../components/field.tsx';
@@ -78,7 +78,7 @@ function SourceForm(props: {
   const [place, setPlace] = useState(props.place);
   const [isTried, setIsTried] = useState(false);
   const kindName = capital(sourceKindName(draft.kind));
-  const parsed = useMemo(() => parseSource(draftToData(draft, kindName), 0), [draft]);
+  const parsed = useMemo(() => parseSource(draftToData(draft, unnamedSource(draft.kind)), 0), [draft]);
   const problem = parsed.ok ? undefined : problemSentence(parsed.problem);
   const change = (key: string, value: string) =>
     setDraft({ ...draft, typed: { ...draft.typed, [key]: value } });
@@ -126,7 +126,7 @@ function SourceForm(props: {
           <TextField
             label={`${text.name} (${screenText.common.optional})`}
             value={draft.name}
-            note={text.nameNote(kindName)}
+            note={text.nameNote(unnamedSource(draft.kind))}
             onInput={(name) => setDraft({ ...draft, name })}
           />
           <PlaceSelect app={app} value={place} onChange={setPlace} />

@@ -21,7 +21,7 @@ export function CautionDialog(props: {
         <>
           <Button onClick={props.onClose}>{screenText.common.cancel}</Button>
           <Button kind="main" disabled={!isRead} onClick={props.onConfirm}>
-            {screenText.take.begin}
+            {screenText.take.cautionGo}
           </Button>
         </>
       }
