@@ -5,6 +5,7 @@ export interface AnalyseArguments {
   readonly settings: AnalysisSettings;
   readonly unit?: AccelerationUnit;
   readonly sourcesPath?: string;
+  readonly spotPath?: string;
   readonly files: readonly string[];
 }
 
@@ -15,6 +16,7 @@ export const ANALYSE_USAGE = `npm run -s analyse -- [options] FILE...
   --timing auto|stamps|clock   whether the time stamps are true or late reports of a steady clock (default auto)
   --unit mps2|g|mg     unit of acceleration (default: from the header, else m/s²)
   --sources FILE.json  what shakes it: every mode is judged against every forcing
+  --spot FILE.json     what the spot is, e.g. {"kind":"floor","floorUse":"office"}: levels are held against guidance
 Prints one line of JSON per file. Exit status: 0 all analysed, 3 some could not be, 2 wrong use.`;
 
 const CHOICES: Readonly<Record<string, readonly string[]>> = {
@@ -37,7 +39,7 @@ export function parseAnalyseArguments(args: readonly string[]): AnalyseArguments
     const [name = arg, inline] = arg.split(/=(.*)/s);
     const value = inline ?? args[++i];
     const choices = CHOICES[name];
-    if (!choices && name !== '--sources') return `Unknown option ${name}.`;
+    if (!choices && name !== '--sources' && name !== '--spot') return `Unknown option ${name}.`;
     if (value === undefined) return `${name} needs a value.`;
     if (choices && !choices.includes(value))
       return `${name} must be one of ${choices.join(', ')}, not "${value}".`;
@@ -53,6 +55,7 @@ function withFiles(
   if (files.length === 0) return 'Name at least one file.';
   const unit = options.get('--unit');
   const sourcesPath = options.get('--sources');
+  const spotPath = options.get('--spot');
   return {
     settings: {
       procedure: (options.get('--procedure') ?? 'auto') as AnalysisSettings['procedure'],
@@ -60,6 +63,7 @@ function withFiles(
     },
     ...(unit === undefined ? {} : { unit: unit as AccelerationUnit }),
     ...(sourcesPath === undefined ? {} : { sourcesPath }),
+    ...(spotPath === undefined ? {} : { spotPath }),
     files,
   };
 }

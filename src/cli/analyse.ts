@@ -9,15 +9,20 @@ import { problemSentence } from '../text/problems.ts';
 import { ANALYSE_USAGE, parseAnalyseArguments, type AnalyseArguments } from './analyse-arguments.ts';
 import type { RedoneReading } from './analyse-packet.ts';
 import { isPacketName } from './packet-name.ts';
+import type { PrintedJudgement, PrintedSurvey } from './printed-judgement.ts';
 import { FILE_FAILURES, readTextFile } from './read-text-file.ts';
 
 const ALL_ANALYSED = 0;
 const WRONG_USE = 2;
 const SOME_NOT_ANALYSED = 3;
 
-type Judging = (analysis: Analysis) => readonly Separation[];
-type JudgedAnalysis = Analysis & { readonly separations: readonly Separation[] };
-type Printed = { readonly analysis: JudgedAnalysis } & Partial<Omit<RedoneReading, 'analysis'>>;
+/** Undefined where nothing is known that it could be held against. */
+type Judging = (analysis: Analysis) => PrintedSurvey | undefined;
+interface Judged {
+  readonly analysis: Analysis & { readonly separations: readonly Separation[] };
+  readonly judgement?: PrintedJudgement;
+}
+type Printed = Judged & Partial<Omit<RedoneReading, 'analysis'>>;
 
 async function main(args: readonly string[]): Promise<number> {
   if (args.includes('--help')) {
@@ -29,7 +34,7 @@ async function main(args: readonly string[]): Promise<number> {
     process.stderr.write(`${parsed}\n\n${ANALYSE_USAGE}\n`);
     return WRONG_USE;
   }
-  const judging = await judgingBy(parsed.sourcesPath);
+  const judging = await judgingBy(parsed);
   if (typeof judging === 'string') {
     process.stderr.write(`${judging}\n`);
     return WRONG_USE;
@@ -44,14 +49,24 @@ async function main(args: readonly string[]): Promise<number> {
   return status;
 }
 
-/** The survey is loaded only when there are sources: it would double the time to the first line. */
-async function judgingBy(sourcesPath: string | undefined): Promise<Judging | string> {
-  if (sourcesPath === undefined) return () => [];
+/** The survey is loaded only when there is something to hold a reading against: it would double the time to the first line. */
+async function judgingBy({ sourcesPath, spotPath }: AnalyseArguments): Promise<Judging | string> {
+  if (sourcesPath === undefined && spotPath === undefined) return () => undefined;
   const { readSourcesFile } = await import('./read-sources-file.ts');
   const sources = await readSourcesFile(sourcesPath);
   if (!sources.ok) return `${sourcesPath}: ${problemSentence(sources.problem)}`;
-  const { judge } = await import('../core/survey/judge.ts');
-  return (analysis) => judge(analysis, sources.value).separations;
+  const { readSpotFile } = await import('./read-spot-file.ts');
+  const place = await readSpotFile(spotPath);
+  if (!place.ok) return `${spotPath}: ${problemSentence(place.problem)}`;
+  const { printedSurvey } = await import('./printed-judgement.ts');
+  return (analysis) => printedSurvey(analysis, sources.value, place.value);
+}
+
+function judgedBy(judging: Judging, analysis: Analysis): Judged {
+  const survey = judging(analysis);
+  return survey
+    ? { analysis: { ...analysis, separations: survey.separations }, judgement: survey.judgement }
+    : { analysis: { ...analysis, separations: [] } };
 }
 
 type Line = { readonly name: string; readonly outcome: Outcome<Printed> };
@@ -59,8 +74,7 @@ type Line = { readonly name: string; readonly outcome: Outcome<Printed> };
 /** One line a recording; one a reading for a packet, with what was stored beside what comes out now. */
 async function* linesOf(file: string, args: AnalyseArguments, judging: Judging): AsyncGenerator<Line> {
   if (!isPacketName(file)) {
-    const outcome = await analyseFile(file, args, judging);
-    yield { name: file, outcome: outcome.ok ? { ok: true, value: { analysis: outcome.value } } : outcome };
+    yield { name: file, outcome: await analyseFile(file, args, judging) };
     return;
   }
   const { analysePacket } = await import('./analyse-packet.ts');
@@ -80,23 +94,21 @@ async function* linesOf(file: string, args: AnalyseArguments, judging: Judging):
 
 function judged(outcome: Outcome<RedoneReading>, judging: Judging): Outcome<Printed> {
   if (!outcome.ok) return outcome;
-  const { analysis } = outcome.value;
-  return success({ ...outcome.value, analysis: { ...analysis, separations: judging(analysis) } });
+  return success({ ...outcome.value, ...judgedBy(judging, outcome.value.analysis) });
 }
 
 async function analyseFile(
   file: string,
   { unit, settings }: AnalyseArguments,
   judging: Judging,
-): Promise<Outcome<JudgedAnalysis>> {
+): Promise<Outcome<Printed>> {
   const text = await readTextFile(file);
   if (!text.ok) return text;
   const recording = readCsv(text.value, unit === undefined ? { name: file } : { name: file, unit });
   if (!recording.ok) return recording;
   const result = analyse(recording.value, settings);
   if (!result.ok) return result;
-  const { analysis } = result.value;
-  return { ok: true, value: { ...analysis, separations: judging(analysis) } };
+  return success(judgedBy(judging, result.value.analysis));
 }
 
 async function printLine(file: string, outcome: Outcome<Printed>): Promise<void> {

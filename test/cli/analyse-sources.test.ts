@@ -3,6 +3,8 @@ import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterAll, describe, expect, it } from 'vitest';
+import type { Analysis } from '../../src/core/model/analysis.ts';
+import type { PrintedJudgement } from '../../src/cli/printed-judgement.ts';
 import type { Separation } from '../../src/core/model/judgement.ts';
 import type { Recording } from '../../src/core/model/recording.ts';
 import type { Source } from '../../src/core/model/source.ts';
@@ -95,5 +97,45 @@ describe('analyse --sources', () => {
     });
     expect(of('blade pass 6×').verdict).toBe('blind');
     expect(of('twice line').verdict).toBe('blind');
+  });
+
+  it('prints the rest of the judgement beside the analysis, and levels where the spot is told', () => {
+    const timesS = Array.from({ length: 60 * 45 }, (_, i) => i / 60 + 0.0012 * Math.sin(i * i));
+    const rows = timesS.map((t) => {
+      // 2 mm/s rms at 24.2 Hz: above the first boundary of a small pump, below the last (ISO 20816-3, group 2, rigid).
+      const tone = 2e-3 * Math.SQRT2 * 2 * Math.PI * 24.2 * Math.sin(2 * Math.PI * 24.2 * t);
+      return [t, 0, tone, 9.81 + 0.01 * Math.sin(1e5 * t)].map((value) => value.toFixed(6)).join(',');
+    });
+    const sources: Source[] = [
+      { name: 'Pump 1', kind: 'machine', speedRpm: 1452, toleranceRatio: 0.003 },
+      { name: 'supply', kind: 'mains', supplyHz: 50 },
+    ];
+    const spot = { kind: 'bearing-housing', machine: { ratedPowerW: 30_000, support: 'rigid' } };
+    const run = spawnSync(
+      process.execPath,
+      [
+        ...['--import', 'tsx', 'src/cli/analyse.ts', '--procedure=running'],
+        `--sources=${file('pump.json', JSON.stringify(sources))}`,
+        `--spot=${file('spot.json', JSON.stringify(spot))}`,
+        file('pump.csv', ['t_s,ax_mps2,ay_mps2,az_mps2', ...rows].join('\n')),
+      ],
+      { encoding: 'utf8' },
+    );
+    expect(run.status, run.stderr).toBe(0);
+    const { analysis, judgement } = JSON.parse(run.stdout) as {
+      analysis: Analysis;
+      judgement: PrintedJudgement;
+    };
+    expect(analysis.tones[0]!.frequencyHz).toBeCloseTo(24.2, 1);
+    expect(judgement.toneMatches[0]).toMatchObject({ toneIndex: 0, source: 'Pump 1', forcing: '1×' });
+    expect(judgement.verdict).toContain('It fits the running speed of Pump 1.');
+    expect(judgement.unpaired).toContainEqual(
+      expect.objectContaining({ source: 'supply', verdict: 'not-sought' }),
+    );
+    expect(judgement.forcings).toHaveLength(judgement.unpaired.length);
+    expect(judgement.levels[0]).toMatchObject({ criterion: 'iso-20816-3', measure: 'velocity-rms' });
+    // Only part of 10 to 1000 Hz is seen: a lower bound, never a pass.
+    expect(judgement.levels.map(({ grade }) => grade)).not.toContain('within');
+    expect(judgement.trust).toBe(analysis.trust);
   });
 });
