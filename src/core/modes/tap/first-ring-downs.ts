@@ -8,6 +8,7 @@ import { quietNoiseVariance } from './quiet-noise.ts';
 import { refit } from './ring-down-state.ts';
 import type { RingDownSearch, SearchInput } from './ring-down-state.ts';
 import { strongestDecay } from './start-bank.ts';
+import type { BankPeak } from './start-bank.ts';
 
 /** A place to begin: one ring-down fitted alone, beside tones that are taken for granted. */
 export interface FirstRingDown {
@@ -31,6 +32,29 @@ export function firstRingDowns(input: SearchInput): FirstRingDown[] {
 
 /** Window of a whole record: none. */
 const UNDAMPED = [0] as const;
+
+/**
+ * The same from the strongest line of any brief stretch: a weak mode that is dead within a few cycles drowns in the noise
+ * of a whole record.
+ */
+export function briefRingDowns(input: SearchInput): FirstRingDown[] {
+  const { signal, rateHz, stepMps2 } = input;
+  const noise = quietNoiseVariance(signal.y, rateHz, stepMps2);
+  const weights = noise.map((v) => 1 / v);
+  let best: BankPeak | undefined;
+  for (const lengthS of BRIEF_STRETCHES_S) {
+    const length = Math.round(lengthS * rateHz);
+    for (let start = 0; start + length <= signal.timeS.length; start += length >> 2) {
+      const stretch = [{ start, end: start + length }];
+      const peak = strongestDecay(signal, signal.y, stretch, rateHz, weights, UNDAMPED);
+      if (peak !== undefined && (best === undefined || peak.gain > best.gain)) best = peak;
+    }
+  }
+  return best === undefined ? [] : startsAt(input, [], signal.y, noise, best);
+}
+
+/** A mode of 5 to 25 Hz at some per cent of damping is gone in these, s. */
+const BRIEF_STRETCHES_S = [0.4, 1.2] as const;
 
 /** Lines that keep amplitude and phase over the whole record, and what is left without them. */
 function steadyTones(input: SearchInput): { tones: Component[]; left: readonly Float64Array[] } {
@@ -67,10 +91,20 @@ function startsBeside(
 ): FirstRingDown[] {
   const { signal, rateHz } = input;
   const weights = noise.map((v) => 1 / v);
-  const toneless = { ...signal, y: left };
   const whole = [{ start: 0, end: signal.timeS.length }];
   const rough = strongestDecay(signal, left, whole, rateHz, weights, UNDAMPED);
-  if (rough === undefined) return [];
+  return rough === undefined ? [] : startsAt(input, tones, left, noise, rough);
+}
+
+function startsAt(
+  input: SearchInput,
+  tones: readonly Component[],
+  left: readonly Float64Array[],
+  noise: readonly number[],
+  rough: BankPeak,
+): FirstRingDown[] {
+  const weights = noise.map((v) => 1 / v);
+  const toneless = { ...input.signal, y: left };
   const singles = strongestOnsets(toneless, rough.component.angularRadPerS, weights)
     .map((onset) => localSearch({ ...input, signal: toneless }, onset, noise))
     .filter((single) => single !== undefined)

@@ -2,7 +2,7 @@ import { linearColumnCount, parameterCount, parameterIndex } from './decay-model
 import type { Component, DecaySignal } from './decay-model.ts';
 import { bayesCost, recordCost } from './bayes-cost.ts';
 import { COARSE, FINE, LESS_COARSE, findTaps, isTapped } from './find-taps.ts';
-import { firstRingDowns } from './first-ring-downs.ts';
+import { briefRingDowns, firstRingDowns } from './first-ring-downs.ts';
 import type { FirstRingDown } from './first-ring-downs.ts';
 import { ROUGH_ITERATIONS, fitDecays } from './fit-decays.ts';
 import { withOneMore } from './one-more-component.ts';
@@ -17,7 +17,14 @@ const LOWEST_HZ = 0.4;
 const LARGEST_DAMPING_RATIO = 0.3;
 
 /** Finds taps, modes and tones of a tap record, alternately, each with what is known of the others. */
-export function searchRingDowns(input: SearchInput): RingDownSearch | undefined {
+export const searchRingDowns = (input: SearchInput): RingDownSearch | undefined =>
+  searchFromEach(input, firstRingDowns(input));
+
+/** The same for a record whose motion hardly stands out of its noise. */
+export const searchBriefRingDowns = (input: SearchInput): RingDownSearch | undefined =>
+  searchFromEach(input, briefRingDowns(input));
+
+function searchFromEach(input: SearchInput, starts: readonly FirstRingDown[]): RingDownSearch | undefined {
   const { signal } = input;
   let best: RingDownSearch | undefined;
   let runs = 0;
@@ -27,7 +34,7 @@ export function searchRingDowns(input: SearchInput): RingDownSearch | undefined 
     if (best === undefined || recordCost(signal, result) < recordCost(signal, best)) best = result;
     return result;
   };
-  for (const start of firstRingDowns(input)) {
+  for (const start of starts) {
     const result = attempt(start, COARSE);
     if (!isTapped(signal, result.tapCount) || runs >= RUN_LIMIT) break;
     if (isCrowded(result) && !isHopeless(signal, result)) attempt(start, LESS_COARSE);

@@ -13,13 +13,14 @@ import type { DecayFit } from './fit-decays.ts';
 import { modeEstimate } from './mode-estimate.ts';
 import { decayAlone, residuals } from './modelled-signal.ts';
 import { residualColour } from './residual-colour.ts';
-import { leavesOnlyNoise, searchRingDowns } from './ring-down-search.ts';
+import { leavesOnlyNoise, searchBriefRingDowns, searchRingDowns } from './ring-down-search.ts';
 import type { RingDownSearch } from './ring-down-state.ts';
 import { fitRounded, isStepCoarse } from './rounding-likelihood.ts';
 import { softenedFit } from './softening.ts';
 import { explainedShare, isAnswer, ringEnergy } from './tap-gates.ts';
 import { modeOf, toneOf } from './tap-mode.ts';
-import { supposedUnfolded, unfoldedSignal } from './unfolded-signal.ts';
+import { repacedSignal, supposedUnfolded, unfoldedSignal } from './unfolded-signal.ts';
+import type { PacedSignal } from './unfolded-signal.ts';
 
 /** Fewer samples than this hold no ring-down worth fitting. */
 const FEWEST_SAMPLES = 64;
@@ -45,21 +46,42 @@ export function tapProcedure(
   const input = { rateHz: facts.rateHz, stepMps2: facts.stepMps2 };
   const search = searchRingDowns({ ...input, signal });
   if (search === undefined) return failure('no-motion');
-  const unfolded = unfoldedFor(conditioned, signal, search);
-  const again = unfolded && searchRingDowns({ ...input, signal: unfolded });
-  if (again === undefined || recordCost(unfolded!, again) > recordCost(signal, search))
-    return answerOf(conditioned, signal, search);
-  return answerOf(conditioned, unfolded!, again);
+  const answer = firstAnswer(conditioned, signal, search);
+  const unfolded =
+    unfoldedSignal(conditioned, signal, search) ??
+    (answer.ok && leavesOnlyNoise(search) ? undefined : supposedUnfolded(conditioned, signal));
+  const again = unfolded && searchUnfolded(conditioned, unfolded);
+  if (again === undefined || recordCost(again.signal, again.search) > recordCost(signal, search))
+    return answer;
+  return answerOf(conditioned, again.signal, again.search);
 }
 
-function unfoldedFor(
+/** The search's answer, or that of a search for brief weak ring-downs where it found none in a quiet record. */
+function firstAnswer(
   conditioned: ConditionedSignal,
   signal: DecaySignal,
   search: RingDownSearch,
-): DecaySignal | undefined {
-  const decided = unfoldedSignal(conditioned, signal, search);
-  if (decided !== undefined || leavesOnlyNoise(search) || !isTapped(signal, search.tapCount)) return decided;
-  return supposedUnfolded(conditioned, signal, search);
+): Outcome<ProcedureAnswer> {
+  const answer = answerOf(conditioned, signal, search);
+  if (answer.ok || !leavesOnlyNoise(search)) return answer;
+  const { rateHz, stepMps2 } = conditioned.facts;
+  const brief = searchBriefRingDowns({ signal, rateHz, stepMps2 });
+  if (brief === undefined || brief.tapCount === 0) return answer;
+  const other = answerOf(conditioned, signal, brief);
+  return other.ok ? other : answer;
+}
+
+/** Search with the phases of an image; once more if its frequency, which paces them, came out differently. */
+function searchUnfolded(
+  conditioned: ConditionedSignal,
+  start: PacedSignal,
+): { signal: DecaySignal; search: RingDownSearch } | undefined {
+  const input = { rateHz: conditioned.facts.rateHz, stepMps2: conditioned.facts.stepMps2 };
+  const search = searchRingDowns({ ...input, signal: start });
+  const better = search && repacedSignal(conditioned, start, search);
+  const again = better && searchRingDowns({ ...input, signal: better });
+  if (again !== undefined) return { signal: better!, search: again };
+  return search && { signal: start, search };
 }
 
 /** Sensor values about their median: the slow part stays, for the fit's own constant and slope to take up. */
