@@ -65,6 +65,12 @@ const DOUBTS: Readonly<Record<DoubtCode, DoubtText>> = {
     meaning: 'The sensor delivered the same value more than once; the repeats were taken out.',
     remedy: 'Nothing, unless there are very many: then try another browser.',
   },
+  polled: {
+    name: 'Polled sensor',
+    meaning:
+      'The browser read a sensor that runs on its own clock. Side lines this makes were taken out and the loss of strength made good; no true frequency could be decided.',
+    remedy: 'Use a browser that hands over the sensor’s own time stamps, and compare.',
+  },
   'late-stamps': {
     name: 'Late time stamps',
     meaning:
@@ -189,6 +195,7 @@ const FIGURES: Readonly<Partial<Record<string, (value: number) => string>>> = {
   clippedCount: (value) => `${value} samples`,
   durationS: (value) => `${formatNumber(value, 2)} s`,
   shiftRatio: (value) => `${formatNumber(100 * value, 2)} % on a light rail`,
+  sensorRateHz: (value) => `sensor at ${formatNumber(value, 4)} Hz`,
   stepMps2: (value) => `step ${formatNumber(value, 2)} m/s²`,
 };
 

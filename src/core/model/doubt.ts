@@ -12,6 +12,7 @@ export const DOUBT_CODES = [
   'gaps',
   'repeats',
   'late-stamps',
+  'polled',
   'phone-moved',
   'tilt-leak',
   'contact-loss',

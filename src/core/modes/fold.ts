@@ -7,7 +7,8 @@ import { likelihoodAt, slopeProfile, type SlopeProfile } from '../signal/jitter-
 /**
  * Whether a line or mode appears where it is, or is the image of a frequency above half the rate (browsers sample without a
  * filter before). The only witness is the true part of the stamps' scatter: see `jitter-slope`. Four signed frequencies are
- * weighed for every true share ρ; the share being unknown, late stamps alone can never decide.
+ * weighed for every true share ρ; the share being unknown, late stamps alone can never decide. Nor can a motion event's:
+ * it is stamped when the page polls, while the reading is older by as much as the sensor's own period.
  */
 
 /** Prior weights of f, fs-f, fs+f, 2fs-f: the sensor's own low-pass makes the higher ones rarer. Our choice. */
@@ -151,7 +152,11 @@ function decide(
   const rateHz = 1 / signal.periodS;
   const signed = signedCandidatesHz(item.frequencyHz, rateHz);
   const undecided: Fold = { verdict: 'undecided', candidatesHz: signed.map(Math.abs) };
-  const isBlind = !signal.hasClock || signal.facts.timing.trueShare < LEAST_TELLING_SHARE;
+  const isBlind =
+    !signal.hasClock ||
+    signal.isPolled ||
+    signal.sensor.source === 'devicemotion' ||
+    signal.facts.timing.trueShare < LEAST_TELLING_SHARE;
   if (isBlind || signal.facts.timing.scatterSdS < 1e-6) return undecided;
   const samples = item.samples ?? alongDirection(signal.accelerationMps2, item.direction);
   const profile = slopeProfile(

@@ -6,6 +6,7 @@ import { findPeaks, lineSpectrum, type LineSpectrum, type Peak } from './line-se
 import { bandSource, type BandSource } from './narrow-band.ts';
 import type { ProcedureAnswer } from './procedure-answer.ts';
 import { randomModesBetween } from './running-resonance.ts';
+import { pollingImages } from './polling-images.ts';
 import { withFamilies } from './tone-family.ts';
 import { toneOf, withoutLine } from './tone-measure.ts';
 import { BAND_HALF_SHARE, bandNature, type BandNature } from './tone-nature.ts';
@@ -40,7 +41,9 @@ export function runningProcedure(
   const spectrum = lineSpectrum(signal.grid);
   const source = bandSource(signal.grid);
   const bands = judgedBands(source, spectrum, [usableBandHz[0], SEARCH_RATE_SHARE * rateHz]);
-  const tones = tonesOf(signal, spectrum, bands);
+  const lines = tonesOf(signal, spectrum, bands);
+  const polling = pollingImages(signal, lines);
+  const tones = withFamilies(polling?.tones ?? lines, 1 / durationS);
   const random = bands.filter((band) => band.kind === 'random');
   const modes: Mode[] = tones.length ? [] : randomModesBetween(signal, random);
   if (!tones.length && !modes.length && !random.length) return failure('no-tone', { durationS });
@@ -49,7 +52,10 @@ export function runningProcedure(
     tones,
     broadPeaks: broadPeaksOf(random, modes),
     tapTimesS: [],
-    doubts: runningDoubts(bands, tones, durationS),
+    doubts: [
+      ...runningDoubts(bands, tones, durationS, polling?.imagesHz ?? []),
+      ...(polling ? [{ code: 'polled' as const, facts: { sensorRateHz: polling.sensorRateHz } }] : []),
+    ],
     ringDowns: [],
   });
 }
@@ -117,11 +123,8 @@ function tonesOf(signal: ConditionedSignal, spectrum: LineSpectrum, bands: reado
     (tone) => tone.amplitudeMps2 > Math.max(LEAST_STEP_SHARE * step, LEAST_TONE_SHARE * strongest),
   );
   const resolutionHz = 1 / signal.facts.durationS;
-  return withFamilies(
-    withoutTwice(
-      kept.sort((a, b) => b.amplitudeMps2 - a.amplitudeMps2),
-      resolutionHz,
-    ),
+  return withoutTwice(
+    kept.sort((a, b) => b.amplitudeMps2 - a.amplitudeMps2),
     resolutionHz,
   );
 }
@@ -144,14 +147,21 @@ function broadPeaksOf(random: readonly BandNature[], modes: readonly Mode[]): Br
     .sort((a, b) => b.rmsMps2 - a.rmsMps2);
 }
 
-function runningDoubts(bands: readonly BandNature[], tones: readonly Tone[], durationS: number): Doubt[] {
+function runningDoubts(
+  bands: readonly BandNature[],
+  tones: readonly Tone[],
+  durationS: number,
+  imagesHz: readonly number[],
+): Doubt[] {
   const doubts: Doubt[] = [];
   if (durationS < SHORT_RUNNING_S)
     doubts.push({ code: 'short', facts: { durationS, neededS: SHORT_RUNNING_S } });
   const [strongest] = tones;
   if (strongest && strongest.amplitudeMps2 < WEAK_TONE_SDS * strongest.amplitudeSdMps2)
     doubts.push({ code: 'low-signal', facts: { amplitudeMps2: strongest.amplitudeMps2 } });
-  const beating = bands.find((band) => band.frequenciesHz.length > 1);
+  const isImage = (frequencyHz: number): boolean =>
+    imagesHz.some((f) => Math.abs(f - frequencyHz) < 1 / durationS);
+  const beating = bands.find((band) => band.frequenciesHz.length > 1 && !band.frequenciesHz.some(isImage));
   if (beating) {
     const [a, b] = beating.frequenciesHz as readonly [number, number];
     doubts.push({ code: 'beating', facts: { frequencyHz: a, otherHz: b, beatS: 1 / Math.abs(a - b) } });

@@ -33,6 +33,7 @@ export const DOUBT_WEIGHTS: Readonly<Record<DoubtCode, DoubtWeight>> = {
   gaps: 'slight',
   repeats: 'slight',
   'late-stamps': 'slight',
+  polled: 'moderate',
   interrupted: 'slight',
   stalled: 'slight',
   'running-resonance': 'moderate',
