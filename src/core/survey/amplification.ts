@@ -85,27 +85,29 @@ export function amplificationInterval(
 ): Interval {
   let low = Infinity;
   let high = 0;
-  const ends = dampingRatio[0] === dampingRatio[1] ? [dampingRatio[0]] : dampingRatio;
-  for (const damping of ends)
-    for (const candidate of candidateRatios(kind, ratio, damping, cycleCount)) {
-      const value = amplification(kind, candidate, damping, cycleCount);
-      low = Math.min(low, value);
-      high = Math.max(high, value);
-    }
+  const hold = (value: number): void => {
+    low = Math.min(low, value);
+    high = Math.max(high, value);
+  };
+  amplificationsAt(kind, ratio, dampingRatio[0], cycleCount, hold);
+  if (dampingRatio[1] !== dampingRatio[0]) amplificationsAt(kind, ratio, dampingRatio[1], cycleCount, hold);
   return [low, high];
 }
 
-function candidateRatios(
+/** Every amplification that can be the least or the largest over a ratio interval. No lists: this is the innermost loop of a judgement. */
+function amplificationsAt(
   kind: AmplificationKind,
-  ratio: Interval,
+  [from, to]: Interval,
   dampingRatio: number,
   cycleCount: number | undefined,
-): number[] {
-  const inside = [1, peakRatio(kind, dampingRatio)].filter((value) => value > ratio[0] && value < ratio[1]);
-  if (cycleCount === undefined) return [ratio[0], ratio[1], ...inside];
-  const step = (ratio[1] - ratio[0]) / LIMITED_RATIO_STEPS;
-  const grid = Array.from({ length: LIMITED_RATIO_STEPS + 1 }, (_, index) => ratio[0] + index * step);
-  return [...grid, ...inside];
+  hold: (value: number) => void,
+): void {
+  const at = (ratio: number): void => hold(amplification(kind, ratio, dampingRatio, cycleCount));
+  const peak = peakRatio(kind, dampingRatio);
+  if (1 > from && 1 < to) at(1);
+  if (peak > from && peak < to) at(peak);
+  const steps = cycleCount === undefined || from === to ? 1 : LIMITED_RATIO_STEPS;
+  for (let index = 0; index <= steps; index++) at(from + (index * (to - from)) / steps);
 }
 
 /** Halvings of the damping ratio's range: 1e-9 of it is left. */

@@ -142,7 +142,9 @@ export function separationOf(
   const seen = isSeen(mode, forcing, seenBand(context.analysis));
   const kind = forcing.amplificationKind;
   const interval = amplificationInterval(kind, nearest.ratio, nearest.damping, forcing.cycleCount);
-  const steadyHigh = amplificationInterval(kind, nearest.ratio, nearest.damping)[1];
+  const buildUpLimited =
+    forcing.cycleCount !== undefined &&
+    interval[1] < BUILD_UP_NOTICED_SHARE * amplificationInterval(kind, nearest.ratio, nearest.damping)[1];
   return {
     source: forcing.source,
     forcing: forcing.label,
@@ -157,7 +159,7 @@ export function separationOf(
     ...(mode.fold.verdict === 'undecided'
       ? { atFaceValue: separationOf(modeIndex, forcingIndex, forcing, atFaceValue(context)).verdict }
       : {}),
-    ...(interval[1] < steadyHigh * BUILD_UP_NOTICED_SHARE ? { buildUpLimited: true } : {}),
+    ...(buildUpLimited ? { buildUpLimited } : {}),
     ...(stopped ? { stoppedAgainstRunning: true } : {}),
     ...(forcing.wind ? { wind: windOf(forcing.wind, nearest) } : {}),
     ...(forcing.loadFactorRatio ? { effectRatio: forcing.loadFactorRatio[1] * interval[1] } : {}),

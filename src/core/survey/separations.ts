@@ -18,6 +18,8 @@ export const VERDICT_RANK: Readonly<Record<Verdict, number>> = {
   undecided: 3,
   coincident: 4,
 };
+/** Nothing can make such a pair worse. */
+export const isWorst = (verdict: Verdict): boolean => verdict === 'coincident';
 export const isNear = (verdict: Verdict): boolean => VERDICT_RANK[verdict] >= VERDICT_RANK.close;
 
 /**

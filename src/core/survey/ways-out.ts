@@ -7,7 +7,7 @@ import { dampingForAmplification } from './amplification.ts';
 import { isolationWay } from './isolation.ts';
 import { dampingInterval, frequencyInterval, frequencySpreadRatio } from './mode-intervals.ts';
 import { atFaceValue, separationOf } from './separation.ts';
-import { isWorse } from './separations.ts';
+import { isWorse, isWorst } from './separations.ts';
 import { speedWay } from './speed-range.ts';
 import { changedAnalysis, type StructuralChange } from './structural-change.ts';
 import { AIM_MARGIN_RATIO, type WaysOutContext } from './ways-out-context.ts';
@@ -55,6 +55,7 @@ function outcomeOf(pair: Pair, change: StructuralChange, context: WaysOutContext
   const after = again(pair.separation);
   const sideEffects = context.separations.flatMap((other, index) => {
     if (index === pair.separationIndex || other.modeIndex !== change.modeIndex) return [];
+    if (isWorst(other.verdict) || isOnlyDamped(change, other)) return [];
     return isWorse(other, again(other)) ? [index] : [];
   });
   return {
@@ -63,6 +64,10 @@ function outcomeOf(pair: Pair, change: StructuralChange, context: WaysOutContext
     sideEffects,
   };
 }
+
+/** A force and an unbalance never do more to a better damped mode; the motion of a base can, far above its frequency. */
+const isOnlyDamped = (change: StructuralChange, { amplification }: Separation): boolean =>
+  change.dampingRatio !== undefined && amplification.kind !== 'base';
 
 /** What is planned is judged as if all were seen: blindness belongs to a recording, not to a change. */
 function seeingAll(analysis: Analysis): Analysis {
