@@ -237,7 +237,6 @@ const english = {
       'A simulated phone on an invented structure. Readings made with it stay marked as practice.',
     cautionTitle: 'Before you start',
     cautionConfirm: 'I have read this',
-    cautionGo: 'Switch on',
     howToPlace: {
       handrail: 'Strap or lay it along the rail, at mid-span between two posts.',
       stair: 'Lay it flat on a tread at mid-flight, against the riser.',

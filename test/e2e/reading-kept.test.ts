@@ -37,7 +37,7 @@ describe('a reading kept by the app', () => {
   it('draws its plots from the stored samples', async () => {
     await page.getByRole('img', { name: /Ring-down \d: measured points/ }).waitFor();
     expect(await page.getByRole('img', { name: /Amplitude of each axis/ }).count()).toBe(1);
-    expect(await page.getByText('Made with the practice rig.').count()).toBe(1);
+    expect(await page.getByText('Simulated: it says nothing about a real structure.').count()).toBe(1);
   });
 
   it('keeps notes and a photo, scaled down, over a reload', async () => {

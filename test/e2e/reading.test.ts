@@ -227,7 +227,7 @@ describe('the reading screen', () => {
       'does not mean there is none',
     );
     await open('practice');
-    expect(await page.getByText('Made with the practice rig. It says nothing').count()).toBe(1);
+    expect(await page.getByText('Simulated: it says nothing about a real structure').count()).toBe(1);
     expect(await page.getByText('The page was hidden, so the sensor stopped.').count()).toBeGreaterThan(0);
     await open('newer');
     expect(await page.getByRole('heading', { level: 1 }).textContent()).toContain('newer version');

@@ -51,10 +51,13 @@ export const ladderColumns = (
   const laneWidthPx = Math.max(7, textPx * LANE_TEXTS);
   const laneStepPx = laneWidthPx + LANE_GAP_PX;
   const fixedPx = 4 + markSizePx + 5 + laneCount * laneStepPx + textPx * 0.8 + 6 + railGapPx;
-  const leftPx = widthPx * (hasLeft ? LEFT_SHARE : 0.12);
+  const leftPx = hasLeft ? widthPx * LEFT_SHARE : textPx;
   const widestPx = Math.max(0, ...labels.map((label) => measure(label, textPx))) + 2;
   const mostPx = Math.min(widthPx * LABEL_MOST_SHARE, widthPx - leftPx - fixedPx);
-  const labelRoomPx = Math.min(widestPx, Math.max(widthPx * LABEL_LEAST_SHARE, mostPx));
+  // forcings alone stand at the left edge, as a list does
+  const labelRoomPx = hasLeft
+    ? Math.min(widestPx, Math.max(widthPx * LABEL_LEAST_SHARE, mostPx))
+    : Math.max(widthPx * LABEL_LEAST_SHARE, widthPx - leftPx - fixedPx);
   const labelPx = widthPx - labelRoomPx - 4;
   const markPx = labelPx - markSizePx - 5;
   const lanesPx = markPx - laneCount * laneStepPx - textPx * 0.8;

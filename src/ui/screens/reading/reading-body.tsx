@@ -1,6 +1,5 @@
 import { useMemo, useState } from 'preact/hooks';
 import { headlineSentence } from '../../../text/sentence.ts';
-import { INDICATIVE_LINE } from '../../../text/indicative.ts';
 import { PLUS_MINUS_NOTE } from '../../../text/number.ts';
 import { readingKind, readingText } from '../../../text/reading-screen.ts';
 import { BottomBar } from '../../components/bottom-bar.tsx';
@@ -104,7 +103,7 @@ export function ReadingBody({ view, cases, links, units, spotDialog }: BodyProps
           <RedoSection view={view} cases={cases} units={units} />
           <HistorySection view={view} cases={cases} />
         </div>
-        <IndicativeLine text={`${INDICATIVE_LINE} ${readingText.indicativeNote}`} />
+        <IndicativeLine text={readingText.indicativeNote} />
         <div class="row no-print">
           <LinkButton href={links.handOver(reading._id)}>{readingText.handOver}</LinkButton>
           {!view.entity.trashed && (

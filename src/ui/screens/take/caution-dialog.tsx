@@ -9,6 +9,8 @@ import { CheckField } from '../../components/field.tsx';
 /** Where hands or lives are near: read, confirmed by a mark, then on. Confirming is the tap that opens the sensor. */
 export function CautionDialog(props: {
   readonly cautions: readonly CautionCode[];
+  /** Says what confirming switches on: the sensor or the practice rig. */
+  readonly confirm: string;
   readonly onConfirm: () => void;
   readonly onClose: () => void;
 }) {
@@ -21,7 +23,7 @@ export function CautionDialog(props: {
         <>
           <Button onClick={props.onClose}>{screenText.common.cancel}</Button>
           <Button kind="main" disabled={!isRead} onClick={props.onConfirm}>
-            {screenText.take.cautionGo}
+            {props.confirm}
           </Button>
         </>
       }

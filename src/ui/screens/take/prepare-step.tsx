@@ -38,6 +38,7 @@ export function PrepareStep({ app, onLeave }: { readonly app: App; readonly onLe
     change(replan(plan, { spotKind }));
     close();
   };
+  const beginWords = plan.practice ? text.beginPractice : text.begin;
   const begin = () => {
     if (cautions.length > 0) setOpen('cautions');
     else app.take.begin();
@@ -69,7 +70,7 @@ export function PrepareStep({ app, onLeave }: { readonly app: App; readonly onLe
       </ul>
       <BottomBar>
         <Button kind="main" onClick={begin}>
-          {plan.practice ? text.beginPractice : text.begin}
+          {beginWords}
         </Button>
       </BottomBar>
       {open === 'spot' && (
@@ -132,6 +133,7 @@ export function PrepareStep({ app, onLeave }: { readonly app: App; readonly onLe
       {open === 'cautions' && (
         <CautionDialog
           cautions={cautions}
+          confirm={beginWords}
           onClose={close}
           onConfirm={() => {
             app.settings.change({ cautionsSeen: withSeen(settings.cautionsSeen, cautions, app.today()) });
