@@ -114,6 +114,35 @@ describe('team store in the whole built app', () => {
     }
   });
 
+  it('tells a call that the policy of the page refuses, and the page for the administrator opens', async () => {
+    // A first visit: later ones come from the service worker, past the route below.
+    const first = await launchBrowser();
+    try {
+      const { page, faults } = first;
+      // What a build for one team has in its place.
+      await page.route(app.url, async (route) => {
+        const response = await route.fetch();
+        const policy = response.headers()['content-security-policy'] ?? '';
+        const narrow = policy.replace(/connect-src [^;]*/, "connect-src 'self'");
+        await route.fulfill({
+          response,
+          headers: { ...response.headers(), 'content-security-policy': narrow },
+        });
+      });
+      await page.goto(`${app.url}#/hand-over`);
+      await page.getByRole('button', { name: 'Set up a team store' }).click();
+      await connect(first, server.account.password);
+      await page.getByText('may only talk to the team stores it was built for').waitFor();
+      expect(faults.length).toBeGreaterThan(0);
+      expect(faults.filter((fault) => !fault.includes('Content Security Policy'))).toEqual([]);
+      await page.goto(`${app.url}help/team-store.html`);
+      await page.getByRole('heading', { name: 'The server of a team store' }).waitFor();
+      expect(faults.filter((fault) => fault.includes('404'))).toEqual([]);
+    } finally {
+      await first.close();
+    }
+  });
+
   it('asks again for a password that was not to be kept, and forgets the account on request', async () => {
     const { page } = one;
     await page.goto(`${app.url}#/hand-over`);

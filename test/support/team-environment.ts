@@ -10,7 +10,7 @@ export function nodeEnvironment(over: Partial<TeamStoreEnvironment> = {}): TeamS
       await new Promise((resolve) => setTimeout(resolve, 5));
       signal.throwIfAborted();
     },
-    wasBlocked: () => false,
+    wasBlocked: () => Promise.resolve(false),
     stallMs: 2_000,
     ...over,
   };

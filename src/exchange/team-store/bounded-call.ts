@@ -61,7 +61,7 @@ export async function boundedCall(
     if (signal.aborted) throw signal.reason;
     if (error instanceof TeamStoreError) throw error;
     if (deadline.isPassed()) throw new TeamStoreError('stalled', error);
-    const isOurs = environment.wasBlocked(new URL(account.url).origin);
+    const isOurs = await environment.wasBlocked(new URL(account.url).origin);
     throw new TeamStoreError(isOurs ? 'blocked-by-policy' : 'unreachable', error);
   } finally {
     deadline.clear();

@@ -6,14 +6,16 @@ export interface TeamStoreEnvironment {
   chance(): number;
   /** Ends after `ms`, or when the link comes back; rejects when aborted. */
   pause(ms: number, signal: AbortSignal): Promise<void>;
-  /** Whether the page's own policy refused a call to this origin since the last question. */
-  wasBlocked(origin: string): boolean;
+  /** Whether the page's own policy refused the call to this origin that just failed. */
+  wasBlocked(origin: string): Promise<boolean>;
   /** Longest silence of a server, ms. */
   readonly stallMs: number;
 }
 
 /** Long enough for a slow server behind a slow link (our own choice). */
 const STALL_MS = 30_000;
+/** Chromium tells of a refused call within a few ms (tried). */
+const TOLD_LATER_MS = 100;
 
 export function browserEnvironment(): TeamStoreEnvironment {
   const blocked = new Set<string>();
@@ -25,7 +27,11 @@ export function browserEnvironment(): TeamStoreEnvironment {
     nowIso: () => new Date().toISOString(),
     chance: () => Math.random(),
     pause,
-    wasBlocked: (origin) => blocked.delete(origin),
+    async wasBlocked(origin) {
+      // The browser tells of it a moment after the call has failed.
+      await new Promise((resolve) => setTimeout(resolve, TOLD_LATER_MS));
+      return blocked.delete(origin);
+    },
     stallMs: STALL_MS,
   };
 }
