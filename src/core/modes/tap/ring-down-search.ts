@@ -2,6 +2,7 @@ import { linearColumnCount, parameterCount, parameterIndex } from './decay-model
 import type { Component, DecaySignal } from './decay-model.ts';
 import { bayesCost, recordCost } from './bayes-cost.ts';
 import { COARSE, FINE, LESS_COARSE, findTaps, isTapped } from './find-taps.ts';
+import { busiestStretch, stretchOf, wholeOf } from './busiest-stretch.ts';
 import { briefRingDowns, firstRingDowns } from './first-ring-downs.ts';
 import type { FirstRingDown } from './first-ring-downs.ts';
 import { ROUGH_ITERATIONS, fitDecays } from './fit-decays.ts';
@@ -17,8 +18,19 @@ const LOWEST_HZ = 0.4;
 const LARGEST_DAMPING_RATIO = 0.3;
 
 /** Finds taps, modes and tones of a tap record, alternately, each with what is known of the others. */
-export const searchRingDowns = (input: SearchInput): RingDownSearch | undefined =>
-  searchFromEach(input, firstRingDowns(input));
+export function searchRingDowns(input: SearchInput): RingDownSearch | undefined {
+  const busiest = busiestStretch(input.signal);
+  if (busiest === undefined) return searchFromEach(input, firstRingDowns(input));
+  const part = { ...input, signal: stretchOf(input.signal, busiest) };
+  const known = searchFromEach(part, firstRingDowns(part));
+  if (known === undefined) return undefined;
+  const noise = known.quietVariance;
+  if (!isTapped(part.signal, known.tapCount) || isHopeless(part.signal, known))
+    return refit(input.signal, [wholeOf(input.signal)], known.fit.components, noise);
+  // Taps are looked for in the whole record with the modes of its busiest part, then whatever else there is.
+  const whole = settle(input, { ...known, decays: [] }, noise, FINE);
+  return withTones(input.signal, prune(input, search(input, whole, noise, FINE), noise));
+}
 
 /** The same for a record whose motion hardly stands out of its noise. */
 export const searchBriefRingDowns = (input: SearchInput): RingDownSearch | undefined =>

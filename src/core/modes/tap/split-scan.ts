@@ -103,7 +103,6 @@ function newPass(basis: Basis, from: number, step: 1 | -1): Pass {
   const p = linearColumnCount(m);
   const state = new Float64Array(2 * m);
   for (let k = 0; k < m; k++) state[2 * k] = 1;
-  const length = (step === 1 ? basis.timeS.length - from : from) + 1;
   return {
     from,
     step,
@@ -112,15 +111,26 @@ function newPass(basis: Basis, from: number, step: 1 | -1): Pass {
     factor: new Float64Array(p * p),
     projected: new Float64Array(p * basis.y.length),
     left: 0,
-    residual: new Float64Array(length),
-    motion: new Float64Array(length),
+    residual: new Float64Array(1),
+    motion: new Float64Array(1),
   };
 }
 
 function scanned(basis: Basis, pass: Pass, count: number): StretchScan {
-  if (pass.count < count) advance(basis, pass, count);
+  if (pass.count < count) {
+    pass.residual = lengthened(pass.residual, count + 1, pass.step);
+    pass.motion = lengthened(pass.motion, count + 1, pass.step);
+    advance(basis, pass, count);
+  }
   const { residual, motion, from, step } = pass;
-  return step === 1 ? { origin: from, residual, motion } : { origin: 0, residual, motion };
+  return { origin: step === 1 ? from : from + 1 - residual.length, residual, motion };
+}
+
+/** The same values in more room: at its end for a pass forwards, at its beginning for one backwards. */
+function lengthened(values: Float64Array, length: number, step: 1 | -1): Float64Array {
+  const longer = new Float64Array(length);
+  longer.set(values, step === 1 ? 0 : length - values.length);
+  return longer;
 }
 
 /** A column's value that changes nothing any more; its square would still be a number. */
@@ -168,7 +178,7 @@ function advance(basis: Basis, pass: Pass, count: number): void {
     for (let a = 0; a < axisCount; a++) left += value[a]! * value[a]!;
     let ringing = 0;
     for (let r = steadyColumns * axisCount; r < p * axisCount; r++) ringing += projected[r]! * projected[r]!;
-    const at = step === 1 ? done + 1 : i;
+    const at = step === 1 ? done + 1 : residual.length - 2 - done;
     residual[at] = left;
     motion[at] = left + ringing;
     turnOn(turns, state, step === 1 ? i : i - 1, step);
