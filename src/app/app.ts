@@ -115,7 +115,8 @@ export async function createApp(parts: AppParts): Promise<App> {
       return parsed.ok ? parsed.value : undefined;
     };
   });
-  const readings = createReadings(store, parts.analysis, places, notices, screenText.readings);
+  const ownThresholds = () => settings.get().thresholds;
+  const readings = createReadings(store, parts.analysis, places, notices, screenText.readings, ownThresholds);
   const { lastProcedure, mounting } = settings.get();
   const flow = createTakeFlow({
     ...parts,

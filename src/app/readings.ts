@@ -6,7 +6,7 @@ import type { Outcome } from '../core/model/outcome.ts';
 import type { AnalysisResult } from '../core/model/pictures.ts';
 import type { Recording } from '../core/model/recording.ts';
 import type { Source } from '../core/model/source.ts';
-import type { judge } from '../core/survey/judge.ts';
+import type { judge, JudgeSettings } from '../core/survey/judge.ts';
 import type { Notices } from './notices.ts';
 import { textField, type PlaceIds, type Places, type Whereabouts } from './places.ts';
 import type { AnalysisPort, OpenedReading, ReadingFilter, ReadingSummary, StorePort } from './ports.ts';
@@ -26,6 +26,8 @@ export interface Readings {
   ): Promise<Outcome<AnalysisResult>>;
   keepResult(reading: string, analysis: Analysis): Promise<void>;
   judge(): Promise<JudgeReading>;
+  /** What the spot is, what was said of the loading in this reading, and the person's own thresholds. */
+  judgeSettings(opened: OpenedReading): Promise<JudgeSettings>;
   judgementOf(opened: OpenedReading, sources: readonly Source[]): Promise<Judgement>;
   /** Any entity; shows a notice with an undo when `said` tells what was done. */
   edit(entity: string, set: Readonly<Record<string, FieldValue>>, said?: string): Promise<void>;
@@ -64,6 +66,7 @@ export function createReadings(
   places: Places,
   notices: Notices,
   words: ReadingsWords,
+  ownThresholds: () => Readonly<Record<string, number>>,
 ): Readings {
   const loadJudge = async () => (await import('../core/survey/judge.ts')).judge;
   const mark = (ids: readonly string[], trashed: boolean) =>
@@ -84,10 +87,21 @@ export function createReadings(
       });
     },
     judge: loadJudge,
-    async judgementOf(opened, sources) {
+    async judgeSettings(opened) {
       const { place } = await readings.whereabouts(opened);
+      const { sensibleThresholds } = await import('../core/survey/thresholds.ts');
+      const loading = opened.entity.fields['presumedLoading'];
+      return {
+        thresholds: sensibleThresholds(ownThresholds()),
+        ...(place
+          ? { place: typeof loading === 'boolean' ? { ...place, presumedLoading: loading } : place }
+          : {}),
+      };
+    },
+    async judgementOf(opened, sources) {
+      const settings = await readings.judgeSettings(opened);
       const judgeNow = await loadJudge();
-      return judgeNow(currentAnalysis(opened), sources, opened.reading.circumstances, place ? { place } : {});
+      return judgeNow(currentAnalysis(opened), sources, opened.reading.circumstances, settings);
     },
     async edit(entity, set, said) {
       const before = await store.entity(entity);

@@ -24,6 +24,8 @@ export interface Settings {
   /** Cautions the person has confirmed, with the day. */
   readonly cautionsSeen: readonly string[];
   readonly offline: 'on' | 'off';
+  /** Thresholds of the verdicts that the person set; what is senseless is left out where they are used. */
+  readonly thresholds: Readonly<Record<string, number>>;
 }
 
 export const DEFAULT_SETTINGS: Settings = {
@@ -39,6 +41,7 @@ export const DEFAULT_SETTINGS: Settings = {
   lastSpotKind: null,
   cautionsSeen: [],
   offline: 'on',
+  thresholds: {},
 };
 
 export interface SettingsHolder extends Live<Settings> {
@@ -83,5 +86,13 @@ export function parseSettings(kept: unknown): Settings {
       ? given.cautionsSeen.filter((code): code is string => typeof code === 'string')
       : [],
     offline: word('offline', ['on', 'off']),
+    thresholds: numbersOf(given.thresholds),
   };
 }
+
+const numbersOf = (kept: unknown): Readonly<Record<string, number>> =>
+  Object.fromEntries(
+    Object.entries(typeof kept === 'object' && kept !== null ? kept : {}).filter(
+      (entry): entry is [string, number] => Number.isFinite(entry[1]),
+    ),
+  );

@@ -54,6 +54,9 @@ const PRESUMED_CROWD: Readonly<Partial<Record<Criterion, string>>> = {
   'aisc-dg11': 'One person walking at the pace that excites the floor most.',
 };
 
+/** What a criterion presumes to have been there, for asking whether it was. */
+export const presumedLoading = (criterion: Criterion): string | undefined => PRESUMED_CROWD[criterion];
+
 /** A level value in the unit of its trade: mm/s, µm, m/s². */
 export function levelValue(value: number, unit: LevelFinding['unit']): string {
   if (unit === 'm/s') return `${formatNumber(1000 * value, 2)} mm/s`;

@@ -211,6 +211,9 @@ export const readingText = {
     more: (n: number) => `Show ${n} more`,
     fewer: 'Show fewer',
     pick: 'Tap a mark on the ladder.',
+    faceValue: (verdict: string) => `${verdict} if what is seen is no folded image`,
+    ownLimits: 'Verdicts go by limits set on this phone, not by the usual ones.',
+    seeLimits: 'See the limits',
   },
   trying: {
     open: 'Try a change',
@@ -317,6 +320,10 @@ export const readingText = {
     displacement: 'Peak displacement',
     band: (band: string) => `In the band seen, ${band}.`,
     criteria: 'Against published guidance',
+    noSpot: 'Name the spot, and these are held against published guidance for what it is.',
+    noClass: 'The guidance needs to know more of the spot.',
+    sayClass: 'Say what it is',
+    wasLoaded: 'The loading that the guidance presumes was there during this reading',
     head: ['Quantity', 'Value'],
   },
   doubts: {

@@ -25,7 +25,7 @@ async function bench() {
   const notices = createNotices();
   const refused = () => Promise.resolve(failure('no-taps'));
   const analysis = { analyse: refused, checkPhone: refused };
-  const readings = createReadings(store, analysis, places, notices, words);
+  const readings = createReadings(store, analysis, places, notices, words, () => ({}));
   const parse = (given: unknown) => {
     const parsed = parseSource(given);
     return parsed.ok ? parsed.value : undefined;

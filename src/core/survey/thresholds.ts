@@ -1,3 +1,4 @@
+import type { Interval } from '../model/interval.ts';
 import type { Thresholds } from '../model/thresholds.ts';
 
 export const DEFAULT_THRESHOLDS: Thresholds = {
@@ -17,27 +18,44 @@ export const DEFAULT_THRESHOLDS: Thresholds = {
   wantedTransmissibilityRatio: 0.125,
 };
 
+/** What each may be set to. */
+export const THRESHOLD_BOUNDS: Readonly<Record<keyof Thresholds, Interval>> = {
+  coincidentRatio: [0, 0.2],
+  apartBelowRatio: [0.3, 0.95],
+  apartAboveRatio: [1.05, 3],
+  stoppedRunningRatio: [0, 0.3],
+  specialistAmplificationRatio: [1, 100],
+  wantedAmplificationRatio: [1, 100],
+  wantedTransmissibilityRatio: [0.01, 0.9],
+};
+
+export const THRESHOLD_KEYS = Object.keys(THRESHOLD_BOUNDS) as readonly (keyof Thresholds)[];
+
+const isWithin = (key: keyof Thresholds, value: unknown): value is number =>
+  typeof value === 'number' && value >= THRESHOLD_BOUNDS[key][0] && value <= THRESHOLD_BOUNDS[key][1];
+
+const reachesIntoApart = ({ coincidentRatio, apartBelowRatio, apartAboveRatio }: Thresholds): boolean =>
+  coincidentRatio > 1 - apartBelowRatio || coincidentRatio > apartAboveRatio - 1;
+
 /**
  * Defaults with what the person set.
  * @throws RangeError when a threshold makes no sense, naming it
  */
 export function thresholdsWith(own: Partial<Thresholds> = {}): Thresholds {
   const all = { ...DEFAULT_THRESHOLDS, ...own };
-  const bounds: Readonly<Record<keyof Thresholds, readonly [number, number]>> = {
-    coincidentRatio: [0, 0.2],
-    apartBelowRatio: [0.3, 0.95],
-    apartAboveRatio: [1.05, 3],
-    stoppedRunningRatio: [0, 0.3],
-    specialistAmplificationRatio: [1, 100],
-    wantedAmplificationRatio: [1, 100],
-    wantedTransmissibilityRatio: [0.01, 0.9],
-  };
-  for (const key of Object.keys(bounds) as (keyof Thresholds)[]) {
-    const [low, high] = bounds[key];
-    if (!(all[key] >= low && all[key] <= high))
-      throw new RangeError(`${key} must be ${low} to ${high}, got ${all[key]}`);
+  for (const key of THRESHOLD_KEYS) {
+    const [low, high] = THRESHOLD_BOUNDS[key];
+    if (!isWithin(key, all[key])) throw new RangeError(`${key} must be ${low} to ${high}, got ${all[key]}`);
   }
-  if (all.coincidentRatio > 1 - all.apartBelowRatio || all.coincidentRatio > all.apartAboveRatio - 1)
+  if (reachesIntoApart(all))
     throw new RangeError(`coincidentRatio ${all.coincidentRatio} reaches into apart`);
   return all;
+}
+
+/** Of what was kept as the person's own thresholds, what can be used: a kept setting must never keep a reading from opening. */
+export function sensibleThresholds(kept: Readonly<Record<string, unknown>>): Partial<Thresholds> {
+  const own: Partial<Thresholds> = Object.fromEntries(
+    THRESHOLD_KEYS.filter((key) => isWithin(key, kept[key])).map((key) => [key, kept[key]]),
+  );
+  return reachesIntoApart({ ...DEFAULT_THRESHOLDS, ...own }) ? {} : own;
 }

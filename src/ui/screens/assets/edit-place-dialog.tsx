@@ -2,14 +2,14 @@ import { useState } from 'preact/hooks';
 import type { App } from '../../../app/app.ts';
 import { placeOf, textField } from '../../../app/places.ts';
 import type { Entity, FieldValue } from '../../../core/model/fact.ts';
-import { SPOT_KINDS, type Place } from '../../../core/model/place.ts';
+import { SPOT_KINDS } from '../../../core/model/place.ts';
 import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
 import { Button } from '../../components/button.tsx';
 import { Dialog } from '../../components/dialog.tsx';
 import { SelectField, TextField } from '../../components/field.tsx';
 import { useLoaded } from '../../use-loaded.ts';
-import { SpotDetails, type Details } from './spot-details.tsx';
+import { detailFields, detailsOf, SpotDetails, type Details } from './spot-details.tsx';
 
 const text = officeText.places;
 
@@ -94,16 +94,3 @@ export function EditPlaceDialog(props: {
     </Dialog>
   );
 }
-
-const detailsOf = ({ machine, building, floorUse }: Place): Details => ({
-  ...(machine ? { machine } : {}),
-  ...(building ? { building } : {}),
-  ...(floorUse ? { floorUse } : {}),
-});
-
-/** As fields of an edit: what is no longer given is cleared. */
-const detailFields = ({ machine, building, floorUse }: Details): Record<string, FieldValue> => ({
-  machine: machine && Object.keys(machine).length > 0 ? { ...machine } : null,
-  building: building ?? null,
-  floorUse: floorUse ?? null,
-});

@@ -37,13 +37,12 @@ export async function loadAsset(app: App, asset: Asset): Promise<LoadedAsset> {
 
 async function toAssetReading(app: App, opened: OpenedReading): Promise<AssetReading> {
   const { spot } = currentPlaceIds(opened);
-  const { place } = await app.readings.whereabouts(opened);
   return {
     id: opened.reading._id,
     recordedAt: opened.reading.recordedAt,
     ...(spot ? { spot } : {}),
     analysis: currentAnalysis(opened),
     circumstances: opened.reading.circumstances,
-    ...(place ? { settings: { place } } : {}),
+    settings: await app.readings.judgeSettings(opened),
   };
 }

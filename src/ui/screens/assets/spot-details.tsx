@@ -1,4 +1,5 @@
 /** What the published criteria need to know of a spot, asked by its kind; all of it optional. */
+import type { FieldValue } from '../../../core/model/fact.ts';
 import type { MachinePlace, Place, SpotKind } from '../../../core/model/place.ts';
 import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
@@ -106,3 +107,16 @@ function Words<T extends string>(props: {
     />
   );
 }
+
+export const detailsOf = ({ machine, building, floorUse }: Place): Details => ({
+  ...(machine ? { machine } : {}),
+  ...(building ? { building } : {}),
+  ...(floorUse ? { floorUse } : {}),
+});
+
+/** As fields of an edit: what is no longer given is cleared. */
+export const detailFields = ({ machine, building, floorUse }: Details): Record<string, FieldValue> => ({
+  machine: machine && Object.keys(machine).length > 0 ? { ...machine } : null,
+  building: building ?? null,
+  floorUse: floorUse ?? null,
+});

@@ -9,13 +9,13 @@ async function openView(app: App, id: string): Promise<OpenedView> {
   // kept but not understood: made by a newer version
   if (!opened) return { state: (await app.store.fact(id)) ? 'newer' : 'missing' };
   const where = await app.readings.whereabouts(opened);
-  const [sources, photos, history, judge] = await Promise.all([
+  const [sources, photos, history, judge, settings] = await Promise.all([
     app.sources.validFor(where),
     app.readings.photos(id),
     app.readings.history(id),
     app.readings.judge(),
+    app.readings.judgeSettings(opened),
   ]);
-  const settings = where.place ? { place: where.place } : {};
   return {
     state: 'open',
     view: {
@@ -25,6 +25,8 @@ async function openView(app: App, id: string): Promise<OpenedView> {
       results: opened.results,
       place: where.names,
       ...(where.spot ? { spotId: where.spot } : {}),
+      ...(settings.place ? { spotPlace: settings.place } : {}),
+      hasOwnLimits: Object.keys(settings.thresholds ?? {}).length > 0,
       sources,
       photos,
       history,

@@ -4,17 +4,21 @@ import { criterionName, levelSentence } from '../../../text/levels.ts';
 import { formatDisplacement, formatFrequencyRange, formatVelocity } from '../../../text/quantity.ts';
 import { readingText } from '../../../text/reading-screen.ts';
 import { FactRows } from './fact-rows.tsx';
+import { LevelQuestions } from './level-questions.tsx';
 import styles from './levels-section.module.css';
 import { saidMps2, type ReadingUnits } from '../../../text/reading-units.ts';
+import type { ReadingUseCases, ReadingView } from './reading-use-cases.ts';
 import { Section } from './section.tsx';
 
 /** How strong the shaking is, and what published guidance says to that; never a pass on half a band. */
 export function LevelsSection(props: {
+  readonly view: ReadingView;
+  readonly cases: ReadingUseCases;
   readonly analysis: Analysis;
   readonly judgement: Judgement;
   readonly units: ReadingUnits;
 }) {
-  const { analysis, judgement, units } = props;
+  const { view, cases, analysis, judgement, units } = props;
   const words = readingText.levels;
   const { levels } = analysis;
   if (!levels)
@@ -54,6 +58,7 @@ export function LevelsSection(props: {
         {levels.leftOutTones ? words.leftOut : ''}
       </p>
       <Findings findings={judgement.levels} />
+      <LevelQuestions view={view} cases={cases} judgement={judgement} />
     </Section>
   );
 }

@@ -88,7 +88,9 @@ function SeparationCard(props: {
           verdict={separation.verdict}
           word={`${sentenceCase(verdictWord(separation.verdict))}.`}
         />{' '}
-        {sentenceCase(against)} {nearnessWords(separation)}.
+        {sentenceCase(against)} {nearnessWords(separation)}
+        {separation.atFaceValue ? `: ${readingText.pair.faceValue(verdictWord(separation.atFaceValue))}` : ''}
+        .
       </p>
       <dl class={styles.figures}>
         <div>

@@ -1,6 +1,6 @@
 import { useState } from 'preact/hooks';
 import type { Analysis } from '../../../core/model/analysis.ts';
-import type { Judgement, Verdict } from '../../../core/model/judgement.ts';
+import type { Judgement, Separation, Verdict } from '../../../core/model/judgement.ts';
 import { formatInterval } from '../../../text/number.ts';
 import { formatFrequencyRange } from '../../../text/quantity.ts';
 import { readingText } from '../../../text/reading-screen.ts';
@@ -61,12 +61,16 @@ export function PairList(props: PairListProps) {
 
 type RowProps = PairListProps & { readonly row: PairRow };
 
+/** Where the fold is undecided, the verdict if there is none: what a person would plan by. */
+const faceValue = ({ atFaceValue }: Separation): string =>
+  atFaceValue ? `, ${readingText.pair.faceValue(verdictWord(atFaceValue))}` : '';
+
 /** What the row says after the forcing's frequency: the pair, or why there is none. */
 function rowDetail({ row, analysis, judgement, units }: RowProps, verdict: Verdict | undefined): string {
   const { separation, unpaired } = row;
   if (verdict === 'blind') return `. ${unpairedText('blind').meaning}`;
   if (separation)
-    return `, ${readingText.pair.rowDetail(formatInterval(separation.ratio), saidHz(units, separation.modeHz), timesText(separation.amplification.interval))}`;
+    return `${faceValue(separation)}, ${readingText.pair.rowDetail(formatInterval(separation.ratio), saidHz(units, separation.modeHz), timesText(separation.amplification.interval))}`;
   const match = judgement.toneMatches.find(({ forcingIndex }) => forcingIndex === row.forcingIndex);
   const tone = match && analysis.tones[match.toneIndex];
   if (tone) return `, ${readingText.pair.toneFits(saidHz(units, tone.frequencyHz), match.folded)}`;

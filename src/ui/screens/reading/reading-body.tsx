@@ -92,7 +92,7 @@ export function ReadingBody({ view, cases, links, units, spotDialog }: BodyProps
         <ConflictChoice view={view} cases={cases} />
         <div class={styles.columns}>
           <DoubtsSection analysis={analysis} judgement={judgement} />
-          <LevelsSection analysis={analysis} judgement={judgement} units={units} />
+          <LevelsSection view={view} cases={cases} analysis={analysis} judgement={judgement} units={units} />
         </div>
         <PlotSections view={view} cases={cases} units={units} />
         <div class={styles.columns}>

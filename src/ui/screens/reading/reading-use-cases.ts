@@ -3,6 +3,7 @@ import type { EditFact, Entity, FieldValue, ReadingFact, ResultFact } from '../.
 import type { Judgement } from '../../../core/model/judgement.ts';
 import type { Outcome } from '../../../core/model/outcome.ts';
 import type { AnalysisResult } from '../../../core/model/pictures.ts';
+import type { Place } from '../../../core/model/place.ts';
 import type { Recording } from '../../../core/model/recording.ts';
 import type { Source } from '../../../core/model/source.ts';
 
@@ -27,6 +28,10 @@ export interface ReadingView {
   readonly place: { readonly site?: string; readonly asset?: string; readonly spot?: string };
   /** The spot it belongs to now. */
   readonly spotId?: string;
+  /** What that spot is, and what was said of the loading in this reading. */
+  readonly spotPlace?: Place;
+  /** Verdicts go by limits that the person set on this phone. */
+  readonly hasOwnLimits?: boolean;
   /** Sources valid for this reading. */
   readonly sources: readonly NamedSource[];
   readonly photos: readonly ReadingPhoto[];
