@@ -3,7 +3,16 @@ import { PROCEDURES, type Procedure } from '../core/model/analysis.ts';
 import type { EntityKind } from '../core/model/fact.ts';
 import { SOURCE_KINDS, type SourceKind } from '../core/model/source.ts';
 
-export const PHONE_PARTS = ['check', 'storage', 'about', 'privacy', 'cautions', 'licences', 'log'] as const;
+export const PHONE_PARTS = [
+  'check',
+  'storage',
+  'limits',
+  'about',
+  'privacy',
+  'cautions',
+  'licences',
+  'log',
+] as const;
 export type PhonePart = (typeof PHONE_PARTS)[number];
 
 export type Route =

@@ -253,11 +253,24 @@ const english = {
     parts: {
       check: { title: 'Check of this phone', note: 'What its sensor can see, in ten seconds' },
       storage: { title: 'Storage and back-up', note: 'Where readings are kept, offline use' },
+      limits: {
+        title: 'Limits of the verdicts',
+        note: 'When it is coincident, close, apart; where each comes from',
+      },
       about: { title: 'About', note: 'What it is, versions' },
       privacy: { title: 'Privacy', note: 'What leaves the phone, and when' },
       cautions: { title: 'Cautions', note: 'Where hands or lives are near' },
       licences: { title: 'Licences', note: 'What is inside' },
       log: { title: 'Error log', note: 'To copy into a report' },
+    },
+    limits: {
+      lead: 'Verdicts go by these. They are kept on this phone and apply to every reading opened on it, old ones too.',
+      usually: (value: string) => `Usually ${value}.`,
+      outside: (low: string, high: string) => `Use a number from ${low} to ${high}.`,
+      clash: 'Coincident would reach into apart, so the usual limits are used.',
+      own: 'Readings say that the limits are your own.',
+      usual: 'These are the usual limits.',
+      reset: 'Back to the usual limits',
     },
     check: {
       lead: 'Lay the phone on something heavy and still, a table or a floor. Keep your hands off for ten seconds.',

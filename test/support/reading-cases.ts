@@ -11,6 +11,7 @@ export const noLinks: ReadingLinks = {
   source: (id) => `#/source/${id}`,
   newSource: (id) => `#/source/new?reading=${id}`,
   pace: (hz) => `#/pace?hz=${hz}`,
+  limits: '#/phone/limits',
   handOver: (id) => `#/hand-over?reading=${id}`,
 };
 

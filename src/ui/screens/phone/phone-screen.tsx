@@ -7,6 +7,7 @@ import { screenText } from '../../../text/screens.ts';
 import { Choice } from '../../components/choice.tsx';
 import { Page } from '../../components/page.tsx';
 import { Row, Rows } from '../../components/rows.tsx';
+import { Later } from '../../later.tsx';
 import { useLive } from '../../use-live.ts';
 import { AboutPart, CautionsPart, LicencesPart, PrivacyPart } from './about-parts.tsx';
 import { CheckPart } from './check-part.tsx';
@@ -35,6 +36,10 @@ function Part({ app, part }: { readonly app: App; readonly part: PhonePart }) {
       return <CheckPart app={app} />;
     case 'storage':
       return <StoragePart app={app} />;
+    case 'limits':
+      return (
+        <Later load={() => import('./limits-part.tsx')}>{({ LimitsPart }) => <LimitsPart app={app} />}</Later>
+      );
     case 'about':
       return <AboutPart app={app} />;
     case 'privacy':
@@ -64,7 +69,7 @@ function Overview({ app }: { readonly app: App }) {
   );
   return (
     <Page title={screenText.tabs.phone}>
-      {rows(['check', 'storage'], text.parts.check.title)}
+      {rows(['check', 'storage', 'limits'], text.parts.check.title)}
       <section class="stack stack-loose">
         <Choice
           legend={text.theme}

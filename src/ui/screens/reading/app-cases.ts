@@ -60,5 +60,6 @@ export const readingLinks = (app: App): ReadingLinks => ({
   newSource: (reading) => app.navigation.href({ screen: 'source', id: 'new', reading }),
   pace: (frequencyHz) =>
     app.navigation.href({ screen: 'pace', frequencyHz: Number(frequencyHz.toPrecision(4)) }),
+  limits: app.navigation.href({ screen: 'phone', part: 'limits' }),
   handOver: (reading) => app.navigation.href({ screen: 'hand-over', reading }),
 });

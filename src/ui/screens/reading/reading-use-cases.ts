@@ -80,6 +80,8 @@ export interface ReadingLinks {
   readonly source: (id: string) => string;
   readonly newSource: (readingId: string) => string;
   readonly handOver: (readingId: string) => string;
+  /** The limits of the verdicts. */
+  readonly limits: string;
   /** A pace to walk by, for a structure at this frequency. */
   readonly pace: (frequencyHz: number) => string;
 }

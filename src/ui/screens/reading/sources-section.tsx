@@ -32,6 +32,11 @@ export function SourcesSection(props: {
           ))}
         </Rows>
       )}
+      {view.hasOwnLimits && (
+        <p class="note">
+          {readingText.pair.ownLimits} <a href={links.limits}>{readingText.pair.seeLimits}</a>
+        </p>
+      )}
       <div class="no-print">
         <LinkButton href={links.newSource(view.reading._id)}>{words.add}</LinkButton>
       </div>
