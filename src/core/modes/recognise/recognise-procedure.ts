@@ -25,6 +25,8 @@ const TRACK_SCATTER_SHARE = 0.08;
 const LEAST_LEFT_SHARE = 1e-3;
 /** Longest stretch looked at, s: recognition must not cost more than the analysis. */
 const LOOKED_AT_S = 300;
+/** ... and to contradict a person, s. */
+const CHECKED_S = 60;
 /** Peaks narrower than this many half-power bandwidths are lines as far as the record can tell. */
 const LINE_BANDWIDTHS = 1.5;
 
@@ -46,9 +48,9 @@ export function recogniseProcedure(conditioned: ConditionedSignal): Procedure {
 export function otherProcedure(conditioned: ConditionedSignal, asked: Procedure): Procedure | undefined {
   // A coast-down asks for a falling line itself and refuses records without.
   if (asked === 'coastdown') return undefined;
-  if (asked !== 'tap' && isStruck(conditioned)) return 'tap';
-  if (asked === 'tap' && isStruck(conditioned)) return undefined;
-  if (isRunningDown(conditioned)) return 'coastdown';
+  if (asked === 'tap' ? isStruck(conditioned) : isStruck(conditioned, CHECKED_S))
+    return asked === 'tap' ? undefined : 'tap';
+  if (isRunningDown(conditioned, CHECKED_S)) return 'coastdown';
   if (asked !== 'tap') return undefined;
   return strongestIsLine(conditioned) ? 'running' : 'ambient';
 }
@@ -65,15 +67,15 @@ export function isAtRest(conditioned: ConditionedSignal): boolean {
   });
 }
 
-function lookedAt(conditioned: ConditionedSignal): Float64Array[] {
+function lookedAt(conditioned: ConditionedSignal, longestS = LOOKED_AT_S): Float64Array[] {
   const { grid } = conditioned;
-  const most = Math.round(LOOKED_AT_S / grid.periodS);
+  const most = Math.round(longestS / grid.periodS);
   return grid.accelerationMps2.map((axis) => (axis.length > most ? axis.subarray(0, most) : axis));
 }
 
-function isStruck(conditioned: ConditionedSignal): boolean {
+function isStruck(conditioned: ConditionedSignal, longestS?: number): boolean {
   const { periodS } = conditioned.grid;
-  const axes = lookedAt(conditioned);
+  const axes = lookedAt(conditioned, longestS);
   const left = withoutSteadyLines(axes, periodS);
   // Next to nothing but lines: what is left is the error of taking them off.
   if (energyOf(left) < LEAST_LEFT_SHARE * energyOf(axes)) return false;
@@ -88,9 +90,9 @@ function isStruck(conditioned: ConditionedSignal): boolean {
 const energyOf = (axes: readonly Float64Array[]): number =>
   axes.reduce((sum, axis) => sum + axis.reduce((s, v) => s + v * v, 0), 0);
 
-function isRunningDown(conditioned: ConditionedSignal): boolean {
+function isRunningDown(conditioned: ConditionedSignal, longestS?: number): boolean {
   const { grid, facts } = conditioned;
-  const axes = lookedAt(conditioned);
+  const axes = lookedAt(conditioned, longestS);
   const length = axes[0]?.length ?? 0;
   const cut = { ...grid, accelerationMps2: axes, present: grid.present.subarray(0, length) };
   const track = trackLine(cut, 0.48 * facts.rateHz, 'falling');
