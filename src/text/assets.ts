@@ -100,5 +100,6 @@ const WHOSE: Readonly<Record<ToneOrigin['whose'], string>> = {
   machine: 'Gone with the machine off: it is this machine’s.',
   elsewhere: 'Still there with the machine off: it comes from elsewhere.',
   both: 'Weaker with the machine off: part of it comes from elsewhere.',
+  unknown: 'The reading with the machine off could not have shown it.',
 };
 export const toneOriginSentence = (origin: ToneOrigin): string => WHOSE[origin.whose];

@@ -47,7 +47,7 @@ const FOLDS: Readonly<Record<FoldVerdict, string>> = {
 };
 
 export const readingText = {
-  back: 'Readings',
+  back: 'Back',
   loading: 'Opening the reading…',
   missing: 'This reading is not on this phone.',
   missingNote: 'It may be on another phone or laptop of the team, or it was erased here.',
@@ -306,6 +306,15 @@ export const readingText = {
     head: ['Frequency', 'Measured', 'Fitted'],
     measured: 'measured',
     fitted: 'fitted',
+  },
+  origins: {
+    title: 'Whose vibration it is',
+    take: 'Take a reading at this spot with the machine off, and each tone is told to be this machine’s or to come from elsewhere.',
+    against: (isRunning: boolean, when: string) =>
+      isRunning
+        ? `Against the reading with the machine off, ${when}.`
+        : `Against the reading with the machine running, ${when}.`,
+    open: 'Open it',
   },
   levels: {
     title: 'How strong the shaking is',

@@ -11,6 +11,7 @@ export const noLinks: ReadingLinks = {
   source: (id) => `#/source/${id}`,
   newSource: (id) => `#/source/new?reading=${id}`,
   pace: (hz) => `#/pace?hz=${hz}`,
+  reading: (id) => `#/reading/${id}`,
   limits: '#/phone/limits',
   handOver: (id) => `#/hand-over?reading=${id}`,
 };
@@ -83,6 +84,7 @@ export function exampleCases(name: string, delayMs = 30): ExampleCases {
         value: { analysis: { ...analysis, settings, modes }, pictures: example.pictures() },
       };
     },
+    counterpart: async () => undefined,
     async keepAnalysis(id, analysis) {
       asked.push({ what: 'keepAnalysis', with: id });
       change({

@@ -40,6 +40,6 @@ export interface ToneOrigin {
   readonly toneIndex: number;
   /** Amplitude with the machine off over amplitude running; 0 where nothing was found. */
   readonly remainingRatio: number;
-  /** `machine`: gone when it is off; `elsewhere`: still there; `both`: part of it. */
-  readonly whose: 'machine' | 'elsewhere' | 'both';
+  /** `machine`: gone when it is off; `elsewhere`: still there; `both`: part of it; `unknown`: the other reading could not have shown it. */
+  readonly whose: 'machine' | 'elsewhere' | 'both' | 'unknown';
 }

@@ -67,20 +67,49 @@ export function toneMatches(analysis: Analysis, forcings: readonly Forcing[]): r
 export const GONE_SHARE = 0.2;
 export const REMAINING_SHARE = 0.8;
 
-/** Machine running against machine off, same spot: whose vibration it is. Tones of the running reading are looked for in the other. */
+/** A neighbouring machine's speed wanders this much between two readings with changing load (common practice, no source). */
+const OFF_DRIFT_RATIO = 0.005;
+
+/**
+ * A steady line below so many standard deviations is not told from the sensor's noise for sure (our own bound). The standard deviation
+ * of its amplitude is noise density over root of duration (Rife & Boorstyn, IEEE Trans. Inf. Theory 20 (1974) 591).
+ */
+const SURE_LINE_SDS = 4;
+
+/** Whether the other reading would have shown what is left of this tone, had it been a fifth of it. */
+function wouldShow(tone: Tone, expectedHz: readonly number[], off: Analysis): boolean {
+  const { usableBandHz, noiseMps2PerRootHz, durationS } = off.recording;
+  const smallest = (SURE_LINE_SDS * Math.max(0, ...noiseMps2PerRootHz)) / Math.sqrt(durationS);
+  const isInside = expectedHz.every((hz) => hz >= usableBandHz[0] && hz <= usableBandHz[1]);
+  return isInside && GONE_SHARE * tone.amplitudeMps2 >= smallest;
+}
+
+/** Where the tone would appear in a reading sampled at another rate: a true frequency stays, an image moves. */
+function expectedIn(tone: Tone, rateHz: number): readonly number[] {
+  if (tone.fold.verdict === 'direct') return [tone.frequencyHz];
+  const asSeen = tone.fold.verdict === 'folded' ? [] : [tone.frequencyHz];
+  return [...asSeen, ...tone.fold.candidatesHz].map((hz) => Math.abs(hz - rateHz * Math.round(hz / rateHz)));
+}
+
+/**
+ * Machine running against machine off, same spot: whose vibration it is. Tones of the running reading are looked for in the other;
+ * `unknown` where that one could not have shown them.
+ */
 export function toneOrigins(running: Analysis, off: Analysis): readonly ToneOrigin[] {
   return running.tones.map((tone, toneIndex) => {
     const reach =
       Math.max(toneReachHz(tone, running.recording.durationS), 0.5 / off.recording.durationS) +
       OFF_DRIFT_RATIO * tone.frequencyHz;
-    const same = off.tones.filter((other) => Math.abs(other.frequencyHz - tone.frequencyHz) <= reach);
+    const expected = expectedIn(tone, off.recording.rateHz);
+    const same = off.tones.filter((other) =>
+      expected.some((hz) => Math.abs(other.frequencyHz - hz) <= reach),
+    );
     const left = Math.max(0, ...same.map((other) => other.amplitudeMps2));
     const remainingRatio = left / tone.amplitudeMps2;
+    if (same.length === 0 && !wouldShow(tone, expected, off))
+      return { toneIndex, remainingRatio, whose: 'unknown' };
     const whose =
       remainingRatio < GONE_SHARE ? 'machine' : remainingRatio > REMAINING_SHARE ? 'elsewhere' : 'both';
     return { toneIndex, remainingRatio, whose };
   });
 }
-
-/** A neighbouring machine's speed wanders this much between two readings with changing load (common practice, no source). */
-const OFF_DRIFT_RATIO = 0.005;

@@ -48,4 +48,23 @@ describe('machine running against machine off', () => {
     expect(toneOrigins(running, off).map(({ whose }) => whose)).toEqual(['machine', 'elsewhere', 'both']);
     expect(toneOrigins(running, off)[2]!.remainingRatio).toBeCloseTo(0.5, 9);
   });
+
+  it('looks for a folded image where the other sampling rate puts it', () => {
+    // 49.4 Hz shows at 10.6 Hz when sampled at 60 Hz, at 0.6 Hz when sampled at 50 Hz.
+    const folded = { fold: { verdict: 'folded' as const, candidatesHz: [49.4] } };
+    const running = analysisOf('running', { tones: [toneAt(10.6, 1, folded)] });
+    const slower = { rateHz: 50, usableBandHz: [0.3, 24] as const };
+    const still = analysisOf('running', { tones: [toneAt(0.6, 0.95, folded)], recording: slower });
+    const gone = analysisOf('running', { tones: [toneAt(10.6, 0.95)], recording: slower });
+    expect(toneOrigins(running, still)[0]!.whose).toBe('elsewhere');
+    expect(toneOrigins(running, gone)[0]!.whose).toBe('machine');
+  });
+
+  it('does not call gone what the other reading could not have shown', () => {
+    const running = analysisOf('running', { tones: [toneAt(24.7, 1), toneAt(10, 0.004)] });
+    const blind = analysisOf('running', { recording: { usableBandHz: [0.5, 20] } });
+    expect(toneOrigins(running, blind).map(({ whose }) => whose)).toEqual(['unknown', 'unknown']);
+    // A fifth of 0.004 m/s² is below what 0.002 m/s²/root Hz leave to be told in 60 s (0.001 m/s²).
+    expect(toneOrigins(running, analysisOf('running'))[1]!.whose).toBe('unknown');
+  });
 });

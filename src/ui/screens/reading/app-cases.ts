@@ -1,8 +1,14 @@
 import type { App } from '../../../app/app.ts';
-import { currentPlaceIds } from '../../../app/readings.ts';
+import { currentAnalysis, currentPlaceIds } from '../../../app/readings.ts';
 import { readingText } from '../../../text/reading-screen.ts';
 import { photoJpeg } from './photo-jpeg.ts';
-import type { OpenedView, ReadingLinks, ReadingUseCases } from './reading-use-cases.ts';
+import type {
+  Counterpart,
+  OpenedView,
+  ReadingLinks,
+  ReadingUseCases,
+  ReadingView,
+} from './reading-use-cases.ts';
 
 async function openView(app: App, id: string): Promise<OpenedView> {
   const opened = await app.readings.open(id);
@@ -35,10 +41,31 @@ async function openView(app: App, id: string): Promise<OpenedView> {
   };
 }
 
+/** More readings of a spot than these are not opened for one answer. */
+const MOST_OPENED = 8;
+const OTHER_STATE: Readonly<Record<string, string>> = { running: 'off', off: 'running' };
+
+async function counterpartOf(app: App, { reading, spotId }: ReadingView): Promise<Counterpart | undefined> {
+  const wanted = OTHER_STATE[reading.circumstances.machineState];
+  if (spotId === undefined || wanted === undefined) return undefined;
+  const away = (recordedAt: string) => Math.abs(Date.parse(recordedAt) - Date.parse(reading.recordedAt));
+  const visits = (await app.places.visits(spotId))
+    .filter(({ procedure }) => procedure === 'running' || procedure === 'ambient')
+    .filter(({ id, practice }) => id !== reading._id && practice === reading.practice)
+    .sort((a, b) => away(a.recordedAt) - away(b.recordedAt));
+  for (const { id, recordedAt } of visits.slice(0, MOST_OPENED)) {
+    const opened = await app.readings.open(id);
+    if (opened?.reading.circumstances.machineState === wanted)
+      return { id, recordedAt, analysis: currentAnalysis(opened) };
+  }
+  return undefined;
+}
+
 export const readingUseCases = (app: App): ReadingUseCases => ({
   open: (id) => openView(app, id),
   subscribe: (listener) => app.store.onChange((what) => what === 'facts' && listener()),
   analyse: (view, settings, signal) => app.readings.analyse(view.recording, settings, signal),
+  counterpart: (view) => counterpartOf(app, view),
   keepAnalysis: (id, analysis) => app.readings.keepResult(id, analysis),
   edit: (id, set) => app.readings.edit(id, set),
   trash: (id) => app.readings.trash([id]),
@@ -60,6 +87,7 @@ export const readingLinks = (app: App): ReadingLinks => ({
   newSource: (reading) => app.navigation.href({ screen: 'source', id: 'new', reading }),
   pace: (frequencyHz) =>
     app.navigation.href({ screen: 'pace', frequencyHz: Number(frequencyHz.toPrecision(4)) }),
+  reading: (id) => app.navigation.href({ screen: 'reading', id }),
   limits: app.navigation.href({ screen: 'phone', part: 'limits' }),
   handOver: (reading) => app.navigation.href({ screen: 'hand-over', reading }),
 });

@@ -24,6 +24,7 @@ import { SensorSection } from './sensor-section.tsx';
 import { SourcesSection } from './sources-section.tsx';
 import { SpecialistCall } from './specialist-call.tsx';
 import { StateStrips } from './state-strips.tsx';
+import { ToneOriginSection } from './tone-origin-section.tsx';
 import { VerdictLead } from './verdict-lead.tsx';
 import { whenText } from './when-text.ts';
 
@@ -59,7 +60,8 @@ export function ReadingBody({ view, cases, links, units, spotDialog }: BodyProps
         <span class={styles.over}>
           <PlaceLine view={view} links={links} />
           <span>
-            {readingKind(analysis)} · {whenText(reading.recordedAt, reading.timeZone)}
+            {readingKind(analysis)} ·{' '}
+            <span class={styles.when}>{whenText(reading.recordedAt, reading.timeZone)}</span>
           </span>
         </span>
       }
@@ -94,6 +96,7 @@ export function ReadingBody({ view, cases, links, units, spotDialog }: BodyProps
           <DoubtsSection analysis={analysis} judgement={judgement} />
           <LevelsSection view={view} cases={cases} analysis={analysis} judgement={judgement} units={units} />
         </div>
+        <ToneOriginSection view={view} analysis={analysis} cases={cases} links={links} units={units} />
         <PlotSections view={view} cases={cases} units={units} />
         <div class={styles.columns}>
           <SourcesSection view={view} judgement={judgement} links={links} />

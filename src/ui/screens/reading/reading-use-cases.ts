@@ -50,6 +50,13 @@ export type OpenedView =
   /** Made by a newer version of the program: kept, forwarded, not readable here. */
   | { readonly state: 'newer' };
 
+/** A reading of the same spot with the machine in the other state, for telling whose vibration it is. */
+export interface Counterpart {
+  readonly id: string;
+  readonly recordedAt: string;
+  readonly analysis: Analysis;
+}
+
 /** What the reading screen can ask for. */
 export interface ReadingUseCases {
   open(id: string): Promise<OpenedView>;
@@ -62,6 +69,8 @@ export interface ReadingUseCases {
     signal: AbortSignal,
   ): Promise<Outcome<AnalysisResult>>;
   keepAnalysis(id: string, analysis: Analysis): Promise<void>;
+  /** The nearest in time that was taken with the machine off (of a running reading) or running (of one with the machine off). */
+  counterpart(view: ReadingView): Promise<Counterpart | undefined>;
   edit(id: string, set: Readonly<Record<string, FieldValue>>): Promise<void>;
   trash(id: string): Promise<void>;
   restore(id: string): Promise<void>;
@@ -80,6 +89,7 @@ export interface ReadingLinks {
   readonly source: (id: string) => string;
   readonly newSource: (readingId: string) => string;
   readonly handOver: (readingId: string) => string;
+  readonly reading: (readingId: string) => string;
   /** The limits of the verdicts. */
   readonly limits: string;
   /** A pace to walk by, for a structure at this frequency. */
