@@ -163,10 +163,17 @@ function Differences(pair: Pair) {
   const { before, after } = pair;
   const { conditions } = changeOf(pair);
   const differ = before.reading.procedure !== after.reading.procedure;
-  if (conditions.length === 0 && !differ) return <p class="note">{text.sameCircumstances}</p>;
+  const temperature = temperatureText(before.reading.circumstances, after.reading.circumstances);
+  if (conditions.length === 0 && !differ)
+    return (
+      <p class="note">
+        {text.sameCircumstances} {temperature}
+      </p>
+    );
   return (
     <section class="stack stack-tight">
       <h2>{text.differs}</h2>
+      {!conditions.includes('temperatureC') && <p class="note">{temperature}</p>}
       <ul>
         {differ && <li>{text.differentProcedure}</li>}
         {conditions.map((key) => (
@@ -178,6 +185,14 @@ function Differences(pair: Pair) {
       </ul>
     </section>
   );
+}
+
+/** The temperature stands beside every comparison, noted or not: it moves frequencies by itself. */
+function temperatureText(before: Circumstances, after: Circumstances): string {
+  const [first, second] = [before.temperatureC, after.temperatureC];
+  return first === undefined || second === undefined
+    ? text.noTemperature
+    : text.temperatures(formatNumber(first, 2), formatNumber(second, 2));
 }
 
 const capital = (words: string) => words.charAt(0).toUpperCase() + words.slice(1);

@@ -3,15 +3,16 @@ import { useState } from 'preact/hooks';
 import type { App } from '../../../app/app.ts';
 import type { OpenedReading, ReadingSummary } from '../../../app/ports.ts';
 import { currentAnalysis } from '../../../app/readings.ts';
-import { addedMassTest, modePairs, speedSeries } from '../../../app/survey-desk.ts';
+import { addedMassTest, massShiftRatio, modePairs, speedSeries } from '../../../app/survey-desk.ts';
+import type { ModalValues } from '../../../core/model/guided-pairs.ts';
 import { problemSentence } from '../../../text/problems.ts';
 import { speedSeriesSentence } from '../../../text/assets.ts';
 import { INDICATIVE_LINE } from '../../../text/indicative.ts';
 import { withUncertainty } from '../../../text/number.ts';
-import { formatAcceleration, formatFrequency } from '../../../text/quantity.ts';
+import { formatAcceleration, formatFrequency, formatPercent } from '../../../text/quantity.ts';
 import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
-import { LinkButton } from '../../components/button.tsx';
+import { Button, LinkButton } from '../../components/button.tsx';
 import { Choice } from '../../components/choice.tsx';
 import { NumberField, SelectField } from '../../components/field.tsx';
 import { IndicativeLine } from '../../components/indicative-line.tsx';
@@ -59,7 +60,7 @@ export function SeriesScreen({ app, id }: { readonly app: App; readonly id: stri
       {kind === 'speed' ? (
         <SpeedSeries app={app} visits={visits} />
       ) : (
-        <PairForm key={kind} app={app} visits={visits} kind={kind} />
+        <PairForm key={kind} app={app} visits={visits} kind={kind} spot={id} />
       )}
       <IndicativeLine text={INDICATIVE_LINE} />
     </Page>
@@ -70,23 +71,26 @@ function PairForm(props: {
   readonly app: App;
   readonly visits: readonly ReadingSummary[];
   readonly kind: 'mass' | 'repair';
+  readonly spot: string;
 }) {
   const { app, kind } = props;
-  const taps = props.visits.filter((visit) => visit.dampingRatio !== undefined);
-  const [first, setFirst] = useState(taps.at(-2)?.id ?? '');
-  const [second, setSecond] = useState(taps.at(-1)?.id ?? '');
+  // A repair may have been of what shakes it: then running readings are compared, by level.
+  const visits =
+    kind === 'mass' ? props.visits.filter((visit) => visit.dampingRatio !== undefined) : props.visits;
+  const [first, setFirst] = useState(visits.at(-2)?.id ?? '');
+  const [second, setSecond] = useState(visits.at(-1)?.id ?? '');
   const [mass, setMass] = useState('');
   const pair = useLoaded(
     app.store,
     async () => ({ a: await app.readings.open(first), b: await app.readings.open(second) }),
     [first, second],
   );
-  if (taps.length < 2) return <p class="quiet">{text.needTwo}</p>;
-  const options = taps.map((visit) => ({
+  if (visits.length < 2) return <p class="quiet">{text.needTwo[kind]}</p>;
+  const options = visits.map((visit) => ({
     value: visit.id,
-    label: `${dayAndTime(visit.recordedAt)}: ${formatFrequency(visit.frequencyHz ?? 0, visit.frequencySdHz)}`,
+    label: visitLabel(visit),
   }));
-  const massKg = parseNumber(mass);
+  const answer = massAnswer(pair?.a, pair?.b, parseNumber(mass));
   return (
     <section class="stack">
       <SelectField label={text.firstOf[kind]} value={first} options={options} onChange={setFirst} />
@@ -94,7 +98,16 @@ function PairForm(props: {
       {kind === 'mass' ? (
         <>
           <NumberField label={text.mass} unit="kg" value={mass} onInput={setMass} />
-          <p aria-live="polite">{massAnswer(pair?.a, pair?.b, massKg)}</p>
+          <p aria-live="polite">{typeof answer === 'string' ? answer : modalText(answer)}</p>
+          {typeof answer !== 'string' && (
+            <div class="row">
+              <Button
+                onClick={() => void app.readings.edit(props.spot, { modal: { ...answer } }, text.keptModal)}
+              >
+                {text.keepModal}
+              </Button>
+            </div>
+          )}
         </>
       ) : (
         first !== second && (
@@ -107,11 +120,16 @@ function PairForm(props: {
   );
 }
 
+const visitLabel = (visit: ReadingSummary): string =>
+  visit.frequencyHz === undefined
+    ? dayAndTime(visit.recordedAt)
+    : `${dayAndTime(visit.recordedAt)}: ${formatFrequency(visit.frequencyHz, visit.frequencySdHz)}`;
+
 function massAnswer(
   without: OpenedReading | undefined,
   withMass: OpenedReading | undefined,
   massKg: number | undefined,
-): string {
+): string | ModalValues {
   if (!massKg || massKg <= 0 || !without || !withMass) return text.massMissing;
   const before = currentAnalysis(without).modes;
   const after = currentAnalysis(withMass).modes;
@@ -120,12 +138,21 @@ function massAnswer(
   const moved = pair && after[pair[1]];
   if (!mode || !moved) return text.noSameMode;
   const answer = addedMassTest(mode, moved, massKg);
-  if (!answer.ok) return problemSentence(answer.problem);
-  const { massKg: modalKg, massSdKg, stiffnessNPerM, stiffnessSdNPerM } = answer.value;
-  return text.massSentence(
-    withUncertainty(modalKg, massSdKg, 'kg'),
-    withUncertainty(stiffnessNPerM / 1000, stiffnessSdNPerM / 1000, 'kN/m'),
+  return answer.ok ? answer.value : problemSentence(answer.problem);
+}
+
+/** Weight of a common phone, kg, for saying what it does by itself (common practice, no source). */
+const PHONE_MASS_KG = 0.2;
+
+function modalText({ massKg, massSdKg, stiffnessNPerM, stiffnessSdNPerM }: ModalValues): string {
+  const found = text.massSentence(
+    withUncertainty(massKg, massSdKg, 'kg'),
+    withUncertainty(stiffnessNPerM / 1000, stiffnessSdNPerM / 1000, 'N/mm'),
   );
+  // the modal mass holds the phone that lay there in both readings
+  if (!(massKg > PHONE_MASS_KG)) return found;
+  const shift = massShiftRatio(PHONE_MASS_KG, massKg - PHONE_MASS_KG);
+  return `${found} ${text.phoneShift(`${PHONE_MASS_KG} kg`, formatPercent(-shift))}`;
 }
 
 function SpeedSeries({ app, visits }: { readonly app: App; readonly visits: readonly ReadingSummary[] }) {

@@ -8,7 +8,7 @@ import { visitChange, type Visit as SurveyVisit } from '../../../app/survey-desk
 import { INDICATIVE_LINE } from '../../../text/indicative.ts';
 import { officeText } from '../../../text/office-screens.ts';
 import { screenText } from '../../../text/screens.ts';
-import { changeSentence } from '../../../text/assets.ts';
+import { changeSentence, conditionsSentence } from '../../../text/assets.ts';
 import { BottomBar } from '../../components/bottom-bar.tsx';
 import { Button, LinkButton } from '../../components/button.tsx';
 import { IconStart } from '../../components/icons.tsx';
@@ -72,7 +72,9 @@ export function SpotScreen({ app, id }: { readonly app: App; readonly id: string
       {taps.length > 1 && (
         <section class="stack">
           <h2>{text.overTime}</h2>
-          <p>{changeSince(opened)}</p>
+          {changeSince(opened).map((sentence) => (
+            <p key={sentence}>{sentence}</p>
+          ))}
           <VisitChart visits={taps.flatMap(toVisit)} unit={frequencyUnit} />
         </section>
       )}
@@ -126,13 +128,19 @@ const toSurveyVisit = (opened: OpenedReading): SurveyVisit => ({
 const strongest = <T extends { readonly earlierIndex: number }>(modes: readonly T[]): T | undefined =>
   [...modes].sort((a, b) => a.earlierIndex - b.earlierIndex)[0];
 
-/** The strongest mode of the last visit against the first. */
-function changeSince(opened: readonly OpenedReading[]): string {
+/** The strongest mode of the last visit against the first, and what was different. */
+function changeSince(opened: readonly OpenedReading[]): readonly string[] {
   const history = opened.map(toSurveyVisit).filter((visit) => visit.analysis.modes.length > 0);
   const first = history[0];
   const last = history.at(-1);
-  const change = first && last ? strongest(visitChange(first, last, history).modes) : undefined;
-  return changeSentence(text.frequencySince, change?.frequency);
+  const change = first && last ? visitChange(first, last, history) : undefined;
+  const mode = change && strongest(change.modes);
+  const different = change && conditionsSentence(change);
+  return [
+    changeSentence(text.frequencySince, mode?.frequency),
+    changeSentence(text.dampingSince, mode?.damping),
+    ...(different ? [different] : []),
+  ];
 }
 
 const toVisit = (visit: ReadingSummary): readonly Visit[] =>

@@ -32,6 +32,7 @@ async function openView(app: App, id: string): Promise<OpenedView> {
       place: where.names,
       ...(where.spot ? { spotId: where.spot } : {}),
       ...(settings.place ? { spotPlace: settings.place } : {}),
+      ...(where.modal ? { modal: where.modal } : {}),
       hasOwnLimits: Object.keys(settings.thresholds ?? {}).length > 0,
       sources,
       photos,

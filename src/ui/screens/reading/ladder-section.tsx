@@ -1,5 +1,6 @@
 import { useMemo, useState } from 'preact/hooks';
 import type { Analysis } from '../../../core/model/analysis.ts';
+import type { ModalValues } from '../../../core/model/guided-pairs.ts';
 import type { Judgement } from '../../../core/model/judgement.ts';
 import type { Source } from '../../../core/model/source.ts';
 import { readingText } from '../../../text/reading-screen.ts';
@@ -19,6 +20,7 @@ export interface LadderSectionProps {
   readonly sources: readonly Source[];
   readonly judge: (analysis: Analysis, sources: readonly Source[]) => Judgement;
   readonly units: ReadingUnits;
+  readonly modal?: ModalValues | undefined;
   readonly newSource: string;
   readonly paceLink: (frequencyHz: number) => string;
 }
@@ -31,7 +33,7 @@ const pickedMode = (picked: Picked | undefined, judgement: Judgement): number | 
 
 /** The main picture with all that answers to it: the pair picked, the numbers, the list, changes tried, ways out. */
 export function LadderSection(props: LadderSectionProps) {
-  const { analysis, judgement, sources, units, newSource } = props;
+  const { analysis, judgement, sources, units, modal, newSource } = props;
   const measured = useMemo(() => ({ analysis, judgement }), [analysis, judgement]);
   const [picked, setPicked] = useState<Picked | undefined>(() =>
     firstPick(judgement, analysis.modes.length, analysis.tones.length),
@@ -60,10 +62,10 @@ export function LadderSection(props: LadderSectionProps) {
             onPick={setPicked}
           />
         </Section>
-        <WaysOutSection judgement={judgement} units={units} />
+        <WaysOutSection judgement={judgement} units={units} modal={modal} />
       </div>
     ),
-    [analysis, judgement, units, picked, modeIndex, newSource],
+    [analysis, judgement, units, modal, picked, modeIndex, newSource],
   );
   return (
     <div class={styles.section}>

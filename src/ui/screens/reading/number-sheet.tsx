@@ -1,6 +1,7 @@
 import type { ComponentChildren } from 'preact';
 import { moreToHalve } from '../../../app/reading-desk.ts';
 import type { Analysis, Mode } from '../../../core/model/analysis.ts';
+import { STANDARD_DEVIATIONS_95 } from '../../../core/model/interval.ts';
 import type { Judgement } from '../../../core/model/judgement.ts';
 import { formatNumber, numberText } from '../../../text/number.ts';
 import { formatDamping, formatPercent, formatVelocity, toUnit } from '../../../text/quantity.ts';
@@ -46,10 +47,16 @@ export function NumberSheet(props: NumberSheetProps) {
   );
 }
 
-/** How much more of the same would halve the ±: what it costs to know better. */
+/** Damping that is known this well is not worth another visit's work: it differs by more from day to day. Our own choice. */
+const WELL_KNOWN_RATIO = 0.05;
+const isWellKnown = ({ dampingRatio, dampingRatioSd }: Mode): boolean =>
+  dampingRatioSd > 0 && STANDARD_DEVIATIONS_95 * dampingRatioSd <= WELL_KNOWN_RATIO * dampingRatio;
+
+/** How much more of the same would halve the ±, where that is worth knowing. */
 function HalvingNote({ analysis }: { readonly analysis: Analysis }) {
   const more = moreToHalve(analysis);
-  if (more === undefined) return null;
+  const mode = analysis.modes[0];
+  if (more === undefined || (mode && isWellKnown(mode))) return null;
   const words = readingText.halving;
   return (
     <p class="note">{more.kind === 'taps' ? words.taps(more.extraTapCount) : words.seconds(more.extraS)}</p>

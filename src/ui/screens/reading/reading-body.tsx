@@ -86,6 +86,7 @@ export function ReadingBody({ view, cases, links, units, spotDialog }: BodyProps
           sources={sources}
           judge={view.judge}
           units={units}
+          modal={view.modal}
           newSource={newSource}
           paceLink={links.pace}
         />

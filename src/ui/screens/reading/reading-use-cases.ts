@@ -1,5 +1,6 @@
 import type { Analysis, AnalysisSettings } from '../../../core/model/analysis.ts';
 import type { EditFact, Entity, FieldValue, ReadingFact, ResultFact } from '../../../core/model/fact.ts';
+import type { ModalValues } from '../../../core/model/guided-pairs.ts';
 import type { Judgement } from '../../../core/model/judgement.ts';
 import type { Outcome } from '../../../core/model/outcome.ts';
 import type { AnalysisResult } from '../../../core/model/pictures.ts';
@@ -30,6 +31,8 @@ export interface ReadingView {
   readonly spotId?: string;
   /** What that spot is, and what was said of the loading in this reading. */
   readonly spotPlace?: Place;
+  /** Modal mass and stiffness of the spot, where an added-mass test was kept. */
+  readonly modal?: ModalValues;
   /** Verdicts go by limits that the person set on this phone. */
   readonly hasOwnLimits?: boolean;
   /** Sources valid for this reading. */

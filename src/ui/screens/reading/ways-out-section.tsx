@@ -1,3 +1,5 @@
+import { belongsToMode } from '../../../app/reading-desk.ts';
+import type { ModalValues } from '../../../core/model/guided-pairs.ts';
 import type { Judgement, WayOut } from '../../../core/model/judgement.ts';
 import { readingText } from '../../../text/reading-screen.ts';
 import { forcingName } from '../../../text/sources.ts';
@@ -12,9 +14,15 @@ import styles from './ways-out-section.module.css';
 /** Beyond these the pairs differ too little to be worth another list; the ladder's sliders try any change. */
 const MOST_PAIRS = 6;
 
+interface WaysProps {
+  readonly judgement: Judgement;
+  readonly units: ReadingUnits;
+  readonly modal?: ModalValues | undefined;
+}
+
 /** What would move a pair apart, pair by pair, with what it does to the others. */
-export function WaysOutSection(props: { readonly judgement: Judgement; readonly units: ReadingUnits }) {
-  const { judgement, units } = props;
+export function WaysOutSection(props: WaysProps) {
+  const { judgement } = props;
   const pairs = [...new Set(judgement.waysOut.map((way) => way.separationIndex))];
   if (pairs.length === 0) return null;
   const first = pairs.slice(0, 1);
@@ -22,19 +30,13 @@ export function WaysOutSection(props: { readonly judgement: Judgement; readonly 
   return (
     <Section title={readingText.waysOut.title}>
       {first.map((index) => (
-        <PairWays
-          key={index}
-          judgement={judgement}
-          units={units}
-          separationIndex={index}
-          isNamed={pairs.length > 1}
-        />
+        <PairWays key={index} {...props} separationIndex={index} isNamed={pairs.length > 1} />
       ))}
       {others.length > 0 && (
         <details class={styles.others}>
           <summary>{readingText.waysOut.others(others.length)}</summary>
           {others.map((index) => (
-            <PairWays key={index} judgement={judgement} units={units} separationIndex={index} isNamed />
+            <PairWays key={index} {...props} separationIndex={index} isNamed />
           ))}
         </details>
       )}
@@ -42,15 +44,11 @@ export function WaysOutSection(props: { readonly judgement: Judgement; readonly 
   );
 }
 
-function PairWays(props: {
-  readonly judgement: Judgement;
-  readonly units: ReadingUnits;
-  readonly separationIndex: number;
-  readonly isNamed: boolean;
-}) {
-  const { judgement, units, separationIndex, isNamed } = props;
+function PairWays(props: WaysProps & { readonly separationIndex: number; readonly isNamed: boolean }) {
+  const { judgement, units, modal, separationIndex, isNamed } = props;
   const separation = judgement.separations[separationIndex];
   const forcing = separation && judgement.forcings[separation.forcingIndex];
+  const itsModal = modal && separation && belongsToMode(modal, separation.modeHz) ? modal : undefined;
   const ways = judgement.waysOut.filter((way) => way.separationIndex === separationIndex);
   return (
     <div class={styles.pair}>
@@ -61,19 +59,26 @@ function PairWays(props: {
       )}
       <ul class={styles.list}>
         {ways.map((way, index) => (
-          <WayOutRow key={index} way={way} judgement={judgement} />
+          <WayOutRow key={index} way={way} judgement={judgement} modal={itsModal} />
         ))}
       </ul>
     </div>
   );
 }
 
-const WayOutRow = ({ way, judgement }: { readonly way: WayOut; readonly judgement: Judgement }) => (
-  <li class={way.practical ? '' : styles.hard}>
-    <div class={styles.name}>
-      <b>{wayOutName(way.kind)}</b>
-      <VerdictMark verdict={way.verdictAfter} word={verdictWord(way.verdictAfter)} />
-    </div>
-    <p>{wayOutSentence(way, judgement)}</p>
-  </li>
-);
+function WayOutRow(props: {
+  readonly way: WayOut;
+  readonly judgement: Judgement;
+  readonly modal: ModalValues | undefined;
+}) {
+  const { way, judgement, modal } = props;
+  return (
+    <li class={way.practical ? '' : styles.hard}>
+      <div class={styles.name}>
+        <b>{wayOutName(way.kind)}</b>
+        <VerdictMark verdict={way.verdictAfter} word={verdictWord(way.verdictAfter)} />
+      </div>
+      <p>{wayOutSentence(way, judgement, modal)}</p>
+    </li>
+  );
+}

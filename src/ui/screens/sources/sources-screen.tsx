@@ -3,7 +3,7 @@ import type { App } from '../../../app/app.ts';
 import type { KnownSource } from '../../../app/sources.ts';
 import { SOURCE_KINDS } from '../../../core/model/source.ts';
 import { officeText } from '../../../text/office-screens.ts';
-import { sourceKindName } from '../../../text/sources.ts';
+import { sourceKindName, unnamedSource } from '../../../text/sources.ts';
 import { Page } from '../../components/page.tsx';
 import { Row, Rows } from '../../components/rows.tsx';
 import { useLoaded } from '../../use-loaded.ts';
@@ -71,6 +71,9 @@ export function SourceRows(props: {
     const site = tree?.sites.find((place) => place.id === entry.site);
     return asset?.name ?? site?.name ?? text.everywhere;
   };
+  // a source that nobody named is called by its kind already
+  const kindNote = ({ source }: KnownSource) =>
+    source.name === unnamedSource(source.kind) ? '' : capital(sourceKindName(source.kind));
   return (
     <Rows label={text.title}>
       {props.sources.map((entry) => (
@@ -78,7 +81,7 @@ export function SourceRows(props: {
           key={entry.id}
           href={app.navigation.href({ screen: 'source', id: entry.id })}
           title={entry.source.name}
-          note={`${capital(sourceKindName(entry.source.kind))} · ${placeName(entry)}`}
+          note={[kindNote(entry), placeName(entry)].filter(Boolean).join(' · ')}
           isCurrent={entry.id === props.current}
         />
       ))}
