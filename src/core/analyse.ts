@@ -39,7 +39,7 @@ export function analyse(recording: Recording, settings: AnalysisSettings): Outco
     return settings.procedure === 'auto' && isAtRest(signal)
       ? failure('no-motion', { durationS: signal.facts.durationS })
       : answer;
-  return success(resultOf(signal, settings, procedure, answer.value));
+  return success(resultOf(answer.value.retimed ?? signal, settings, procedure, answer.value));
 }
 
 const PROCEDURES: Readonly<Record<Procedure, ProcedureFunction>> = {

@@ -26,8 +26,8 @@ export const isStepCoarse = (variance: readonly number[], stepMps2: readonly num
 
 /**
  * Maximum likelihood of a fit to rounded samples: each value only says in which cell the true one lies
- * (interval censoring). Fisher scoring by weighted least squares on working values (Nelder & Wedderburn 1972); noise by
- * expectation and maximisation (Dempster, Laird & Rubin 1977).
+ * (interval censoring). Fisher scoring by weighted least squares on working values (Nelder & Wedderburn 1972), noise by
+ * its own search, in turn.
  * @param start ordinary fit of the same segments
  * @param stepMps2 rounding step per axis; 0 leaves an axis as it is
  */
@@ -46,20 +46,17 @@ export function fitRounded(
   });
   let fit = start;
   let left = residuals(signal, segments, start);
+  const columns = linearColumnCount(fit.components.length) * segments.length;
+  const freedom = fit.sampleCount / Math.max(fit.sampleCount - columns, 1);
   for (let i = 0; i < ITERATION_LIMIT; i++) {
-    const updated = signal.y.map((y, a) =>
+    signal.y.forEach((y, a) =>
       fillWorking(y, left[a]!, segments, stepMps2[a] ?? 0, Math.sqrt(noise[a]!), working[a]!, weights[a]!),
     );
-    const weighted: DecaySignal = { ...signal, y: working, weights };
-    const next = fitDecays(weighted, segments, fit.components, noise, 1);
-    const columns = linearColumnCount(fit.components.length) * segments.length;
-    const freedom = fit.sampleCount / Math.max(fit.sampleCount - columns, 1);
-    const settled = noise.every((v, a) => Math.abs((freedom * updated[a]!) / v - 1) < NOISE_SETTLED);
-    fit = next;
+    fit = fitDecays({ ...signal, y: working, weights }, segments, fit.components, noise, 1);
     left = residuals(signal, segments, fit);
-    noise = updated.map((v, a) =>
-      Math.max(freedom * v, (LEAST_NOISE_SHARE * (stepMps2[a] ?? 0)) ** 2, 1e-18),
-    );
+    const updated = axisNoise(left, segments, stepMps2, noise).map((v) => freedom * v);
+    const settled = noise.every((v, a) => Math.abs(updated[a]! / v - 1) < NOISE_SETTLED);
+    noise = updated;
     if (settled && i > 1) break;
   }
   return withNoise({ ...signal, y: working, weights }, segments, fit, noise);
@@ -88,7 +85,6 @@ function withNoise(
 
 /**
  * Working values and weights of one axis for the present fit.
- * @returns expected squared deviation of the unrounded values from the fit, mean over the samples
  */
 function fillWorking(
   y: Float64Array,
@@ -98,17 +94,13 @@ function fillWorking(
   sd: number,
   working: Float64Array,
   weights: Float64Array,
-): number {
-  let sum = 0;
-  let count = 0;
+): void {
   for (const { start, end } of segments) {
     for (let i = start; i < end; i++) {
       const value = y[i]!;
       const residual = left[i]!;
-      count++;
       if (step === 0) {
         working[i] = value;
-        sum += residual * residual;
         continue;
       }
       const model = value - residual;
@@ -119,7 +111,6 @@ function fillWorking(
         const border = Math.abs(a) < Math.abs(b) ? a : b;
         working[i] = model + border * sd;
         weights[i] = 1;
-        sum += (border * sd) ** 2;
         continue;
       }
       const da = normalDensity(a);
@@ -129,10 +120,96 @@ function fillWorking(
       const weight = Math.max(score * score - bend, LEAST_WEIGHT);
       working[i] = model + (sd * score) / weight;
       weights[i] = weight;
-      sum += sd * sd * (1 + bend);
     }
   }
-  return sum / Math.max(count, 1);
+}
+
+/** Steps of the search for the noise, each narrowing it to 0.62 of its range. */
+const NOISE_STEPS = 9;
+/** Range of one search about the present value, as a factor of the standard deviation. */
+const NOISE_RANGE = 2;
+const GOLDEN = (Math.sqrt(5) - 1) / 2;
+
+/** Steps that differ by less are one step, read from different samples. */
+const ALIKE_SHARE = 0.02;
+
+/** Axes rounded alike are of one sensor and share its noise: what one alone shows of it may all lie in one cell. */
+function axisNoise(
+  left: readonly Float64Array[],
+  segments: readonly Segment[],
+  stepMps2: readonly number[],
+  present: readonly number[],
+): number[] {
+  const known = new Map<number, number>();
+  return left.map((l, a) => {
+    const step = stepMps2[a] ?? 0;
+    if (step === 0) return meanSquare(l, segments);
+    const alike = left.flatMap((_, b) => (Math.abs((stepMps2[b] ?? 0) / step - 1) < ALIKE_SHARE ? [b] : []));
+    const mean = alike.reduce((sum, b) => sum + present[b]!, 0) / alike.length;
+    const variance =
+      known.get(alike[0]!) ??
+      roundedNoise(
+        alike.map((b) => left[b]!),
+        segments,
+        step,
+        mean,
+      );
+    known.set(alike[0]!, variance);
+    return variance;
+  });
+}
+
+/**
+ * Noise variance that makes the cells likeliest: golden section on the logarithm. (Expectation and maximisation creeps
+ * here: rounding hides most of what it steps by.)
+ */
+function roundedNoise(
+  left: readonly Float64Array[],
+  segments: readonly Segment[],
+  step: number,
+  present: number,
+): number {
+  const misfit = (logSd: number): number =>
+    -left.reduce((sum, l) => sum + logLikelihood(l, segments, step, Math.exp(logSd)), 0);
+  let low = Math.log(Math.max(Math.sqrt(present) / NOISE_RANGE, LEAST_NOISE_SHARE * step));
+  let high = Math.max(Math.log(Math.sqrt(present) * NOISE_RANGE), low);
+  let [a, b] = [high - GOLDEN * (high - low), low + GOLDEN * (high - low)];
+  let [atA, atB] = [misfit(a), misfit(b)];
+  for (let i = 0; i < NOISE_STEPS; i++) {
+    if (atA < atB) {
+      [high, b, atB] = [b, a, atA];
+      a = high - GOLDEN * (high - low);
+      atA = misfit(a);
+    } else {
+      [low, a, atA] = [a, b, atB];
+      b = low + GOLDEN * (high - low);
+      atB = misfit(b);
+    }
+  }
+  return Math.exp(low + high);
+}
+
+function meanSquare(left: Float64Array, segments: readonly Segment[]): number {
+  let sum = 0;
+  let count = 0;
+  for (const { start, end } of segments) {
+    for (let i = start; i < end; i++) sum += left[i]! ** 2;
+    count += end - start;
+  }
+  return Math.max(sum / Math.max(count, 1), 1e-18);
+}
+
+function logLikelihood(left: Float64Array, segments: readonly Segment[], step: number, sd: number): number {
+  let sum = 0;
+  for (const { start, end } of segments) {
+    for (let i = start; i < end; i++) {
+      const residual = Math.abs(left[i]!);
+      const probability =
+        normalDistribution((step / 2 - residual) / sd) - normalDistribution((-step / 2 - residual) / sd);
+      sum += Math.log(Math.max(probability, LEAST_PROBABILITY));
+    }
+  }
+  return sum;
 }
 
 const normalDensity = (x: number): number => Math.exp(-0.5 * x * x) / Math.sqrt(2 * Math.PI);

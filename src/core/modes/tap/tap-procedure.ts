@@ -15,6 +15,7 @@ import { decayAlone, residuals } from './modelled-signal.ts';
 import { residualColour } from './residual-colour.ts';
 import { leavesOnlyNoise, searchBriefRingDowns, searchRingDowns } from './ring-down-search.ts';
 import type { RingDownSearch } from './ring-down-state.ts';
+import { retimedByRingDowns } from './ring-down-timing.ts';
 import { fitRounded, isStepCoarse } from './rounding-likelihood.ts';
 import { softenedFit } from './softening.ts';
 import { explainedShare, isAnswer, ringEnergy } from './tap-gates.ts';
@@ -34,7 +35,7 @@ const FEWEST_TAPS = 3;
 /** Tap test: free decays found, fitted jointly, cross-checked. */
 export function tapProcedure(
   conditioned: ConditionedSignal,
-  _settings: AnalysisSettings,
+  settings: AnalysisSettings,
 ): Outcome<ProcedureAnswer> {
   const signal = tapSignal(conditioned);
   const { facts } = conditioned;
@@ -46,6 +47,29 @@ export function tapProcedure(
   const input = { rateHz: facts.rateHz, stepMps2: facts.stepMps2 };
   const search = searchRingDowns({ ...input, signal });
   if (search === undefined) return failure('no-motion');
+  const retimed = settings.timing === 'auto' ? retimedByRingDowns(conditioned, signal, search) : undefined;
+  const timed = retimed && { ...signal, timeS: retimed.timeS };
+  const again = timed && searchRingDowns({ ...input, signal: timed });
+  if (again === undefined || recordCost(timed!, again) > recordCost(signal, search))
+    return bestAnswer(conditioned, signal, search);
+  // An image reads as if its stamps were late: only where that fits worse are they.
+  const supposed = isLater(retimed!, conditioned) ? supposedUnfolded(conditioned, signal) : undefined;
+  const image = supposed && searchUnfolded(conditioned, supposed);
+  if (image !== undefined && recordCost(image.signal, image.search) < recordCost(timed!, again))
+    return answerOf(conditioned, image.signal, image.search);
+  const answer = bestAnswer(retimed!, timed!, again);
+  return answer.ok ? success({ ...answer.value, retimed: retimed! }) : answer;
+}
+
+const isLater = (a: ConditionedSignal, b: ConditionedSignal): boolean =>
+  a.facts.timing.trueShare < b.facts.timing.trueShare;
+
+/** The answer as the record reads, or as an image of a frequency above half the rate, whichever fits better. */
+function bestAnswer(
+  conditioned: ConditionedSignal,
+  signal: DecaySignal,
+  search: RingDownSearch,
+): Outcome<ProcedureAnswer> {
   const answer = firstAnswer(conditioned, signal, search);
   const unfolded =
     unfoldedSignal(conditioned, signal, search) ??

@@ -192,6 +192,76 @@ describe('tapProcedure on generated records (seed 90)', () => {
   });
 });
 
+describe('tapProcedure on what once was missed', () => {
+  const generated = (kind: 'A1' | 'A1F', seed: number, index: number) => {
+    const { truth, recording } = generateCase(kind, seed, index);
+    return { truth: truth.modes![0]!, analysis: analysed(recording) };
+  };
+
+  it('a weak mode dead within a few cycles', () => {
+    const { truth, analysis } = generated('A1', 6202, 29);
+    const [mode] = analysis.modes;
+    expect(Math.abs(mode!.frequencyHz - truth.f_hz)).toBeLessThan(4 * truth.crlb_f!);
+    expect(Math.abs(mode!.dampingRatio - truth.zeta)).toBeLessThan(4 * truth.crlb_zeta!);
+  });
+
+  it('true stamps that the noise of a coarse record made look late: the ring-downs decide', () => {
+    const { truth, analysis } = generated('A1', 6201, 118);
+    expect(analysis.recording.timing.trueShare).toBeGreaterThan(0.9);
+    expect(Math.abs(analysis.modes[0]!.frequencyHz - truth.f_hz)).toBeLessThan(4 * truth.crlb_f!);
+  });
+
+  it('late stamps of a steady clock: the ring-downs keep to the clock', () => {
+    const steady = ringingRecording({ ...RAIL, frequencyHz: 17.4 });
+    const random = seededRandom(8);
+    const late = { ...steady, timeS: steady.timeS.map((t) => t + 0.002 * random.normal()) };
+    const { modes, recording } = analysed(late);
+    expect(recording.timing.trueShare).toBeLessThan(0.4);
+    expect(Math.abs(modes[0]!.frequencyHz - 17.4)).toBeLessThan(4 * modes[0]!.frequencySdHz);
+    expect(modes[0]!.frequencySdHz).toBeLessThan(0.005);
+  });
+
+  it('an image whose phase noise hides it at its apparent frequency', () => {
+    const { truth, analysis } = generated('A1F', 7301, 51);
+    const { fold } = analysis.modes[0]!;
+    expect(fold.verdict).toBe('folded');
+    expect(Math.abs(fold.candidatesHz[0]! / truth.f_hz - 1)).toBeLessThan(0.01);
+  });
+
+  it('a record of four minutes, searched by its busiest part, is read in full', () => {
+    const tapTimesS = Array.from({ length: 20 }, (_, k) => 3.1 + 11.7 * k);
+    const { modes, tapTimesS: found } = analysed(ringingRecording({ ...RAIL, tapTimesS, durationS: 240 }));
+    expect(modes).toHaveLength(1);
+    expect(found).toHaveLength(20);
+    expect(Math.abs(modes[0]!.frequencyHz - 7.4)).toBeLessThan(4 * modes[0]!.frequencySdHz);
+  });
+
+  it('thirty knocks, each into the ring of the one before', () => {
+    const tapTimesS = Array.from({ length: 30 }, (_, k) => 2 + 0.9 * k + 0.13 * Math.sin(5 * k));
+    const { modes } = analysed(ringingRecording({ ...RAIL, tapTimesS, durationS: 32 }));
+    expect(Math.abs(modes[0]!.frequencyHz - 7.4)).toBeLessThan(4 * modes[0]!.frequencySdHz);
+    expect(Math.abs(modes[0]!.dampingRatio - 0.012)).toBeLessThan(4 * modes[0]!.dampingRatioSd);
+  });
+
+  it.each([
+    ['one release, no contact', { frequencyHz: 2, dampingRatio: 0.005, tapTimesS: [4], durationS: 50 }],
+    [
+      'the first sample already rings',
+      { frequencyHz: 2, dampingRatio: 0.005, tapTimesS: [-1], durationS: 40 },
+    ],
+    ['three taps on a very quiet sensor', { ...RAIL, noiseMps2: 2e-4 }],
+    ['one axis', { ...RAIL, direction: [1] }],
+    ['500 Hz', { ...RAIL, frequencyHz: 61, rateHz: 500, tapTimesS: [0.5, 2.5], durationS: 5 }],
+    ['two seconds', { ...RAIL, frequencyHz: 11, dampingRatio: 0.02, tapTimesS: [0.3], durationS: 2 }],
+  ])('%s', (_, ringing) => {
+    const { modes } = analysed(ringingRecording(ringing));
+    expect(modes).toHaveLength(1);
+    const [mode] = modes;
+    expect(Math.abs(mode!.frequencyHz - ringing.frequencyHz)).toBeLessThan(4 * mode!.frequencySdHz);
+    expect(Math.abs(mode!.dampingRatio - ringing.dampingRatio)).toBeLessThan(4 * mode!.dampingRatioSd);
+  });
+});
+
 describe('tapProcedure on what it must refuse or doubt', () => {
   const still = (noise: number): Recording => ringingRecording({ ...RAIL, tapTimesS: [], noiseMps2: noise });
 
