@@ -1,6 +1,8 @@
 /** Sites, assets and spots: where readings belong, and what can be told of a spot from its visits. */
 import type { Entity, EntityKind, FieldValue } from '../core/model/fact.ts';
+import type { ModalValues } from '../core/model/guided-pairs.ts';
 import { SPOT_KINDS, type Place, type SpotKind } from '../core/model/place.ts';
+import { parseModalValues } from '../core/survey/parse-modal-values.ts';
 import { parsePlace } from '../core/survey/parse-place.ts';
 import type { ReadingSummary, StorePort } from './ports.ts';
 
@@ -41,6 +43,8 @@ export interface PlaceIds {
 export interface Whereabouts extends PlaceIds {
   readonly names: PlaceIds;
   readonly place?: Place;
+  /** Modal mass and stiffness there, where an added-mass test was kept. */
+  readonly modal?: ModalValues;
 }
 
 export interface Places {
@@ -104,12 +108,18 @@ async function whereabouts(store: Pick<StorePort, 'entity'>, ids: PlaceIds): Pro
     ...(assetId ? { asset: assetId } : {}),
     ...(siteId ? { site: siteId } : {}),
     ...(spot ? { place: placeOf(spot) } : {}),
+    ...modalOf(spot),
     names: {
       ...nameEntry('spot', spot),
       ...nameEntry('asset', asset),
       ...nameEntry('site', site),
     },
   };
+}
+
+function modalOf(spot: Entity | undefined): Pick<Whereabouts, 'modal'> {
+  const modal = parseModalValues(spot?.fields['modal']);
+  return modal ? { modal } : {};
 }
 
 const nameEntry = (key: string, entity: Entity | undefined): Record<string, string> => {

@@ -2,3 +2,4 @@
 export { moreToHalve, type MoreRecording } from '../core/survey/more-recording.ts';
 export { changedAnalysis } from '../core/survey/structural-change.ts';
 export { toneOrigins } from '../core/survey/tone-matches.ts';
+export { belongsToMode } from '../core/survey/parse-modal-values.ts';

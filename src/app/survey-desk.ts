@@ -1,5 +1,5 @@
 /** What screens may ask of the survey directly: pure answers about sources, assets and visits. Loaded with the screens that need it. */
-export { addedMassTest } from '../core/survey/added-mass.ts';
+export { addedMassTest, massShiftRatio } from '../core/survey/added-mass.ts';
 export { assetVerdict } from '../core/survey/asset.ts';
 export type { AssetReading } from '../core/survey/asset-reading.ts';
 export { forcingsOf } from '../core/survey/forcings.ts';

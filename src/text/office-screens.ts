@@ -55,6 +55,7 @@ const english = {
     visits: 'Visits',
     overTime: 'Over time',
     frequencySince: 'Frequency since the first visit',
+    dampingSince: 'Damping since the first visit',
     frequency: 'Frequency',
     damping: 'Damping',
     when: 'When',
@@ -93,10 +94,12 @@ const english = {
     level: 'Velocity, rms',
     trust: 'Trust',
     change: 'Change',
-    noPair: 'The two readings have no mode in common, so nothing can be compared.',
+    noPair: 'The two readings have no mode in common: only their levels can be compared.',
     notTheSame: '“No change seen” is not the same as “nothing changed”.',
     differs: 'Circumstances that differ',
     sameCircumstances: 'The circumstances noted are the same in both.',
+    noTemperature: 'The temperature was not noted in both: it moves frequency and damping by itself.',
+    temperatures: (before: string, after: string) => `Temperature ${before} °C, then ${after} °C.`,
     differentProcedure: 'The procedure: compare like with like.',
   },
   series: {
@@ -110,8 +113,8 @@ const english = {
         'Choose the two below and enter the mass: the effective mass and stiffness follow.',
       ],
       repair: [
-        'Take a tap reading before the repair.',
-        'Take another at the same spot after it, held and excited the same way.',
+        'Take a reading before the repair: tapped for frequency and damping, running for the level.',
+        'Take the same again at the same spot after it, held and excited the same way.',
         'Choose the two below and compare.',
       ],
       speed: [
@@ -120,7 +123,12 @@ const english = {
         'The table shows where the response to a like force peaks.',
       ],
     },
-    needTwo: 'Two tap readings of this spot are needed.',
+    needTwo: {
+      mass: 'Two tap readings of this spot are needed.',
+      repair: 'Two readings of this spot are needed.',
+    },
+    keepModal: 'Use it for the ways out of this spot',
+    keptModal: 'The ways out of this spot are now told in kg and N/mm too.',
     needSpeeds: 'No running readings with an entered speed yet.',
     firstOf: { mass: 'Without the mass', repair: 'Before' },
     secondOf: { mass: 'With the mass', repair: 'After' },
@@ -129,6 +137,8 @@ const english = {
     noSameMode: 'The strongest mode of the first was not found in the second.',
     massSentence: (mass: string, stiffness: string) =>
       `The mode moves an effective mass of ${mass} on a stiffness of ${stiffness}.`,
+    phoneShift: (phone: string, share: string) =>
+      `A phone of ${phone} lying there lowers the frequency by ${share}.`,
     speed: 'Speed',
     strongest: 'Strongest tone',
     rms: 'Acceleration, rms',
