@@ -3,6 +3,7 @@ import type { Analysis, AnalysisSettings, Procedure } from './model/analysis.ts'
 import type { Doubt } from './model/doubt.ts';
 import { failure, success } from './model/outcome.ts';
 import type { Outcome } from './model/outcome.ts';
+import type { Problem, ProblemCode } from './model/problem.ts';
 import type { AnalysisResult } from './model/pictures.ts';
 import type { Recording } from './model/recording.ts';
 import { ambientProcedure } from './modes/ambient.ts';
@@ -34,11 +35,7 @@ export function analyse(recording: Recording, settings: AnalysisSettings): Outco
   const procedure: Procedure =
     settings.procedure === 'auto' ? recogniseProcedure(signal) : settings.procedure;
   const answer = PROCEDURES[procedure](signal, settings);
-  // Which of the four would have found nothing says little when nobody asked for it and nothing moved.
-  if (!answer.ok)
-    return settings.procedure === 'auto' && isAtRest(signal)
-      ? failure('no-motion', { durationS: signal.facts.durationS })
-      : answer;
+  if (!answer.ok) return refusalOf(signal, settings, answer.problem);
   return success(resultOf(answer.value.retimed ?? signal, settings, procedure, answer.value));
 }
 
@@ -86,6 +83,31 @@ function resultOf(
       ...(pass === undefined ? {} : { pass }),
     },
   };
+}
+
+/** Nothing of their own was found: another procedure may find something. */
+const NOTHING_FOUND: ReadonlySet<ProblemCode> = new Set([
+  'no-taps',
+  'no-decay',
+  'no-tone',
+  'no-mode',
+  'no-pass',
+]);
+
+/** Which of the four found nothing says little where nobody asked for it and nothing moved; where one was asked for, which fits. */
+function refusalOf(
+  signal: ConditionedSignal,
+  { procedure }: AnalysisSettings,
+  problem: Problem,
+): Outcome<AnalysisResult> {
+  const refused = failure(problem.code, problem.facts);
+  if (procedure === 'auto')
+    return isAtRest(signal) ? failure('no-motion', { durationS: signal.facts.durationS }) : refused;
+  if (!NOTHING_FOUND.has(problem.code) || isAtRest(signal)) return refused;
+  const fitting = recogniseProcedure(signal);
+  // Ambient is also what is left where nothing is recognised.
+  if (fitting === procedure || fitting === 'ambient') return refused;
+  return failure(problem.code, { ...problem.facts, fitting });
 }
 
 /** Only what a person chose can be the wrong choice. */

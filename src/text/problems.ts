@@ -159,5 +159,13 @@ const SENTENCES: Readonly<Record<ProblemCode, (facts: Facts) => string>> = {
     `Too few readings for this: ${whole(facts, 'count') ?? 'these'} of at least ${whole(facts, 'needed') ?? 'two'}.`,
 };
 
-/** One or two sentences: what is wrong, and what to do. */
-export const problemSentence = (problem: Problem): string => capital(SENTENCES[problem.code](problem.facts));
+/** Which procedure would fit, where the analysis recognised one. */
+const FITTING: Readonly<Record<string, string>> = {
+  tap: ' The record looks like taps: analyse it as a tap test.',
+  running: ' The record looks like a running machine: analyse it as one.',
+  coastdown: ' The record looks like a machine slowing down: analyse it as a coast-down.',
+};
+
+/** One to three sentences: what is wrong, and what to do. */
+export const problemSentence = ({ code, facts }: Problem): string =>
+  `${capital(SENTENCES[code](facts))}${FITTING[text(facts, 'fitting')] ?? ''}`;

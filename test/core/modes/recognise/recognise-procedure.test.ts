@@ -6,6 +6,7 @@ import type { Recording } from '../../../../src/core/model/recording.ts';
 import { recogniseProcedure } from '../../../../src/core/modes/recognise-procedure.ts';
 import { withoutSteadyLines } from '../../../../src/core/modes/recognise/without-steady-lines.ts';
 import { conditionRecording } from '../../../../src/core/signal/condition-recording.ts';
+import { problemSentence } from '../../../../src/text/problems.ts';
 import { generateCase } from '../../../support/cases/generate-case.ts';
 import { seededRandom } from '../../../support/cases/random.ts';
 import { steadyRecording, still } from '../../../support/steady-recording.ts';
@@ -75,7 +76,10 @@ describe('a procedure that does not fit', () => {
   });
 
   it('is refused where it finds nothing of its own: run-down in a steady record', () => {
-    expect(doubtOf(generateCase('TWIN', 23, 0).recording, 'coastdown')).toBe('no-pass');
+    const { recording } = generateCase('TWIN', 23, 1);
+    const outcome = analyse(recording, { procedure: 'coastdown', timing: 'auto' });
+    expect(outcome).toMatchObject({ problem: { code: 'no-pass', facts: { fitting: 'running' } } });
+    expect(!outcome.ok && problemSentence(outcome.problem)).toMatch(/looks like a running machine/);
   });
 
   it.each([
