@@ -13,10 +13,11 @@ const STEPS: Readonly<Record<NextStepKind, string>> = {
   'repeat-poor': 'Repeat this reading: it is not to be trusted.',
   'settle-undecided':
     'Repeat this reading, with more taps or another phone: its uncertainty leaves the verdict open.',
-  'add-spot': 'Add a spot at a quarter or the middle: a mode stands still at its nodes and is missed there.',
+  'add-spot':
+    'Add a spot at a quarter of the span or in the middle: a mode does not move at its nodes and is missed there.',
   'other-direction': 'Tap in another direction: up and down, along, and across ring differently.',
   'read-running': 'Take a reading with the machine running.',
-  'tap-stopped': 'Tap it with the machine stopped and locked out: a running reading finds no modes.',
+  'tap-stopped': 'Tap it with the machine stopped and locked out: a running reading rarely shows modes.',
 };
 
 /** @param spotName name of the step's spot, where it has one */

@@ -26,8 +26,7 @@ const DOUBTS: Readonly<Record<DoubtCode, DoubtText>> = {
   },
   'near-resolution': {
     name: 'Near the resolution',
-    meaning:
-      'The record is hardly long enough to tell this damping, or two modes, from the length of the record.',
+    meaning: 'The record is hardly long enough to show damping this light, or to tell two modes apart.',
     remedy: 'Let it ring longer, or record longer.',
   },
   'methods-disagree': {
@@ -53,7 +52,7 @@ const DOUBTS: Readonly<Record<DoubtCode, DoubtText>> = {
   clipped: {
     name: 'Overdriven',
     meaning: 'The sensor reached the end of its range; the strongest motion is cut off.',
-    remedy: 'Tap more gently, further from the phone.',
+    remedy: 'Tap more gently, or further from the phone.',
   },
   gaps: {
     name: 'Gaps',
@@ -135,12 +134,12 @@ const DOUBTS: Readonly<Record<DoubtCode, DoubtText>> = {
   'phone-mass': {
     name: 'Weight of the phone',
     meaning: 'The phone is heavy against this part: it rings lower with the phone on it than without.',
-    remedy: 'Use the added-mass test to take the phone’s weight out.',
+    remedy: 'The added-mass test tells by how much; a lighter phone shifts it less.',
   },
   'sweep-fast': {
     name: 'Passed too fast',
     meaning: 'The machine passed the resonance too fast for it to build up: the peak is low, late and wide.',
-    remedy: 'If the drive allows, slow down more gradually; or stop, lock out and tap.',
+    remedy: 'If the drive allows it, slow down more gradually; or stop it, lock it out and tap.',
   },
   'gravity-scale': {
     name: 'Scale of the sensor',

@@ -25,7 +25,7 @@ const MEASURES: Readonly<Record<Measure, string>> = {
   'velocity-peak-horizontal': 'peak horizontal velocity',
   'acceleration-peak-vertical': 'peak vertical acceleration',
   'acceleration-peak-horizontal': 'peak horizontal acceleration',
-  'equivalent-sine-peak': 'peak of the equivalent sine',
+  'equivalent-sine-peak': 'equivalent sinusoidal peak acceleration',
   'weighted-rms': 'frequency-weighted rms acceleration',
   'response-factor': 'response factor',
 };
@@ -37,11 +37,11 @@ const REASONS: Readonly<Record<LevelReason, string>> = {
   'folded-in-acceleration': 'folded or undecided tones are in the acceleration at a false frequency',
   'no-value': 'the reading holds no value for it',
   'class-unknown': 'the class is not known: enter what the spot is',
-  'loading-not-presumed': 'the crowd or walker that the criterion presumes was not there',
+  'loading-not-presumed': 'it is not said that the crowd or walker which the criterion presumes was there',
   'crest-factor': 'there are shocks in it: the rms understates them',
   'no-dominant-frequency': 'there is no clear frequency to read the guide value at',
   'lines-only': 'only the lines told from the noise are counted',
-  'wider-band': 'motion above the band of this criterion is in it and may make it read too high',
+  'wider-band': 'motion above the band of this criterion is in it, so it may read too high',
 };
 export const levelReason = (reason: LevelReason): string => REASONS[reason];
 

@@ -154,7 +154,7 @@ const SENTENCES: Readonly<Record<ProblemCode, (facts: Facts) => string>> = {
   cancelled: () => 'Cancelled. Nothing was changed.',
   'bad-source': badSource,
   'mass-shift-unclear': () =>
-    'The added mass did not lower the frequency by clearly more than the uncertainty. Use a heavier mass, fixed firmly, or more taps.',
+    'The added mass did not lower the frequency by clearly more than its uncertainty. Use a heavier mass, fixed firmly, or more taps.',
   'too-few-readings': (facts) =>
     `Too few readings for this: ${whole(facts, 'count') ?? 'these'} of at least ${whole(facts, 'needed') ?? 'two'}.`,
 };

@@ -111,7 +111,7 @@ export const blowSentence = (source: string): string =>
 
 function runningSentence(judgement: Judgement): string {
   const first = judgement.toneMatches[0];
-  if (!first) return 'A running reading finds no modes: tap the spot with the machine stopped.';
+  if (!first) return 'A running reading rarely shows modes: tap the spot with the machine stopped.';
   if (!first.forcing) return 'No source entered here explains it.';
   const how = first.folded ? 'It fits the folded image of' : 'It fits';
   return `${how} ${forcingName(first.forcing)}.`;

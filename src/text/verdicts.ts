@@ -8,9 +8,9 @@ export interface VerdictText {
 const VERDICTS: Readonly<Record<Verdict, VerdictText>> = {
   coincident: {
     word: 'coincident',
-    meaning: 'The forcing falls on this mode: its response builds up.',
+    meaning: 'The forcing falls on this mode: the response builds up.',
   },
-  close: { word: 'close', meaning: 'The forcing lies near this mode: its response is amplified.' },
+  close: { word: 'close', meaning: 'The forcing lies near this mode: the response is amplified.' },
   apart: {
     word: 'apart',
     meaning: 'The forcing lies well away from this mode: little amplification from this pair.',
@@ -40,7 +40,7 @@ const UNPAIRED: Readonly<Record<UnpairedVerdict, VerdictText>> = {
   },
   'not-sought': {
     word: 'not looked for',
-    meaning: 'A running reading finds no modes. Tap the spot with the machine stopped and locked out.',
+    meaning: 'A running reading rarely shows modes. Tap the spot with the machine stopped and locked out.',
   },
 };
 export const unpairedText = (verdict: UnpairedVerdict): VerdictText => UNPAIRED[verdict];

@@ -22,13 +22,13 @@ function change(way: WayOut): string {
     case 'speed':
       return speed(way);
     case 'stiffness':
-      return `Stiffness at the spot times ${factor} brings the mode to ${target}.`;
+      return `Stiffness at the spot times ${factor} brings the mode up to ${target}.`;
     case 'mass':
-      return `Moving mass at the spot times ${factor} brings the mode down to ${target}.`;
+      return `Modal mass at the spot times ${factor} brings the mode down to ${target}.`;
     case 'damping':
-      return `Damping of ${way.factor ? formatPercent(way.factor[1]) : ''} holds the response down.`;
+      return `A damping ratio of ${way.factor ? formatPercent(way.factor[1]) : ''} holds the response down.`;
     case 'isolation':
-      return `Mounts at ${target}, sinking ${formatNumber(1000 * (way.staticDeflectionM ?? 0), 2)} mm under the load, let ${way.factor ? formatInterval([100 * way.factor[0], 100 * way.factor[1]], 2) : ''} % through.`;
+      return `Mounts at ${target}, deflecting ${formatNumber(1000 * (way.staticDeflectionM ?? 0), 2)} mm under the load, let ${way.factor ? formatInterval([100 * way.factor[0], 100 * way.factor[1]], 2) : ''} % through.`;
   }
 }
 

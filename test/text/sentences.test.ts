@@ -299,7 +299,7 @@ describe('levels and ways out in words', () => {
     const bridge = analysisOf('ambient', { levels: levelsOf({ verticalPeakMps2: 0.6, bandHz: [0.25, 28] }) });
     const [en] = judge(bridge, [], {}, { place: { kind: 'footbridge' } }).levels;
     expect(levelSentence(en!)).toBe(
-      'EN 1990, footbridge comfort: peak vertical acceleration 0.60 m/s², not assessed, because the crowd or walker that the criterion presumes was not there. The designer’s traffic for the bridge; 0.4 m/s² horizontal for exceptional crowds. Source: EN 1990 A2.4.3.2; needs 1.00 to 5.00 Hz.',
+      'EN 1990, footbridge comfort: peak vertical acceleration 0.60 m/s², not assessed, because it is not said that the crowd or walker which the criterion presumes was there. The designer’s traffic for the bridge; 0.4 m/s² horizontal for exceptional crowds. Source: EN 1990 A2.4.3.2; needs 1.00 to 5.00 Hz.',
     );
   });
   it('tell whose tone it is and what a series of speeds shows', () => {
@@ -321,7 +321,7 @@ describe('levels and ways out in words', () => {
       .filter(({ separationIndex }) => separationIndex === 0)
       .map((way) => wayOutSentence(way, judgement));
     expect(said[0]).toMatch(
-      /^Stiffness at the spot times 1\.\d\d to 1\.\d\d brings the mode to 9\.02 Hz\. Then apart, amplified at most 2\.8 times\. But it comes nearer to the fourth harmonic of walking\.$/,
+      /^Stiffness at the spot times 1\.\d\d to 1\.\d\d brings the mode up to 9\.02 Hz\. Then apart, amplified at most 2\.8 times\. But it comes nearer to the fourth harmonic of walking\.$/,
     );
     const modal = {
       massKg: 6,
@@ -339,10 +339,10 @@ describe('levels and ways out in words', () => {
       / That is 5\.\d to 6\.\d kg there\. Then apart/,
     );
     expect(said[1]).toMatch(
-      /^Moving mass at the spot times 1\.\d+ to \d\.\d+ brings the mode down to 5\.27 Hz\. Then apart/,
+      /^Modal mass at the spot times 1\.\d+ to \d\.\d+ brings the mode down to 5\.27 Hz\. Then apart/,
     );
     expect(said[2]).toMatch(
-      /^Damping of [\d.]+ % holds the response down\. Then still coincident, amplified at most 5\.0 times\./,
+      /^A damping ratio of [\d.]+ % holds the response down\. Then still coincident, amplified at most 5\.0 times\./,
     );
   });
 });
