@@ -189,7 +189,8 @@ function roundedNoise(
   return Math.exp(low + high);
 }
 
-function meanSquare(left: Float64Array, segments: readonly Segment[]): number {
+/** Mean square within the segments, (m/s²)². */
+export function meanSquare(left: Float64Array, segments: readonly Segment[]): number {
   let sum = 0;
   let count = 0;
   for (const { start, end } of segments) {

@@ -16,7 +16,7 @@ import { residualColour } from './residual-colour.ts';
 import { leavesOnlyNoise, searchBriefRingDowns, searchRingDowns } from './ring-down-search.ts';
 import type { RingDownSearch } from './ring-down-state.ts';
 import { retimedByRingDowns } from './ring-down-timing.ts';
-import { fitRounded, isStepCoarse } from './rounding-likelihood.ts';
+import { fitRounded, isStepCoarse, meanSquare } from './rounding-likelihood.ts';
 import { softenedFit } from './softening.ts';
 import { explainedShare, isAnswer, ringEnergy } from './tap-gates.ts';
 import { modeOf, toneOf } from './tap-mode.ts';
@@ -127,10 +127,12 @@ function answerOf(
   const { decays, fit, isRounded } = finalFit(signal, search, conditioned.facts.stepMps2);
   const left = residuals(signal, decays, fit);
   const largest = Math.max(...signal.y.map((y) => y.reduce((m, v) => Math.max(m, Math.abs(v)), 0)));
+  // What rounding leaves is stronger than the noise that its likelihood tells.
+  const judged = isRounded ? { ...fit, variance: left.map((l) => meanSquare(l, decays)) } : fit;
   const modeIndexes = fit.components.flatMap((c, k) => (c.kind === 'mode' ? [k] : []));
   const estimates = modeIndexes
     .map((k) => {
-      const colour = residualColour(signal, decays, fit, left, fit.components[k]!);
+      const colour = residualColour(signal, decays, judged, left, fit.components[k]!);
       return { k, estimate: modeEstimate(signal, decays, fit, k, colour) };
     })
     .filter(({ estimate }) => isAnswer(signal, decays, estimate, fit, largest))
