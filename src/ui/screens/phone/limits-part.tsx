@@ -8,7 +8,6 @@ import {
   THRESHOLD_KEYS,
 } from '../../../app/limits.ts';
 import type { Thresholds } from '../../../core/model/thresholds.ts';
-import { formatNumber } from '../../../text/number.ts';
 import { officeText } from '../../../text/office-screens.ts';
 import { thresholdText } from '../../../text/thresholds.ts';
 import { Button } from '../../components/button.tsx';
@@ -50,6 +49,9 @@ export function LimitsPart({ app }: { readonly app: App }) {
   );
 }
 
+/** As a person types it: 5, 0.8, 12.5. */
+const plain = (value: number): string => String(Number(value.toPrecision(6)));
+
 /** Keeps what is typed; hands on a number only when it can be used. */
 function LimitField(props: {
   readonly name: keyof Thresholds;
@@ -59,20 +61,20 @@ function LimitField(props: {
   const { unit, name, origin } = thresholdText(props.name);
   const per = unit === '%' ? 100 : 1;
   const [low, high] = THRESHOLD_BOUNDS[props.name];
-  const [typed, setTyped] = useState(formatNumber(props.value * per));
+  const [typed, setTyped] = useState(plain(props.value * per));
   const [problem, setProblem] = useState<string>();
   return (
     <NumberField
       label={name}
       unit={unit}
-      note={`${text.usually(`${formatNumber(DEFAULT_THRESHOLDS[props.name] * per)} ${unit}`.trim())} ${origin}`}
+      note={`${text.usually(`${plain(DEFAULT_THRESHOLDS[props.name] * per)} ${unit}`.trim())} ${origin}`}
       value={typed}
       problem={problem}
       onInput={(next) => {
         setTyped(next);
         const value = (parseNumber(next) ?? NaN) / per;
         const isUsable = value >= low && value <= high;
-        setProblem(isUsable ? undefined : text.outside(formatNumber(low * per), formatNumber(high * per)));
+        setProblem(isUsable ? undefined : text.outside(plain(low * per), plain(high * per)));
         if (isUsable) props.onChange(value);
       }}
     />
