@@ -145,9 +145,9 @@ function ComparisonTable(props: Pair & { readonly app: App }) {
           {rows.map((row, index) => (
             <tr key={index}>
               <th scope="row">{row.name}</th>
-              <td>{row.first}</td>
-              <td>{row.second}</td>
-              <td>{row.change}</td>
+              <td>{unitsTogether(row.first)}</td>
+              <td>{unitsTogether(row.second)}</td>
+              <td>{unitsTogether(row.change)}</td>
             </tr>
           ))}
         </tbody>
@@ -155,6 +155,10 @@ function ComparisonTable(props: Pair & { readonly app: App }) {
     </div>
   );
 }
+
+/** In a narrow cell the value with its unit stands on one line, ± with its figure on the next. */
+const unitsTogether = (text: string): string =>
+  text.replace('± ', '±\u00a0').replaceAll(/(\d) (?=[^\s±])/g, '$1\u00a0');
 
 const signedPercent = (ratio: number | undefined): string =>
   ratio === undefined ? '–' : `${ratio < 1 ? '−' : '+'}${formatNumber(Math.abs(100 * (ratio - 1)), 2)} %`;
