@@ -33,6 +33,7 @@ export const screenHashes = {
   phone: () => '#/phone',
   'phone-check': () => '#/phone/check',
   'phone-storage': () => '#/phone/storage',
+  'phone-limits': () => '#/phone/limits',
   'phone-about': () => '#/phone/about',
   'phone-privacy': () => '#/phone/privacy',
   'phone-cautions': () => '#/phone/cautions',
