@@ -432,9 +432,16 @@ export const readingText = {
     here: 'this device',
     keep: (value: string) => `Keep “${value}”`,
     empty: 'empty',
-    fields: { label: 'name', notes: 'notes', spot: 'spot', asset: 'asset', site: 'site' } as Readonly<
-      Record<string, string>
-    >,
+    fields: {
+      label: 'name',
+      notes: 'notes',
+      spot: 'spot',
+      asset: 'asset',
+      site: 'site',
+      presumedLoading: 'whether the presumed loading was there',
+    } as Readonly<Record<string, string>>,
+    yes: 'yes',
+    no: 'no',
   },
   redo: {
     title: 'Analysis',

@@ -1,4 +1,4 @@
-import type { EditFact } from '../../../core/model/fact.ts';
+import type { EditFact, FieldValue } from '../../../core/model/fact.ts';
 import { readingText } from '../../../text/reading-screen.ts';
 import styles from './history-section.module.css';
 import type { ReadingUseCases, ReadingView } from './reading-use-cases.ts';
@@ -16,8 +16,11 @@ const editTexts = (edit: EditFact): string[] =>
     const words = readingText.history;
     if (field === 'trashed') return value === true ? words.trashed : words.restored;
     const name = readingText.conflict.fields[field] ?? field;
-    return value === null || value === '' ? words.cleared(name) : words.set(name, String(value));
+    return value === null || value === '' ? words.cleared(name) : words.set(name, said(value));
   });
+
+const said = (value: FieldValue): string =>
+  typeof value === 'boolean' ? readingText.conflict[value ? 'yes' : 'no'] : String(value);
 
 /** Everything that happened to this reading, newest first; nothing disappears from it. */
 export function HistorySection({
