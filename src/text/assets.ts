@@ -1,5 +1,11 @@
 /** What an asset's pooled readings say, what to do next, and what changed between visits. */
-import type { AssetVerdict, NextStep, NextStepKind } from '../core/model/asset-verdict.ts';
+import type {
+  AssetVerdict,
+  Coverage,
+  NextStep,
+  NextStepKind,
+  PooledMode,
+} from '../core/model/asset-verdict.ts';
 import type { SpeedSeries, ToneOrigin } from '../core/model/guided-pairs.ts';
 import type { Condition, QuantityChange, VisitChange } from '../core/model/visit-change.ts';
 import { formatNumber } from './number.ts';
@@ -23,6 +29,22 @@ const STEPS: Readonly<Record<NextStepKind, string>> = {
 /** @param spotName name of the step's spot, where it has one */
 export function nextStepSentence(step: NextStep, spotName?: string): string {
   return spotName === undefined ? STEPS[step.kind] : `${spotName}: ${STEPS[step.kind]}`;
+}
+
+/** What the readings of an asset cover besides its spots: directions as the person named them, states of the machine. */
+export function coverageSentence({ directions, hasRunning, hasStopped }: Coverage): string {
+  const named = directions.length === 0 ? 'No direction was named' : `Directions: ${directions.join(', ')}`;
+  const states = [hasRunning ? 'running' : '', hasStopped ? 'stopped' : ''].filter((state) => state !== '');
+  return states.length === 0 ? `${named}.` : `${named}. Read ${states.join(' and ')}.`;
+}
+
+/** How far one mode differs from reading to reading beyond what each says of itself; undefined where nothing shows. */
+export function scatterWords({
+  frequencyBetweenHz,
+}: Pick<PooledMode, 'frequencyBetweenHz'>): string | undefined {
+  return frequencyBetweenHz > 0
+    ? `they differ by ${formatNumber(frequencyBetweenHz, 2)} Hz (standard deviation) beyond their own uncertainty`
+    : undefined;
 }
 
 const capital = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1);

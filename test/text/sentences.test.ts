@@ -22,7 +22,13 @@ import { thresholdText } from '../../src/text/thresholds.ts';
 import type { Thresholds } from '../../src/core/model/thresholds.ts';
 import { judge } from '../../src/core/survey/judge.ts';
 import { forcingsOf } from '../../src/core/survey/forcings.ts';
-import { nextStepSentence, speedSeriesSentence, toneOriginSentence } from '../../src/text/assets.ts';
+import {
+  coverageSentence,
+  nextStepSentence,
+  scatterWords,
+  speedSeriesSentence,
+  toneOriginSentence,
+} from '../../src/text/assets.ts';
 import { cautionText } from '../../src/text/cautions.ts';
 import { doubtText } from '../../src/text/doubts.ts';
 import { INDICATIVE_LINE } from '../../src/text/indicative.ts';
@@ -344,5 +350,24 @@ describe('levels and ways out in words', () => {
     expect(said[2]).toMatch(
       /^A damping ratio of [\d.]+ % holds the response down\. Then still coincident, amplified at most 5\.0 times\./,
     );
+  });
+});
+
+describe('an asset in words', () => {
+  const coverage = { spotsRead: [], spotsMissing: [], tapCount: 1 };
+  it('says which directions and states its readings cover', () => {
+    expect(
+      coverageSentence({ ...coverage, directions: ['across', 'up'], hasRunning: true, hasStopped: true }),
+    ).toBe('Directions: across, up. Read running and stopped.');
+    expect(coverageSentence({ ...coverage, directions: [], hasRunning: false, hasStopped: false })).toBe(
+      'No direction was named.',
+    );
+  });
+
+  it('says how far a mode scatters from reading to reading, where it does', () => {
+    expect(scatterWords({ frequencyBetweenHz: 0.031 })).toBe(
+      'they differ by 0.031 Hz (standard deviation) beyond their own uncertainty',
+    );
+    expect(scatterWords({ frequencyBetweenHz: 0 })).toBeUndefined();
   });
 });

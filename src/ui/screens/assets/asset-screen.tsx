@@ -3,7 +3,7 @@ import { useState } from 'preact/hooks';
 import type { App } from '../../../app/app.ts';
 import type { Asset, Spot } from '../../../app/places.ts';
 import type { NextStep } from '../../../core/model/asset-verdict.ts';
-import { nextStepSentence } from '../../../text/assets.ts';
+import { coverageSentence, nextStepSentence, scatterWords } from '../../../text/assets.ts';
 import { INDICATIVE_LINE } from '../../../text/indicative.ts';
 import { formatDamping, formatFrequency } from '../../../text/quantity.ts';
 import { officeText } from '../../../text/office-screens.ts';
@@ -60,7 +60,10 @@ export function AssetScreen({ app, id }: { readonly app: App; readonly id: strin
       {loaded.hasPractice && <p class="note">{text.holdsPractice}</p>}
       <section class="stack">
         <h2>{text.spots}</h2>
-        <p class="note">{text.covered(coverage.spotsRead.length, asset.spots.length, coverage.tapCount)}</p>
+        <p class="note">
+          {text.covered(coverage.spotsRead.length, asset.spots.length, coverage.tapCount)}{' '}
+          {loaded.readings.length > 0 && coverageSentence(coverage)}
+        </p>
         {asset.spots.length > 0 && <SpotRows app={app} spots={asset.spots} label={text.spots} />}
       </section>
       {verdict.next.length > 0 && (
@@ -146,7 +149,7 @@ function Pooled(props: { readonly app: App; readonly asset: Asset; readonly load
               <strong>{formatFrequency(mode.frequencyHz, mode.frequencySdHz, frequencyUnit)}</strong>{' '}
               <span class="note">
                 {formatDamping(mode.dampingRatio, mode.dampingRatioSd)} ·{' '}
-                {text.inReadings(mode.readings.length)}
+                {[text.inReadings(mode.readings.length), scatterWords(mode)].filter(Boolean).join('; ')}
               </span>
             </li>
           ))}
