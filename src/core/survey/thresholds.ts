@@ -45,7 +45,8 @@ export function thresholdsWith(own: Partial<Thresholds> = {}): Thresholds {
   const all = { ...DEFAULT_THRESHOLDS, ...own };
   for (const key of THRESHOLD_KEYS) {
     const [low, high] = THRESHOLD_BOUNDS[key];
-    if (!isWithin(key, all[key])) throw new RangeError(`${key} must be ${low} to ${high}, got ${all[key]}`);
+    const value: unknown = all[key];
+    if (!isWithin(key, value)) throw new RangeError(`${key} must be ${low} to ${high}, got ${String(value)}`);
   }
   if (reachesIntoApart(all))
     throw new RangeError(`coincidentRatio ${all.coincidentRatio} reaches into apart`);
