@@ -18,7 +18,7 @@ export default [
     limit: '57 kB',
     gzip: true,
   },
-  { name: 'All JavaScript', path: ['dist/assets/*.js', 'dist/sw.js'], limit: '265 kB', gzip: true },
+  { name: 'All JavaScript', path: ['dist/assets/*.js', 'dist/sw.js'], limit: '272 kB', gzip: true },
   {
     name: 'Everything kept for offline',
     path: [
@@ -29,7 +29,7 @@ export default [
       'dist/rescue.*',
       'dist/help/*',
     ],
-    limit: '284 kB',
+    limit: '291 kB',
     gzip: true,
   },
 ];
