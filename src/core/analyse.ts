@@ -17,6 +17,7 @@ import { isAtRest, otherProcedure, recogniseProcedure } from './modes/recognise-
 import { roundedForKeeping } from './modes/rounded-for-keeping.ts';
 import { conditionRecording } from './signal/condition-recording.ts';
 import type { ConditionedSignal } from './signal/condition-recording.ts';
+import { median } from './signal/sample-counter.ts';
 import { amplitudeSpectrum } from './signal/spectrum.ts';
 import { thinnedTrace } from './signal/trace.ts';
 import { combineTrust } from './survey/trust.ts';
@@ -35,8 +36,50 @@ export function analyse(recording: Recording, settings: AnalysisSettings): Outco
   const procedure: Procedure =
     settings.procedure === 'auto' ? recogniseProcedure(signal) : settings.procedure;
   const answer = PROCEDURES[procedure](signal, settings);
-  if (!answer.ok) return refusalOf(signal, settings, answer.problem);
+  if (!answer.ok)
+    return (
+      (procedure === 'tap' ? withoutStart(recording, signal, settings, answer.problem) : undefined) ??
+      refusalOf(signal, settings, answer.problem)
+    );
   return success(resultOf(answer.value.retimed ?? signal, settings, procedure, answer.value));
+}
+
+/** A tap's contact lasts no longer than this, s. Common practice, no source. */
+const CONTACT_S = 0.03;
+/** A record begins within a contact where its first samples stand this many times above its middle motion. */
+const CONTACT_RATIO = 2.5;
+
+/**
+ * The tap test without the contact a record began in, which is no free decay and has no onset before it either.
+ * @returns undefined where the record did not begin in a contact, or nothing is found without it
+ */
+function withoutStart(
+  recording: Recording,
+  signal: ConditionedSignal,
+  settings: AnalysisSettings,
+  { code }: Problem,
+): Outcome<AnalysisResult> | undefined {
+  if (code !== 'no-decay' || !beginsInContact(signal)) return undefined;
+  const from = signal.rows[signal.timeS.findIndex((t) => t > signal.timeS[0]! + CONTACT_S)]!;
+  const later = conditionRecording(
+    {
+      ...recording,
+      timeS: recording.timeS.subarray(from),
+      accelerationMps2: recording.accelerationMps2.map((axis) => axis.subarray(from)),
+    },
+    settings.timing,
+  );
+  if (!later.ok) return undefined;
+  const answer = tapProcedure(later.value, settings);
+  return answer.ok
+    ? success(resultOf(answer.value.retimed ?? later.value, settings, 'tap', answer.value))
+    : undefined;
+}
+
+function beginsInContact({ accelerationMps2, timeS }: ConditionedSignal): boolean {
+  const motion = timeS.map((_, i) => Math.hypot(...accelerationMps2.map((axis) => axis[i]!)));
+  const first = motion.filter((_, i) => timeS[i]! <= timeS[0]! + CONTACT_S);
+  return Math.max(...first) > CONTACT_RATIO * median(motion);
 }
 
 const PROCEDURES: Readonly<Record<Procedure, ProcedureFunction>> = {

@@ -45,6 +45,8 @@ export function modeOf(context: ModeContext): Mode {
   const samples = modeAlone(context);
   const ringStartsS = decays.map((d) => context.signal.timeS[d.start]!);
   const fold = foldOfMode(conditioned, { frequencyHz, dampingRatio, direction, samples }, ringStartsS);
+  // Near half the rate the sensor's own low-pass and the timing bite, and the fold can hardly be told.
+  if (frequencyHz > conditioned.facts.usableBandHz[1]) doubts.push('band-edge');
   if (fold.verdict === 'folded') doubts.push('folded');
   if (fold.verdict === 'undecided') doubts.push('fold-undecided');
   return {

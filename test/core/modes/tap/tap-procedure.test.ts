@@ -61,6 +61,33 @@ describe('tapProcedure on what it must answer', () => {
     expect(tones).toHaveLength(0);
   });
 
+  it.each([4.889, 5.075, 6.315])(
+    'reads the taps after a record that begins within the contact of another (%d Hz)',
+    (frequencyHz) => {
+      const ringing = {
+        frequencyHz,
+        dampingRatio: 0.02,
+        tapTimesS: [-0.01, 8.5, 13.5, 19, 26],
+        durationS: 32,
+      };
+      const recording = ringingRecording({ ...ringing, noiseMps2: 0.015 });
+      // The hand still presses at the first sample: it reads against the ringing.
+      const pressed = changed(recording, (v, i, a) => (i === 0 ? v - [0.6, 0.75, 0.8][a]! : v));
+      const { modes, tapTimesS } = analysed(pressed);
+      expect(modes).toHaveLength(1);
+      expect(Math.abs(modes[0]!.frequencyHz / frequencyHz - 1)).toBeLessThan(1e-3);
+      expect(Math.abs(modes[0]!.dampingRatio / 0.02 - 1)).toBeLessThan(0.05);
+      expect(tapTimesS.filter((t) => t > 1)).toHaveLength(4);
+    },
+  );
+
+  it('doubts a mode near half the rate and only that', () => {
+    const codes = (frequencyHz: number): readonly string[] =>
+      analysed(ringingRecording({ ...RAIL, frequencyHz })).modes[0]!.doubts;
+    expect(codes(28.8)).toContain('band-edge');
+    expect(codes(7.4)).not.toContain('band-edge');
+  });
+
   it('is exact to 1e-5 where there is no noise', () => {
     const { modes } = analysed(ringingRecording({ ...RAIL, noiseMps2: 1e-6, scatterS: 0.0005 }));
     expect(Math.abs(modes[0]!.frequencyHz / 7.4 - 1)).toBeLessThan(1e-5);
