@@ -16,6 +16,7 @@ import { residualColour } from './residual-colour.ts';
 import { leavesOnlyNoise, searchBriefRingDowns, searchRingDowns } from './ring-down-search.ts';
 import type { RingDownSearch } from './ring-down-state.ts';
 import { retimedByRingDowns } from './ring-down-timing.ts';
+import { withoutPollingGhosts } from './polled-modes.ts';
 import { fitRounded, isStepCoarse, meanSquare } from './rounding-likelihood.ts';
 import { softenedFit } from './softening.ts';
 import { explainedShare, isAnswer, ringEnergy } from './tap-gates.ts';
@@ -148,15 +149,20 @@ function answerOf(
     fit.components.length,
   );
   if (explained < LEAST_EXPLAINED_SHARE) return failure('no-decay', { explainedShare: explained });
-  const modes = estimates.map(({ k, estimate }) =>
+  const fitted = estimates.map(({ k, estimate }) =>
     modeOf({ conditioned, signal, decays, fit, left, k, estimate, isRounded }),
   );
+  const polled = withoutPollingGhosts(fitted, conditioned.facts.rateHz);
+  const modes = polled?.modes ?? fitted;
   return success({
     modes,
     tones: fit.components.flatMap((c, k) => (c.kind === 'tone' ? [toneOf(conditioned, fit, k)] : [])),
     broadPeaks: [],
     tapTimesS: decays.flatMap((d) => (d.onset === undefined ? [] : [signal.timeS[d.onset]!])),
-    doubts: tapDoubts(search, decays, modes, explained),
+    doubts: [
+      ...tapDoubts(search, decays, modes, explained),
+      ...(polled ? [{ code: 'polled' as const, facts: { sensorRateHz: polled.sensorRateHz } }] : []),
+    ],
     ringDowns: ringDownPictures(signal, decays, fit, left, estimates[0]!.k, modes[0]!.direction),
   });
 }
