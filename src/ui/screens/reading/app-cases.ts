@@ -1,7 +1,6 @@
 import type { App } from '../../../app/app.ts';
 import { currentAnalysis, currentPlaceIds } from '../../../app/readings.ts';
 import { readingText } from '../../../text/reading-screen.ts';
-import { photoJpeg } from './photo-jpeg.ts';
 import type {
   Counterpart,
   OpenedView,
@@ -72,7 +71,7 @@ export const readingUseCases = (app: App): ReadingUseCases => ({
   trash: (id) => app.readings.trash([id]),
   restore: (id) => app.readings.restore([id]),
   async addPhoto(id, image) {
-    const { jpeg, widthPx, heightPx } = await photoJpeg(image);
+    const { jpeg, widthPx, heightPx } = await app.store.preparePhoto(image);
     await app.readings.savePhoto(id, jpeg, widthPx, heightPx);
   },
   removePhoto: (photoId) => app.readings.edit(photoId, { trashed: true }, readingText.notes.photoRemoved),

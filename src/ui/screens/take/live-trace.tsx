@@ -16,11 +16,11 @@ export function LiveTrace(props: { readonly live: () => LiveWindow | undefined; 
     const element = canvas.current;
     const pen = element?.getContext('2d');
     if (!element || !pen) return undefined;
-    const pens = axisPens(element);
     let scaleMps2 = LEAST_SCALE_MPS2;
     const timer = setInterval(() => {
       const window = props.live();
-      if (window) scaleMps2 = draw(element, pen, window, pens, scaleMps2);
+      // The pens are taken anew each time: the theme may change with the evening while it records.
+      if (window) scaleMps2 = draw(element, pen, window, axisPens(element), scaleMps2);
     }, FRAME_MS);
     return () => clearInterval(timer);
   }, []);
